@@ -1,0 +1,12 @@
+export type RefusalReason = "not-found" | "conflict" | "forbidden" | "too-large" | "too-many";
+
+/** The request is well formed and still cannot be granted. One table in `lib/http` maps reasons to statuses. */
+export class Refusal extends Error {
+  readonly reason: RefusalReason;
+
+  constructor(reason: RefusalReason, message: string) {
+    super(message);
+    this.name = "Refusal";
+    this.reason = reason;
+  }
+}
