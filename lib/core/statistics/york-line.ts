@@ -1,0 +1,212 @@
+import { InputError } from "../failures/input-error.ts";
+
+type Numbers = Float64Array | readonly number[];
+
+/** Points with a standard deviation (1 sigma) for each coordinate, independent of each other and of the other points. */
+export interface YorkPoints {
+  readonly x: Numbers;
+  readonly y: Numbers;
+  readonly xSigma: Numbers;
+  readonly ySigma: Numbers;
+  /** 0 to 1 each, multiplying the inverse variances; 1 where none are given. */
+  readonly weights?: Numbers;
+}
+
+export interface YorkLine {
+  readonly intercept: number;
+  readonly slope: number;
+  /** Variances as the given standard deviations alone ask for: not scaled by the scatter. */
+  readonly interceptVariance: number;
+  readonly slopeVariance: number;
+  readonly interceptSlopeCovariance: number;
+  /** Weighted sum of squared residuals at the minimum; n - 2 degrees of freedom. */
+  readonly chiSquare: number;
+  /** False where no line is determined (all x alike) or the iteration did not settle; every number is then NaN. */
+  readonly converged: boolean;
+}
+
+/** A point measured from the points' mean, so that x of 0.05 and y of 1.7e9 lose no digits. */
+interface CentredPoint {
+  readonly x: number;
+  readonly y: number;
+  readonly xVariance: number;
+  readonly yVariance: number;
+  readonly weight: number;
+}
+
+const NO_LINE: YorkLine = {
+  intercept: NaN,
+  slope: NaN,
+  interceptVariance: NaN,
+  slopeVariance: NaN,
+  interceptSlopeCovariance: NaN,
+  chiSquare: NaN,
+  converged: false,
+};
+
+const MOST_ITERATIONS = 200;
+
+/**
+ * The straight line y = a + b x through points with errors in both coordinates, by the unified equations of York et
+ * al. with no correlation between a point's two errors. [source: york-2004] With all `xSigma` zero it is weighted
+ * least squares of y on x, exactly.
+ *   (1)  W_i = w_i / (sy_i^2 + b^2 sx_i^2)                         weight along the line's normal
+ *   (2)  U_i = x_i - X, V_i = y_i - Y                              X, Y means weighted by W
+ *   (3)  beta_i = (U_i sy_i^2 + b V_i sx_i^2) / (sy_i^2 + b^2 sx_i^2)
+ *   (4)  b = sum W beta V / sum W beta U                           repeated from (1) until b settles
+ *   (5)  a = Y - b X
+ *   (6)  var b = 1 / sum W (beta_i - beta)^2                       beta the W-weighted mean: about adjusted points
+ *   (7)  var a = 1 / sum W + (X + beta)^2 var b,  cov(a, b) = -(X + beta) var b
+ * Units: those of x and y. A point of weight 0 takes no part.
+ *
+ * @throws InputError `too-few-points` (fewer than two points of weight above zero), `uneven-lengths`, `no-sigma` (a
+ * point without a standard deviation above zero in either coordinate, or with one that is no number).
+ */
+export function yorkLine(points: YorkPoints): YorkLine {
+  requirePoints(points);
+  const xOrigin = mean(points.x);
+  const yOrigin = mean(points.y);
+  const centred = centre(points, xOrigin, yOrigin);
+  if (!xDiffers(centred, xOrigin)) return NO_LINE;
+
+  const slope = settledSlope(centred);
+  if (slope === null) return NO_LINE;
+  const { interceptAtOrigin, xMean, weightSum, chiSquare, slopeVariance } = lineOfSlope(centred, slope);
+  const xLever = xMean + xOrigin;
+  return {
+    intercept: yOrigin + (interceptAtOrigin - slope * xOrigin), // (5)
+    slope,
+    interceptVariance: 1 / weightSum + xLever * xLever * slopeVariance, // (7)
+    slopeVariance,
+    interceptSlopeCovariance: -xLever * slopeVariance,
+    chiSquare,
+    converged: true,
+  };
+}
+
+/** Equations (1) to (4), repeated from the unweighted line of y on x. Null where the slope does not settle. */
+function settledSlope(points: readonly CentredPoint[]): number | null {
+  let xx = 0;
+  let xy = 0;
+  let yy = 0;
+  for (const { x, y } of points) {
+    xx += x * x;
+    xy += x * y;
+    yy += y * y;
+  }
+  const scale = Math.sqrt(yy / xx); // a slope that is zero settles against this, not against itself
+  let slope = xy / xx;
+  for (let iteration = 0; iteration < MOST_ITERATIONS; iteration += 1) {
+    const next = improvedSlope(points, slope);
+    if (!Number.isFinite(next)) return null;
+    if (Math.abs(next - slope) <= 1e-13 * Math.max(scale, Math.abs(next))) return next;
+    slope = next;
+  }
+  return null;
+}
+
+function improvedSlope(points: readonly CentredPoint[], slope: number): number {
+  const { xMean, yMean } = weightedMeans(points, slope);
+  let above = 0;
+  let below = 0;
+  for (const { x, y, xVariance, yVariance, weight } of points) {
+    const variance = yVariance + slope * slope * xVariance;
+    const u = x - xMean;
+    const v = y - yMean;
+    const weightedBeta = (weight * (u * yVariance + slope * v * xVariance)) / (variance * variance); // (1), (3)
+    above += weightedBeta * v;
+    below += weightedBeta * u;
+  }
+  return above / below; // (4)
+}
+
+function weightedMeans(points: readonly CentredPoint[], slope: number) {
+  let weightSum = 0;
+  let xSum = 0;
+  let ySum = 0;
+  for (const { x, y, xVariance, yVariance, weight } of points) {
+    const w = weight / (yVariance + slope * slope * xVariance); // (1)
+    weightSum += w;
+    xSum += w * x;
+    ySum += w * y;
+  }
+  return { weightSum, xMean: xSum / weightSum, yMean: ySum / weightSum };
+}
+
+/** What follows from the settled slope; `xMean` is the weighted mean of the adjusted points. */
+function lineOfSlope(points: readonly CentredPoint[], slope: number) {
+  const { weightSum, xMean, yMean } = weightedMeans(points, slope);
+  let betaSum = 0;
+  let betaSquareSum = 0;
+  let chiSquare = 0;
+  for (const { x, y, xVariance, yVariance, weight } of points) {
+    const variance = yVariance + slope * slope * xVariance;
+    const w = weight / variance;
+    const u = x - xMean;
+    const v = y - yMean;
+    const beta = (u * yVariance + slope * v * xVariance) / variance; // (3)
+    betaSum += w * beta;
+    betaSquareSum += w * beta * beta;
+    chiSquare += w * (v - slope * u) * (v - slope * u);
+  }
+  const betaMean = betaSum / weightSum;
+  return {
+    interceptAtOrigin: yMean - slope * xMean,
+    xMean: xMean + betaMean,
+    weightSum,
+    chiSquare,
+    slopeVariance: 1 / (betaSquareSum - weightSum * betaMean * betaMean), // (6)
+  };
+}
+
+function centre(points: YorkPoints, xOrigin: number, yOrigin: number): CentredPoint[] {
+  const centred: CentredPoint[] = [];
+  for (let i = 0; i < points.x.length; i += 1) {
+    const weight = points.weights === undefined ? 1 : (points.weights[i] ?? NaN);
+    if (weight === 0) continue;
+    const xSigma = points.xSigma[i] ?? NaN;
+    const ySigma = points.ySigma[i] ?? NaN;
+    const x = (points.x[i] ?? NaN) - xOrigin;
+    const y = (points.y[i] ?? NaN) - yOrigin;
+    centred.push({ x, y, xVariance: xSigma * xSigma, yVariance: ySigma * ySigma, weight });
+  }
+  return centred;
+}
+
+/** Whether the points' x differ by more than rounding would make them. */
+function xDiffers(points: readonly CentredPoint[], xOrigin: number): boolean {
+  let low = Infinity;
+  let high = -Infinity;
+  for (const { x } of points) {
+    low = Math.min(low, x);
+    high = Math.max(high, x);
+  }
+  return high - low > 1e-12 * Math.abs(xOrigin);
+}
+
+function mean(values: Numbers): number {
+  let sum = 0;
+  for (const value of values) sum += value;
+  return sum / values.length;
+}
+
+function requirePoints({ x, y, xSigma, ySigma, weights }: YorkPoints): void {
+  const count = x.length;
+  if ([y, xSigma, ySigma, weights ?? x].some((values) => values.length !== count)) {
+    throw new InputError([
+      { code: "uneven-lengths", path: "points", message: "A line needs as many standard deviations and weights as points." },
+    ]);
+  }
+  let weighted = 0;
+  for (let i = 0; i < count; i += 1) {
+    if (weights !== undefined && !((weights[i] ?? NaN) > 0)) continue;
+    weighted += 1;
+    const sx = xSigma[i] ?? NaN;
+    const sy = ySigma[i] ?? NaN;
+    if (sx >= 0 && sy >= 0 && sx + sy > 0 && sx + sy < Infinity) continue;
+    const message = `Point ${i + 1} needs a standard deviation above zero in one of its coordinates; found ${sx} and ${sy}.`;
+    throw new InputError([{ code: "no-sigma", path: `points[${i}]`, message }]);
+  }
+  if (weighted >= 2) return;
+  throw new InputError([{ code: "too-few-points", path: "points", message: `A line needs two points; found ${weighted}.` }]);
+}
