@@ -1,12 +1,9 @@
 import type { Position } from "../units/position.ts";
+import type { ShelfLeg } from "../waves/shelf-delay.ts";
 import type { ArrivalEstimate } from "./estimate.ts";
 import type { Reading } from "./reading.ts";
 
-/** A leg of the way over the shelf, seaward from the gauge. */
-export interface ShelfLeg {
-  readonly lengthMetres: number;
-  readonly depthMetres: number;
-}
+export type { ShelfLeg };
 
 /** Where a station's sensor stood over a span of time, and what it was. Several deployments may carry one station's id. */
 export interface Deployment {
