@@ -1,0 +1,13 @@
+import { mkdtempSync, rmSync } from "node:fs";
+import { tmpdir } from "node:os";
+import { join } from "node:path";
+import { onTestFinished } from "vitest";
+
+/** An empty directory that is gone when the test has finished. */
+export function temporaryDirectory(): string {
+  const directory = mkdtempSync(join(tmpdir(), "offing-"));
+  onTestFinished(() => {
+    rmSync(directory, { recursive: true, force: true });
+  });
+  return directory;
+}
