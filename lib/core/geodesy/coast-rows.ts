@@ -49,7 +49,7 @@ function withinHalfTurn(longitudeDegrees: number): number {
 }
 
 function landOutlines(topology: Topology): Coordinates[][] {
-  const land = topology.objects["land"];
+  const land = topology.objects.land;
   const found: Feature | FeatureCollection | null = land === undefined ? null : feature(topology, land);
   const features = found === null ? [] : found.type === "FeatureCollection" ? found.features : [found];
   const outlines = features.flatMap(({ geometry }) => {
