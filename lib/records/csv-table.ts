@@ -58,7 +58,7 @@ function parseRows(format: CsvFormat, problems: Problems): CsvRow[] {
     return records.map(({ info, record }) => ({ row: info.lines, cells: record }));
   } catch (error) {
     if (!(error instanceof CsvError)) throw error;
-    const line: unknown = error["lines"];
+    const line: unknown = error.lines;
     const row = typeof line === "number" ? { row: line } : {};
     problems.add({ code: "not-csv", ...row, wanted: "CSV in which every quotation mark that opens a cell is closed at its end" });
     problems.throwIfAny();

@@ -16,7 +16,7 @@ export type TimeOutcome =
 export function parseIsoTime(text: string): TimeOutcome {
   const match = SHAPE.exec(text);
   if (match === null) return { kind: "not-a-time" };
-  const [year = 0, month = 0, day = 0, hour = 0, minute = 0, second = 0] = match.slice(1, 7).map((part) => Number(part ?? 0));
+  const [year = 0, month = 0, day = 0, hour = 0, minute = 0, second = 0] = [1, 2, 3, 4, 5, 6].map((part) => Number(match[part] ?? 0));
   if (year < 1000 || month < 1 || month > 12 || day < 1 || day > daysInMonth(year, month)) return { kind: "no-such-time" };
   if (hour > 23 || minute > 59 || second > 59) return { kind: "no-such-time" };
   const zone = match[8];
