@@ -1,0 +1,130 @@
+import { spawn } from "node:child_process";
+import { existsSync } from "node:fs";
+import { connect, createServer } from "node:net";
+import { join, resolve } from "node:path";
+import { setTimeout as pause } from "node:timers/promises";
+import { fileURLToPath } from "node:url";
+import { parseArgs } from "node:util";
+import { InputError } from "#lib/core/failures/input-error.ts";
+import { openStore } from "#lib/store/open-store.ts";
+import { callerFolder } from "./caller-folder.ts";
+
+const USAGE = `npm start -- --data DIR [--port N] [--host H]
+
+  --data DIR   folder that holds the database; made if it is missing
+  --port N     3000 unless told otherwise; 0 takes a free one
+  --host H     127.0.0.1 unless told otherwise: only this machine can reach it`;
+
+const packageRoot = fileURLToPath(new URL("../../", import.meta.url));
+
+interface StartCall {
+  readonly dataDirectory: string;
+  readonly port: number;
+  readonly host: string;
+}
+
+function wrongCall(message: string): InputError {
+  return new InputError([{ code: "wrong-call", path: "", message: `${message}\n\n${USAGE}` }]);
+}
+
+/** @throws InputError where the call is not as `USAGE` says. */
+function readCall(args: readonly string[]): StartCall | "help" {
+  const options = {
+    data: { type: "string" },
+    port: { type: "string", default: "3000" },
+    host: { type: "string", default: "127.0.0.1" },
+    help: { type: "boolean", short: "h", default: false },
+  } as const;
+  const values = readOptions(() => parseArgs({ args: [...args], options, strict: true }).values);
+  if (values.help) return "help";
+  if (values.data === undefined || values.data === "") throw wrongCall("No data folder is named.");
+  const port = Number(values.port);
+  if (!/^\d+$/.test(values.port) || port > 65_535) {
+    throw wrongCall(`--port: found "${values.port}"; wanted a whole number from 0 to 65535.`);
+  }
+  const folder = callerFolder({ workingFolder: process.cwd(), packageRoot, initFolder: process.env.INIT_CWD });
+  return { dataDirectory: resolve(folder, values.data), port, host: values.host };
+}
+
+function readOptions<Values>(read: () => Values): Values {
+  try {
+    return read();
+  } catch (error) {
+    throw wrongCall(error instanceof Error ? error.message : String(error));
+  }
+}
+
+/** A port of `host` that nothing listens on: `port` itself, or any where it is 0. Null where it is taken. */
+function freePort({ host, port }: { host: string; port: number }): Promise<number | null> {
+  return new Promise((answer) => {
+    const probe = createServer();
+    probe.once("error", () => {
+      answer(null);
+    });
+    probe.listen(port, host, () => {
+      const address = probe.address();
+      probe.close(() => {
+        answer(typeof address === "object" && address !== null ? address.port : port);
+      });
+    });
+  });
+}
+
+function answersAt({ host, port }: { host: string; port: number }): Promise<boolean> {
+  return new Promise((answer) => {
+    const socket = connect({ host, port });
+    socket.once("connect", () => {
+      socket.destroy();
+      answer(true);
+    });
+    socket.once("error", () => {
+      answer(false);
+    });
+  });
+}
+
+/** Serves until it is told to stop; gives the exit status. */
+async function serve(call: StartCall): Promise<number> {
+  if (!existsSync(join(packageRoot, ".next", "BUILD_ID"))) throw wrongCall("The pages are not built yet. First: npm run build");
+  const port = await freePort(call);
+  if (port === null) throw wrongCall(`Port ${call.port} of ${call.host} is taken. Name another with --port.`);
+  // Pending migrations are applied here, before anyone can ask for a page, and fail where the keeper sees it.
+  const migrationsDirectory = join(packageRoot, "prisma", "migrations");
+  await (await openStore({ dataDirectory: call.dataDirectory, migrationsDirectory })).close();
+
+  const next = join(packageRoot, "node_modules", "next", "dist", "bin", "next");
+  const server = spawn(process.execPath, [next, "start", "--hostname", call.host, "--port", String(port)], {
+    cwd: packageRoot,
+    // Its standard output is dropped: it would greet with an address of its own.
+    stdio: ["ignore", "ignore", "inherit"],
+    env: { ...process.env, NODE_ENV: "production", NEXT_TELEMETRY_DISABLED: "1", OFFING_DATA_DIRECTORY: call.dataDirectory },
+  });
+  const ended = new Promise<number>((answer) => {
+    server.once("error", () => {
+      answer(1);
+    });
+    server.once("exit", (code, signal) => {
+      answer(code ?? (signal === "SIGINT" || signal === "SIGTERM" ? 0 : 1));
+    });
+  });
+  for (const signal of ["SIGINT", "SIGTERM"] as const) process.on(signal, () => server.kill(signal));
+
+  let isUp = false;
+  while (!isUp && server.exitCode === null) {
+    await pause(50);
+    isUp = await answersAt({ host: call.host, port });
+  }
+  const name = call.host.includes(":") ? `[${call.host}]` : call.host;
+  if (isUp) console.log(`Offing is at http://${name}:${port}/\nData: ${call.dataDirectory}\nCtrl-C stops it.`);
+  return ended;
+}
+
+try {
+  const call = readCall(process.argv.slice(2));
+  if (call === "help") console.log(USAGE);
+  else process.exitCode = await serve(call);
+} catch (error) {
+  if (!(error instanceof InputError)) throw error;
+  console.error(error.message);
+  process.exitCode = 2;
+}
