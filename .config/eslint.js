@@ -18,6 +18,8 @@ export default tseslint.config(
       "@typescript-eslint/switch-exhaustiveness-check": "error",
       // Numbers in a sentence are this program's trade.
       "@typescript-eslint/restrict-template-expressions": ["error", { allowNumber: true }],
+      "@typescript-eslint/no-confusing-void-expression": ["error", { ignoreArrowShorthand: true }],
+      "@typescript-eslint/dot-notation": ["error", { allowIndexSignaturePropertyAccess: true }],
       // Typed arrays and plain ones are both walked by index where speed asks for it.
       "@typescript-eslint/prefer-for-of": "off",
     },
