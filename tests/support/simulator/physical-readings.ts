@@ -74,47 +74,53 @@ function ridgeReadings(view: StationView, way: Extract<ReadingWay, { kind: "ridg
 /** Energy of one bin against time, summed over every emitter, and where it peaks. */
 function ridgeBin({ storm }: StationView, sources: readonly Source[], lowHz: number, widthHz: number): RidgeBin {
   const sigmaHz = storm.shape.spectrumSigmaHz;
-  const arrivals = sources.flatMap(({ distanceMetres, emitter }) =>
-    Array.from({ length: BAND_PARTS }, (_, part) => {
-      const frequencyHz = lowHz + ((part + 0.5) / BAND_PARTS) * widthHz;
-      const epochSeconds = emitter.epochSeconds + travelSeconds({ frequencyHz, distanceMetres });
-      return { epochSeconds, frequencyHz, energy: strength(frequencyHz, emitter.peakHz, sigmaHz) };
-    }),
-  );
-  const total = arrivals.reduce((sum, arrival) => sum + arrival.energy, 0);
-  const peak = smoothPeak(arrivals);
+  const { firstEpochSeconds, slots } = emptySlots(sources, lowHz, lowHz + widthHz);
+  let total = 0;
+  let moment = 0;
+  for (let part = 0; part < BAND_PARTS; part++) {
+    const frequencyHz = lowHz + ((part + 0.5) / BAND_PARTS) * widthHz;
+    for (const { distanceMetres, emitter } of sources) {
+      const energy = strength(frequencyHz, emitter.peakHz, sigmaHz);
+      const slot = Math.floor((emitter.epochSeconds + travelSeconds({ frequencyHz, distanceMetres }) - firstEpochSeconds) / SLOT_SECONDS);
+      slots[slot] = (slots[slot] ?? NaN) + energy;
+      total += energy;
+      moment += energy * frequencyHz;
+    }
+  }
+  const peak = peakOf(smoothed(slots));
   return {
     centreHz: lowHz + widthHz / 2,
-    meanHz: arrivals.reduce((sum, arrival) => sum + arrival.energy * arrival.frequencyHz, 0) / total,
-    peakEpochSeconds: peak.epochSeconds,
+    meanHz: moment / total,
+    peakEpochSeconds: firstEpochSeconds + (peak.slot + 0.5) * SLOT_SECONDS,
     peakEnergy: peak.energy / widthHz,
   };
 }
 
-function smoothPeak(arrivals: readonly { epochSeconds: number; energy: number }[]): { epochSeconds: number; energy: number } {
-  const first = arrivals.reduce((least, arrival) => Math.min(least, arrival.epochSeconds), Infinity);
-  const last = arrivals.reduce((most, arrival) => Math.max(most, arrival.epochSeconds), -Infinity);
-  const slots = new Float64Array(Math.ceil((last - first) / SLOT_SECONDS) + 1);
-  for (const { epochSeconds, energy } of arrivals) {
-    const slot = Math.floor((epochSeconds - first) / SLOT_SECONDS);
-    slots[slot] = (slots[slot] ?? NaN) + energy;
+function emptySlots(sources: readonly Source[], lowHz: number, highHz: number): { firstEpochSeconds: number; slots: Float64Array } {
+  let firstEpochSeconds = Infinity;
+  let last = -Infinity;
+  for (const { distanceMetres, emitter } of sources) {
+    firstEpochSeconds = Math.min(firstEpochSeconds, emitter.epochSeconds + travelSeconds({ frequencyHz: lowHz, distanceMetres }));
+    last = Math.max(last, emitter.epochSeconds + travelSeconds({ frequencyHz: highHz, distanceMetres }));
   }
-  const smooth = smoothed(slots);
+  return { firstEpochSeconds, slots: new Float64Array(Math.ceil((last - firstEpochSeconds) / SLOT_SECONDS) + 1) };
+}
+
+/** The highest slot, and between it and its neighbours the top of the parabola through them. */
+function peakOf(slots: Float64Array): { slot: number; energy: number } {
   let top = 0;
-  smooth.forEach((energy, slot) => (top = energy > (smooth[top] ?? NaN) ? slot : top));
-  const [before, at, after] = [smooth[top - 1] ?? 0, smooth[top] ?? NaN, smooth[top + 1] ?? 0];
+  slots.forEach((energy, slot) => (top = energy > (slots[top] ?? NaN) ? slot : top));
+  const [before, at, after] = [slots[top - 1] ?? 0, slots[top] ?? NaN, slots[top + 1] ?? 0];
   const bend = before - 2 * at + after;
-  const within = bend === 0 ? 0 : (0.5 * (before - after)) / bend;
-  return { epochSeconds: first + (top + 0.5 + within) * SLOT_SECONDS, energy: at };
+  return { slot: top + (bend === 0 ? 0 : (0.5 * (before - after)) / bend), energy: at };
 }
 
 function smoothed(slots: Float64Array): Float64Array {
   const reach = Math.ceil((3 * SMOOTHING_SECONDS) / SLOT_SECONDS);
+  const kernel = Array.from({ length: 2 * reach + 1 }, (_, i) => Math.exp(-0.5 * (((i - reach) * SLOT_SECONDS) / SMOOTHING_SECONDS) ** 2));
   return slots.map((_, slot) => {
     let sum = 0;
-    for (let lag = -reach; lag <= reach; lag++) {
-      sum += (slots[slot + lag] ?? 0) * Math.exp(-0.5 * ((lag * SLOT_SECONDS) / SMOOTHING_SECONDS) ** 2);
-    }
+    kernel.forEach((weight, i) => (sum += weight * (slots[slot + i - reach] ?? 0)));
     return sum;
   });
 }

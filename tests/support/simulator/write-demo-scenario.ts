@@ -1,0 +1,11 @@
+import { mkdirSync, writeFileSync } from "node:fs";
+import { dirname, join } from "node:path";
+import { fileURLToPath } from "node:url";
+import { demoFiles } from "./demo-scenario.ts";
+
+/** Writes the demo scenario anew: `npx tsx tests/support/simulator/write-demo-scenario.ts`. */
+const folder = fileURLToPath(new URL("../../../fixtures/scenarios/demo/", import.meta.url));
+for (const [path, text] of demoFiles()) {
+  mkdirSync(dirname(join(folder, path)), { recursive: true });
+  writeFileSync(join(folder, path), text);
+}
