@@ -1,0 +1,44 @@
+import { chiSquareSurvival } from "../statistics/chi-square.ts";
+import type { SourceAnswer } from "./answer.ts";
+import type { StraySet } from "./belonging.ts";
+import { conditionAt } from "./conditioned.ts";
+import { exactSite } from "./exact-site.ts";
+import type { Peak } from "./peak.ts";
+import type { PlacedMode } from "./possible-sources.ts";
+import type { SearchInput } from "./search.ts";
+import { misfit, project } from "./weigh.ts";
+
+export interface FitAtPeak {
+  readonly peak: Peak | null;
+  readonly distances: Float64Array;
+  readonly belongs: readonly number[];
+  readonly stray: StraySet;
+  readonly summary: SourceAnswer["fit"];
+}
+
+/**
+ * How well the stations that belong (probability of a half and more) meet at the placed source: chi-square with
+ * 2k - 3 degrees of freedom for k stations (two coordinates and a time are fitted), and how far their rings miss it.
+ */
+export function fitAtPeak({ network, land }: SearchInput, main: PlacedMode, belongs: readonly number[]): FitAtPeak {
+  const site = exactSite(network, main.position, land);
+  const stray = belongs.flatMap((probability, i) => (probability < 0.5 ? [i] : []));
+  const base = { peak: main.peak, distances: site.distances, belongs, stray };
+  const conditioned = conditionAt(network, site.azimuths, [stray]);
+  const subset = conditioned?.subsets[0];
+  const count = network.size - stray.length;
+  if (!conditioned || !subset || count < 2) return { ...base, summary: null };
+
+  const chiSquare = Math.max(0, misfit(subset, project(conditioned, site)));
+  const degreesOfFreedom = 2 * count - 3;
+  const squares = Array.from(site.distances, (distance, i) => (stray.includes(i) ? 0 : (distance - (network.distances[i] ?? NaN)) ** 2));
+  return {
+    ...base,
+    summary: {
+      chiSquare,
+      degreesOfFreedom,
+      pValue: chiSquareSurvival(chiSquare, degreesOfFreedom),
+      ringMissMetres: Math.sqrt(squares.reduce((sum, square) => sum + square, 0) / count),
+    },
+  };
+}

@@ -1,0 +1,21 @@
+import { geodesicInverse } from "../geodesy/geodesic.ts";
+import { straySets } from "./belonging.ts";
+import { networkOf, type Network } from "./network.ts";
+import { climbToPeak, type Peak } from "./peak.ts";
+
+/**
+ * How far (m) the best point moves when each station in turn is left out, in the network's order; null where fewer
+ * than two would be left, or nothing is found without it.
+ */
+export function leaveOneOutShifts(network: Network, peak: Peak, clocksSetAside: ReadonlySet<string>): (number | null)[] {
+  return network.arrivals.map((left) => {
+    if (network.size < 3) return null;
+    const others = networkOf(network.arrivals.filter((arrival) => arrival !== left), {
+      settings: network.settings,
+      spreadVarianceFactor: network.spreadVarianceFactor,
+      clocksSetAside,
+    });
+    const without = climbToPeak(others, peak.position, straySets(others.size));
+    return without && geodesicInverse({ from: peak.position, to: without.position }).distanceMetres;
+  });
+}
