@@ -3,5 +3,5 @@ declare module "d3-geo-projection" {
   import type { GeoProjection } from "d3-geo";
   import type { Geometry } from "geojson";
 
-  export function geoProject<G extends Geometry>(geometry: G, projection: GeoProjection): Geometry | null;
+  export function geoProject(geometry: Geometry, projection: GeoProjection): Geometry | null;
 }

@@ -1,7 +1,7 @@
-import type { ArrivalEstimate } from "#lib/core/arrival/estimate.ts";
-import type { LineOutcome } from "#lib/core/arrival/line.ts";
+import { outcomeEstimate } from "#lib/core/arrival/outcome-estimate.ts";
 import type { SightTable } from "#lib/core/geodesy/sight-table.ts";
 import type { SourceAnswer } from "#lib/core/source/answer.ts";
+import { ringSigmaMetres } from "#lib/core/source/ring-sigma.ts";
 import type { SpreadSettings } from "#lib/core/source/settings.ts";
 import type { EventSolution, StationSolution } from "#lib/core/source/solution.ts";
 import type { ChartArea, ChartLine, ChartPoint } from "./chart-point.ts";
@@ -10,7 +10,6 @@ import { areaCopies, lineCopies } from "./copies.ts";
 import { areaIntoWindow } from "./into-window.ts";
 import { regionArea, regionOutline } from "./region-shape.ts";
 import { bandPolygon, ringLine } from "./ring-shape.ts";
-import { ringSigmaMetres } from "./ring-sigma.ts";
 import { sightLine, type SightLine } from "./sight-line.ts";
 
 export interface RingLayer {
@@ -62,17 +61,11 @@ export function eventLayers(drawing: {
   };
 }
 
-/** What a station's line says, whether fitted here or sent in; null where there is none. */
-export function estimateOf(outcome: LineOutcome): ArrivalEstimate | null {
-  if (outcome.kind === "fitted") return outcome.line;
-  return outcome.kind === "sent-in" ? outcome.estimate : null;
-}
-
 function ringLayers(drawing: { window: ChartWindow; solution: EventSolution; spread: SpreadSettings }): RingLayer[] {
   const { window, solution, spread } = drawing;
   const spreadRaisedBy = solution.answer?.spreadRaisedBy ?? 1;
   return solution.stations.flatMap((station): RingLayer[] => {
-    const estimate = estimateOf(station.outcome);
+    const estimate = outcomeEstimate(station.outcome);
     if (estimate === null) return [];
     const sigmaMetres = ringSigmaMetres({ estimate, spread, spreadRaisedBy });
     return [
@@ -116,7 +109,7 @@ function sightLines(drawing: {
   const source = drawing.solution.answer?.source;
   if (!source) return [];
   return drawing.solution.stations
-    .filter((station) => estimateOf(station.outcome) !== null)
+    .filter((station) => outcomeEstimate(station.outcome) !== null)
     .map((station) => ({
       stationId: station.id,
       ...sightLine(drawing.window, {

@@ -1,0 +1,84 @@
+"use client";
+
+import "leaflet/dist/leaflet.css";
+import { latLngBounds, type LatLngBounds, type Map as LeafletMap } from "leaflet";
+import { useMemo } from "react";
+import { MapContainer, ZoomControl } from "react-leaflet";
+import type { BaseMap } from "#lib/chart/base-map.ts";
+import type { ChartArea, ChartPoint } from "#lib/chart/chart-point.ts";
+import { pointInWindow, type ChartWindow } from "#lib/chart/chart-window.ts";
+import type { EventLayers } from "#lib/chart/event-layers.ts";
+import type { NumberedStation } from "#lib/core/arrival/numbered-stations.ts";
+import styles from "./chart.module.css";
+import { BaseMapLayers } from "./base-map-layers.tsx";
+import { ExactLines } from "./exact-lines.tsx";
+import { RingLayers } from "./ring-layers.tsx";
+import { ScaleBar } from "./scale-bar.tsx";
+import { SourceLayers } from "./source-layers.tsx";
+import { StationMarks } from "./station-marks.tsx";
+import type { EventView } from "./view.ts";
+
+export interface ChartProps {
+  readonly window: ChartWindow;
+  readonly stations: readonly NumberedStation[];
+  readonly baseMap: BaseMap | null;
+  /** Null until the first drawing is done. */
+  readonly layers: EventLayers | null;
+  readonly overlap: readonly ChartArea[];
+  readonly view: EventView;
+  readonly onFocus: (id: string) => void;
+}
+
+/** The chart of one event. It has the map library's own keys: arrows move it, plus and minus change its scale. */
+export function Chart(props: ChartProps) {
+  const { window, stations, layers } = props;
+  if (layers === null) return null;
+  return <DrawnChart {...props} layers={layers} key={`${window.centreLongitudeDegrees} ${stations.length}`} />;
+}
+
+function DrawnChart(props: ChartProps & { layers: EventLayers }) {
+  const { window, stations, layers, view } = props;
+  // Where the chart opens. Later answers leave it where the reader has put it.
+  const opensOn = useMemo(() => extent(window, stations, layers), [window, stations]); // eslint-disable-line react-hooks/exhaustive-deps
+  const middle = window.centreLongitudeDegrees;
+  return (
+    <MapContainer
+      ref={nameTheChart}
+      className={styles.chart ?? ""}
+      bounds={opensOn}
+      boundsOptions={{ padding: [28, 28] }}
+      maxBounds={[[-86, middle - 200], [86, middle + 200]]}
+      maxBoundsViscosity={1}
+      minZoom={1}
+      maxZoom={8}
+      zoomSnap={0.25}
+      zoomControl={false}
+      attributionControl={false}
+    >
+      <ExactLines />
+      <BaseMapLayers baseMap={props.baseMap} middle={middle} />
+      <RingLayers layers={layers} overlap={props.overlap} view={view} />
+      <SourceLayers layers={layers} />
+      <StationMarks window={window} stations={stations} view={view} onFocus={props.onFocus} />
+      <ZoomControl position="topleft" />
+      <ScaleBar unit={view.unit} />
+    </MapContainer>
+  );
+}
+
+function nameTheChart(map: LeafletMap | null): void {
+  const container = map?.getContainer();
+  container?.setAttribute("role", "region");
+  container?.setAttribute("aria-label", "Map of stations, rings and sources. Arrow keys move it, plus and minus change its scale.");
+}
+
+/** What must be seen at first: every station, and every place where the storm may have been. */
+function extent(window: ChartWindow, stations: readonly NumberedStation[], layers: EventLayers): LatLngBounds {
+  const places: ChartPoint[] = [
+    ...stations.map(({ position }) => pointInWindow(window, position)),
+    ...layers.possibleSources.map(({ point }) => point),
+    ...(layers.source === null ? layers.rings.flatMap(({ line }) => line[1] ?? []) : [layers.source]),
+  ];
+  const shown = places.map(([latitude, longitude]): ChartPoint => [Math.max(-78, Math.min(80, latitude)), longitude]);
+  return latLngBounds(shown);
+}

@@ -1,0 +1,85 @@
+import type { GeometryCollection, Topology } from "topojson-specification";
+import { bandOverlaps } from "#lib/chart/band-overlaps.ts";
+import { baseMap } from "#lib/chart/base-map.ts";
+import { eventLayers } from "#lib/chart/event-layers.ts";
+import { withoutStations } from "#lib/core/arrival/without-stations.ts";
+import { buildLandMask } from "#lib/core/geodesy/land-mask.ts";
+import type { SightTable } from "#lib/core/geodesy/sight-table.ts";
+import { solveEvent } from "#lib/core/source/solve-event.ts";
+import type { EventSolution } from "#lib/core/source/solution.ts";
+import { sightOfStations } from "./sight-of-stations.ts";
+import type { WorkerReport, WorkerRequest } from "./worker-messages.ts";
+
+type Opening = Extract<WorkerRequest, { kind: "open" }>;
+type Question = Exclude<WorkerRequest, Opening>;
+
+/** Works out and draws one event away from the page, so that the page stays quick under the hand. */
+function workOnEvents(): (request: WorkerRequest) => void {
+  let answerQuestion: ((question: Question) => void) | null = null;
+  const waiting: Question[] = [];
+
+  return (request) => {
+    if (request.kind !== "open") {
+      if (answerQuestion === null) waiting.push(request);
+      else answerQuestion(request);
+      return;
+    }
+    openEvent(request)
+      .then((answer) => {
+        answerQuestion = answer;
+        waiting.splice(0).forEach(answer);
+      })
+      .catch((error: unknown) => {
+        reportFailure(0, error);
+      });
+  };
+}
+
+async function openEvent(opening: Opening): Promise<(question: Question) => void> {
+  const topology = await fetchLand();
+  report({ kind: "base-map", baseMap: baseMap(opening.window, topology) });
+  const land = buildLandMask(topology);
+  const sightTables = opening.settings.sight ? sightOfStations(opening.observations, land) : new Map<string, SightTable>();
+  const drawing = { window: opening.window, spread: opening.settings.spread, sightTables };
+  let shown = opening.solution;
+
+  const show = (ask: number, solution: EventSolution): void => {
+    shown = solution;
+    report({ kind: "drawn", ask, solution, layers: eventLayers({ ...drawing, solution }) });
+  };
+  show(0, opening.solution);
+
+  return (question) => {
+    try {
+      if (question.kind === "overlap") {
+        const areas = bandOverlaps({ ...drawing, solution: shown, focus: question.focus });
+        report({ kind: "overlap", ask: question.ask, areas });
+        return;
+      }
+      const observations = withoutStations(opening.observations, question.without);
+      show(question.ask, solveEvent({ observations, settings: opening.settings, land, sightTables }));
+    } catch (error) {
+      reportFailure(question.ask, error);
+    }
+  };
+}
+
+/** Fetched once and apart from the page's own scripts: land is as large as all of them. */
+async function fetchLand(): Promise<Topology<{ land: GeometryCollection }>> {
+  const response = await fetch(new URL("world-atlas/land-50m.json", import.meta.url));
+  if (!response.ok) throw new Error(`The base map could not be fetched (status ${response.status}).`);
+  return (await response.json()) as Topology<{ land: GeometryCollection }>;
+}
+
+function reportFailure(ask: number, error: unknown): void {
+  report({ kind: "failed", ask, message: error instanceof Error ? error.message : String(error) });
+}
+
+function report(message: WorkerReport): void {
+  postMessage(message);
+}
+
+const work = workOnEvents();
+addEventListener("message", (event: MessageEvent<WorkerRequest>) => {
+  work(event.data);
+});

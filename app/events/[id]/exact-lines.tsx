@@ -1,0 +1,23 @@
+import { point, type LatLngExpression, type Map as LeafletMap, type Point } from "leaflet";
+import { useEffect } from "react";
+import { useMap } from "react-leaflet";
+
+/**
+ * Keeps the fractions of pixels in lines and areas. The map library rounds each vertex to a whole pixel, which makes
+ * a ring of many short sides tremble. Stands before the layers, so that they are placed after it.
+ */
+export function ExactLines() {
+  const map = useMap();
+  useEffect(() => {
+    keepFractions(map);
+  }, [map]);
+  return null;
+}
+
+function keepFractions(map: LeafletMap): void {
+  map.latLngToLayerPoint = (at: LatLngExpression): Point => {
+    const { x, y } = map.project(at);
+    const origin = map.getPixelOrigin();
+    return point(x - origin.x, y - origin.y);
+  };
+}

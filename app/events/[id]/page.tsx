@@ -1,0 +1,51 @@
+import type { Metadata } from "next";
+import { notFound } from "next/navigation";
+import { cache } from "react";
+import { locateEvent } from "#lib/application/locate-event.ts";
+import type { StoredEvent } from "#lib/application/ports.ts";
+import { toEstimationSettings } from "#lib/contracts/estimation-settings.ts";
+import { DEFAULT_PUBLIC_SETTINGS } from "#lib/contracts/settings.ts";
+import { numberedStations } from "#lib/core/arrival/numbered-stations.ts";
+import { withoutStations } from "#lib/core/arrival/without-stations.ts";
+import { runningProgram } from "#lib/http/running-program.ts";
+import { EventSheet } from "./event-sheet.tsx";
+import { viewFromQuery } from "./view.ts";
+
+interface EventAddress {
+  readonly params: Promise<{ id: string }>;
+  readonly searchParams: Promise<Record<string, string | string[] | undefined>>;
+}
+
+/** The head and the body of the page ask for the same event: it is loaded once. */
+const loadEvent = cache(async (id: string): Promise<StoredEvent | null> => {
+  const { events } = await runningProgram();
+  return events.loadEvent(id);
+});
+
+export async function generateMetadata({ params }: EventAddress): Promise<Metadata> {
+  const event = await loadEvent((await params).id);
+  return { title: event?.title ?? "No such event" };
+}
+
+export default async function EventPage({ params, searchParams }: EventAddress) {
+  const event = await loadEvent((await params).id);
+  if (event === null) notFound();
+
+  const { title, note, observations } = event;
+  const view = viewFromQuery(
+    toQuery(await searchParams),
+    numberedStations(observations).map(({ id }) => id),
+  );
+  const { host } = await runningProgram();
+  const settings = DEFAULT_PUBLIC_SETTINGS;
+  const { solution } = locateEvent({ observations: withoutStations(observations, view.without), settings, host });
+  return <EventSheet {...{ title, note, observations, solution, view }} settings={toEstimationSettings(settings)} />;
+}
+
+function toQuery(searchParams: Record<string, string | string[] | undefined>): URLSearchParams {
+  const query = new URLSearchParams();
+  for (const [key, values] of Object.entries(searchParams)) {
+    for (const value of [values ?? []].flat()) query.append(key, value);
+  }
+  return query;
+}

@@ -1,0 +1,26 @@
+import type { EventLayers } from "#lib/chart/event-layers.ts";
+import type { BaseMap } from "#lib/chart/base-map.ts";
+import type { ChartArea } from "#lib/chart/chart-point.ts";
+import type { ChartWindow } from "#lib/chart/chart-window.ts";
+import type { EventObservations } from "#lib/core/arrival/observations.ts";
+import type { EstimationSettings } from "#lib/core/source/settings.ts";
+import type { EventSolution } from "#lib/core/source/solution.ts";
+
+/** What the page asks of its worker. `ask` numbers the questions, so that an answer overtaken by a newer one is dropped. */
+export type WorkerRequest =
+  | {
+      readonly kind: "open";
+      readonly observations: EventObservations;
+      readonly settings: EstimationSettings;
+      readonly window: ChartWindow;
+      /** As worked out by the server: drawn at once, before anything is worked out here. */
+      readonly solution: EventSolution;
+    }
+  | { readonly kind: "solve"; readonly ask: number; readonly without: readonly string[] }
+  | { readonly kind: "overlap"; readonly ask: number; readonly focus: string | null };
+
+export type WorkerReport =
+  | { readonly kind: "base-map"; readonly baseMap: BaseMap }
+  | { readonly kind: "drawn"; readonly ask: number; readonly solution: EventSolution; readonly layers: EventLayers }
+  | { readonly kind: "overlap"; readonly ask: number; readonly areas: readonly ChartArea[] }
+  | { readonly kind: "failed"; readonly ask: number; readonly message: string };

@@ -1,0 +1,43 @@
+/** Narrow and not breaking, so that a number never ends a line half said. */
+const THIN_SPACE = "\u202f";
+const MINUS = "\u2212";
+/** Stands where a figure would, when there is none. */
+export const NO_FIGURE = "\u2013";
+
+/** A number with thin spaces between thousands and a true minus sign; `NO_FIGURE` for what is not a number. */
+export function figure(value: number, fractionDigits = 0): string {
+  if (!Number.isFinite(value)) return NO_FIGURE;
+  const fixed = Math.abs(value).toFixed(fractionDigits);
+  const [whole = "0", fraction] = fixed.split(".");
+  const grouped = whole.replace(/\B(?=(\d{3})+$)/g, THIN_SPACE);
+  const negative = value < 0 && Number(fixed) !== 0;
+  return `${negative ? MINUS : ""}${grouped}${fraction === undefined ? "" : `.${fraction}`}`;
+}
+
+/** A difference: always with its sign, but for zero. */
+export function signedFigure(value: number, fractionDigits = 0): string {
+  const plain = figure(value, fractionDigits);
+  return value > 0 && Number(value.toFixed(fractionDigits)) !== 0 ? `+${plain}` : plain;
+}
+
+/** A probability with two digits; what is not quite certain never reads as 0 or 1. */
+export function probabilityFigure(probability: number): string {
+  if (probability > 0 && probability < 0.005) return "<0.01";
+  if (probability < 1 && probability >= 0.995) return ">0.99";
+  return figure(probability, 2);
+}
+
+/** A probability in per cent, for a sentence. */
+export function percentWords(probability: number): string {
+  const percent = probability * 100;
+  if (percent > 0 && percent < 1) return `under 1${THIN_SPACE}%`;
+  if (percent < 100 && percent > 99) return `over 99${THIN_SPACE}%`;
+  return `${figure(percent)}${THIN_SPACE}%`;
+}
+
+/** Rounded to two leading digits, for areas and spans that are not known better than that. */
+export function twoLeadingDigits(value: number): number {
+  if (value === 0 || !Number.isFinite(value)) return value;
+  const step = 10 ** (Math.floor(Math.log10(Math.abs(value))) - 1);
+  return Math.round(value / step) * step;
+}
