@@ -67,6 +67,6 @@ function defaultNotes(fileName: string, counts: DefaultCounts): Note[] {
   const used = { distance_sigma_km: "8 % of the distance", origin_time_sigma_h: "12 h", correlation: "-0.9" };
   return SIGMA_COLUMNS.filter((column) => counts[column] > 0).map((column) => ({
     code: "default-error",
-    message: `${fileName}: ${counts[column]} estimates give no ${column}: ${used[column]} was used.`,
+    message: `${fileName}, ${counts[column] === 1 ? "1 row" : `${counts[column]} rows`}: no ${column}; ${used[column]} was used.`,
   }));
 }

@@ -107,6 +107,9 @@ function notesOf(fileName: string, unknown: readonly string[], emptyRows: number
     const names = unknown.slice(0, 20).map(quoted).join(", ") + (unknown.length > 20 ? ` and ${unknown.length - 20} more` : "");
     notes.push({ code: "unknown-columns", message: `${fileName}: these columns are not known and were not used: ${names}.` });
   }
-  if (emptyRows > 0) notes.push({ code: "empty-rows", message: `${fileName}: ${emptyRows} rows hold no cell with anything in it and were passed over.` });
+  if (emptyRows > 0) {
+    const rows = emptyRows === 1 ? "1 row holds" : `${emptyRows} rows hold`;
+    notes.push({ code: "empty-rows", message: `${fileName}: ${rows} nothing and did not count.` });
+  }
   return notes;
 }

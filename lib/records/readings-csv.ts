@@ -17,18 +17,18 @@ interface DefaultValue {
 }
 
 /** Common practice, no source: half an hour for a peak of energy picked from hourly spectra, minutes for a stopwatch. */
-const RIDGE_TIME: DefaultValue = { value: 1800, message: "readings of kind ridge give no time_sigma_s: 1800 s was used" };
+const RIDGE_TIME: DefaultValue = { value: 1800, message: "kind ridge and no time_sigma_s; 1800 s was used" };
 const RIDGE_FREQUENCY: DefaultValue = {
   value: 0,
-  message: "readings of kind ridge give no error of the period or frequency: 0 was used",
+  message: "kind ridge and no error of the period or frequency; 0 was used",
 };
-const TIMED_TIME: DefaultValue = { value: 300, message: "readings of kind timed give no time_sigma_s: 300 s was used" };
+const TIMED_TIME: DefaultValue = { value: 300, message: "kind timed and no time_sigma_s; 300 s was used" };
 const TIMED_PERIOD_FRACTION: DefaultValue = {
   value: 0.025,
-  message: "readings of kind timed give no error of the period or frequency: 2.5 % of the period was used",
+  message: "kind timed and no error of the period or frequency; 2.5 % of the period was used",
 };
 /** Common practice, no source: mean directions of a swell swing by 10 degrees within the hour. */
-const BEARING_DEGREES: DefaultValue = { value: 15, message: "bearings give no bearing_sigma_deg: 15 degrees was used" };
+const BEARING_DEGREES: DefaultValue = { value: 15, message: "a bearing and no bearing_sigma_deg; 15 degrees was used" };
 
 /** Defaults that stood in for what a row did not say, each counted so that one note can tell of all its rows. */
 type DefaultsUsed = Map<string, number>;
@@ -91,7 +91,7 @@ function readReading(cells: RowCells): Reading | null {
 }
 
 function readBearing(cells: RowCells): Bearing | null {
-  const { cell, row } = cells;
+  const { cell } = cells;
   const comesFromDegrees = readNumber(cell("bearing_deg"), {
     wanted: "a bearing that the waves come from, 0 to 360 degrees clockwise from north",
     accepts: (value) => value >= 0 && value <= 360,
@@ -101,7 +101,8 @@ function readBearing(cells: RowCells): Bearing | null {
   if (comesFromDegrees !== null) {
     return { comesFromDegrees, sigmaDegrees: sigma ?? countDefault(cells, BEARING_DEGREES) };
   }
-  if (sigma !== null) cell("").problems.add({ code: "no-bearing", row, column: "bearing_deg", found: "", wanted: "a bearing where bearing_sigma_deg gives its error" });
+  // An empty cell is the problem here; one that held something unusable has been reported already.
+  if (sigma !== null) readText(cell("bearing_deg", true), "a bearing, since bearing_sigma_deg gives its error");
   return null;
 }
 
@@ -111,5 +112,5 @@ function countDefault({ defaults }: RowCells, { value, message }: DefaultValue):
 }
 
 function defaultNotes(fileName: string, defaults: DefaultsUsed): Note[] {
-  return [...defaults].map(([message, rows]) => ({ code: "default-error", message: `${fileName}: ${rows} ${message}.` }));
+  return [...defaults].map(([message, rows]) => ({ code: "default-error", message: `${fileName}, ${rows === 1 ? "1 row" : `${rows} rows`}: ${message}.` }));
 }
