@@ -8,7 +8,7 @@ import type { ChartArea, ChartLine, ChartPoint } from "./chart-point.ts";
 import { pointInWindow, type ChartWindow } from "./chart-window.ts";
 import { areaCopies, lineCopies } from "./copies.ts";
 import { areaIntoWindow } from "./into-window.ts";
-import { regionArea, regionOutline } from "./region-shape.ts";
+import { regionShape } from "./region-shape.ts";
 import { bandPolygon, ringLine } from "./ring-shape.ts";
 import { sightLine, type SightLine } from "./sight-line.ts";
 
@@ -94,11 +94,10 @@ export function bandInWindow(
 /** Widest first, so that the surer region lies on top. */
 function regionLayers(answer: SourceAnswer | null): RegionLayer[] {
   const regions = [...(answer?.regions ?? [])].sort((a, b) => b.probability - a.probability);
-  return regions.map(({ probability, geometry }) => ({
-    probability,
-    area: areaCopies(regionArea(geometry)),
-    outline: lineCopies(regionOutline(geometry)),
-  }));
+  return regions.map(({ probability, geometry }) => {
+    const { area, outline } = regionShape(geometry);
+    return { probability, area: areaCopies(area), outline: lineCopies(outline) };
+  });
 }
 
 function sightLines(drawing: {

@@ -1,40 +1,52 @@
 import type { MultiPolygon, Position as Pair } from "geojson";
 import type { ChartArea, ChartLine, ChartPoint } from "./chart-point.ts";
+import { smoothClosedLine, smoothOpenLine } from "./smooth-line.ts";
 
-/** A region as it comes in an answer (cut at the 180th meridian, closed over a pole), ready to be copied and painted. */
-export function regionArea(region: MultiPolygon): ChartArea {
-  return region.coordinates.map((polygon) => polygon.map((line) => line.map(toPoint)));
+/** A region as the chart draws it. */
+export interface RegionShape {
+  readonly area: ChartArea;
+  /**
+   * The region's true boundary. The sides that only close its polygons along the 180th meridian or over a pole are
+   * left out: an outline with them would show a wall in the open sea.
+   */
+  readonly outline: ChartLine[];
 }
 
-/**
- * The region's true boundary: the sides that only close it along the 180th meridian or over a pole are no boundary of
- * anything, and an outline that drew them would show a wall in the open sea.
- */
-export function regionOutline(region: MultiPolygon): ChartLine[] {
-  return region.coordinates.flatMap((polygon) => polygon.flatMap(withoutSeams));
+/** A region as it comes in an answer: made of hexagonal cells, cut at the 180th meridian, closed over a pole. */
+export function regionShape(region: MultiPolygon): RegionShape {
+  const lines = region.coordinates.map((polygon) => polygon.map((line) => boundaryPieces(line.map(toPoint))));
+  return {
+    area: lines.map((polygon) => polygon.map((pieces) => pieces.flat())),
+    outline: lines.flat(2).filter((piece) => piece.length > 1),
+  };
 }
 
-function withoutSeams(line: readonly Pair[]): ChartLine[] {
+/** The line in order, in pieces that end where a seam begins. A corner between two seams is a piece of one point. */
+function boundaryPieces(line: ChartLine): ChartLine[] {
   const pieces: ChartLine[] = [];
   let piece: ChartLine = [];
   let previous: ChartPoint | null = null;
-  for (const pair of line) {
-    const point = toPoint(pair);
+  for (const point of line) {
     if (previous !== null && isSeam(previous, point)) {
-      if (piece.length > 1) pieces.push(piece);
+      pieces.push(piece);
       piece = [];
     }
     piece.push(point);
     previous = point;
   }
-  if (piece.length > 1) pieces.push(piece);
-  return pieces;
+  const first = pieces.shift();
+  if (first === undefined) return [smoothClosedLine(piece)];
+  // The line's first and last point are one and the same, and no end of anything.
+  return [[...piece, ...first.slice(1)], ...pieces].map(smoothOpenLine);
 }
 
+/** As close as answers round their degrees. */
+const EDGE_DEGREES = 1e-5;
+
 function isSeam(from: ChartPoint, to: ChartPoint): boolean {
-  const alongAntimeridian = Math.abs(from[1]) === 180 && from[1] === to[1];
-  const alongPole = Math.abs(from[0]) === 90 && from[0] === to[0];
-  return alongAntimeridian || alongPole;
+  const bothAt = (degrees: number, index: 0 | 1): boolean =>
+    Math.abs(Math.abs(from[index]) - degrees) < EDGE_DEGREES && Math.abs(to[index] - from[index]) < EDGE_DEGREES;
+  return bothAt(180, 1) || bothAt(90, 0);
 }
 
 function toPoint([longitude = 0, latitude = 0]: Pair): ChartPoint {

@@ -27,11 +27,10 @@ export function answerWords(said: {
     case "located":
       return { ...placed(answer), verdict: "Located.", sentence: locatedSentence(answer, said) };
     case "several":
-      return { ...placed(answer), verdict: "Several possible sources.", sentence: severalSentence(answer) };
+      return { ...placed(answer), ...severalWords(answer) };
     case "ring-only":
-      return ringOnly(said);
     case "too-few":
-      return tooFew(said.solution);
+      return ringOnly(said);
     case "no-agreement":
       return noAgreement(answer, said.unit);
   }
@@ -49,19 +48,24 @@ function locatedSentence(answer: SourceAnswer, said: { unit: DistanceUnit }): st
   const asked = answer.stations.length;
   const agree = answer.stations.filter(({ belongs }) => belongs !== null && belongs >= 0.5).length;
   const p = answer.fit === null ? "" : ` (p\u00a0${probabilityFigure(answer.fit.pValue)})`;
-  const stations =
-    agree === asked ? `All ${countWord(asked)} stations agree${p}.` : `${startingSentence(countWord(agree))} stations of ${countWord(asked)} agree${p}.`;
+  const all = asked === 2 ? "Both" : `All ${countWord(asked)}`;
+  const who = agree === asked ? `${all} stations` : `${startingSentence(countWord(agree))} stations of ${countWord(asked)}`;
+  const stations = `${who} agree${p}.`;
   const widest = answer.regions.find(({ probability }) => probability === 0.95);
   const region = widest ? ` The 95\u202f% region covers ${areaWords(widest.areaSquareMetres, said.unit)}.` : "";
   return stations + region + landSentence(answer);
 }
 
-function severalSentence(answer: SourceAnswer): string {
+function severalWords(answer: SourceAnswer): { verdict: string; sentence: string } {
   const [first, second] = answer.modes;
-  if (first === undefined) return landSentence(answer).trim();
-  const others =
-    second === undefined ? "" : ` The next is ${positionWords(second.position)} with ${percentWords(second.probability)}.`;
-  return `The most probable of ${countWord(answer.modes.length)} has ${percentWords(first.probability)}.${others}${landSentence(answer)}`;
+  const share = first === undefined ? "too little" : percentWords(first.probability);
+  const land = landSentence(answer);
+  if (second === undefined) {
+    return { verdict: "Not surely placed.", sentence: `The best source holds ${share} of the probability; no other stands out.${land}` };
+  }
+  const next = `${positionWords(second.position)} with ${percentWords(second.probability)}`;
+  const sentence = `The most probable of ${countWord(answer.modes.length)} has ${share}; the next is ${next}.${land}`;
+  return { verdict: "Several possible sources.", sentence };
 }
 
 function landSentence(answer: SourceAnswer): string {
@@ -71,20 +75,27 @@ function landSentence(answer: SourceAnswer): string {
   return ` The most probable point lies on land${water}`;
 }
 
+/** One ring, or several that are one and the same circle. */
 function ringOnly(said: { solution: EventSolution; stations: readonly NumberedStation[]; unit: DistanceUnit }): AnswerWords {
-  for (const { id, outcome, name } of said.solution.stations) {
-    const estimate = outcomeEstimate(outcome);
-    if (estimate === null) continue;
-    const sigmaSeconds = Math.sqrt(estimate.covariance.originVariance);
-    const number = said.stations.find((station) => station.id === id)?.number;
-    return {
-      large: [distanceWords(estimate.distanceMetres, said.unit)],
-      time: `${uncertainMomentWords(estimate.originEpochSeconds, sigmaSeconds)} ${plusMinusHours(sigmaSeconds)}`,
-      verdict: "Distance only.",
-      sentence: `One station gives a ring and a time, not a place: the storm stood somewhere on the ring about ${number === undefined ? "" : `${number}\u00a0`}${name}, in the part that it sees.`,
-    };
-  }
-  return tooFew(said.solution);
+  const heard = said.solution.stations.flatMap((station) => {
+    const estimate = outcomeEstimate(station.outcome);
+    return estimate === null ? [] : [{ station, estimate }];
+  });
+  const [first] = heard;
+  if (first === undefined) return tooFew(said.solution);
+  const { station, estimate } = first;
+  const sigmaSeconds = Math.sqrt(estimate.covariance.originVariance);
+  const number = said.stations.find(({ id }) => id === station.id)?.number ?? "";
+  const where = `the storm stood somewhere on the ring about ${number}\u00a0${station.name}`;
+  return {
+    large: [distanceWords(estimate.distanceMetres, said.unit)],
+    time: `${uncertainMomentWords(estimate.originEpochSeconds, sigmaSeconds)} ${plusMinusHours(sigmaSeconds)}`,
+    verdict: "Distance only.",
+    sentence:
+      heard.length === 1
+        ? `One station gives a ring and a time, not a place: ${where}, in the part that it sees.`
+        : `The stations stand at one place, or at one another’s antipodes, so their rings are one circle: ${where}.`,
+  };
 }
 
 function tooFew(solution: EventSolution): AnswerWords {

@@ -74,11 +74,18 @@ function nameTheChart(map: LeafletMap | null): void {
 
 /** What must be seen at first: every station, and every place where the storm may have been. */
 function extent(window: ChartWindow, stations: readonly NumberedStation[], layers: EventLayers): LatLngBounds {
+  const middle = window.centreLongitudeDegrees;
+  const [widest] = layers.regions;
+  const lines = widest === undefined ? layers.rings.flatMap(({ line }) => line) : widest.outline;
   const places: ChartPoint[] = [
     ...stations.map(({ position }) => pointInWindow(window, position)),
     ...layers.possibleSources.map(({ point }) => point),
-    ...(layers.source === null ? layers.rings.flatMap(({ line }) => line[1] ?? []) : [layers.source]),
+    ...(layers.ruledOut.length <= FEW ? layers.ruledOut.map(({ point }) => point) : []),
+    ...lines.flat().filter(([, longitude]) => Math.abs(longitude - middle) <= 180),
   ];
   const shown = places.map(([latitude, longitude]): ChartPoint => [Math.max(-78, Math.min(80, latitude)), longitude]);
   return latLngBounds(shown);
 }
+
+/** More places than this that the storm did not stand at need not all be seen at first. */
+const FEW = 4;

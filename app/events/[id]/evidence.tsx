@@ -1,4 +1,5 @@
 import type { NumberedStation } from "#lib/core/arrival/numbered-stations.ts";
+import type { AnswerWarning } from "#lib/core/source/answer.ts";
 import type { SpreadSettings } from "#lib/core/source/settings.ts";
 import type { EventSolution } from "#lib/core/source/solution.ts";
 import { checkWords } from "#lib/presentation/check-words.ts";
@@ -20,9 +21,7 @@ export function Evidence(props: {
   onFocus: (id: string) => void;
 }) {
   const { answer } = props.solution;
-  // Why a station has no ring stands in its own row.
-  const refusals = new Set<string>(props.solution.stations.map(({ outcome }) => (outcome.kind === "refused" ? outcome.code : "")));
-  const warnings = [...props.solution.warnings, ...(answer?.warnings ?? [])].filter(({ code }) => !refusals.has(code));
+  const warnings = warningsToSay(props.solution);
   return (
     <section className={styles.evidence} aria-label="Evidence">
       <StationTable {...props} />
@@ -46,6 +45,22 @@ export function Evidence(props: {
   );
 }
 
+/** What the answer's sentence, the checks or a station's own row say in other words already. */
+const SAID_ELSEWHERE: ReadonlySet<string> = new Set([
+  "several-sources",
+  "ring-only",
+  "one-place",
+  "no-agreement",
+  "source-on-land",
+  "clock-suspect",
+  "moving-storm",
+]);
+
+function warningsToSay({ stations, answer, warnings }: EventSolution): AnswerWarning[] {
+  const refusals = new Set<string>(stations.flatMap(({ outcome }) => (outcome.kind === "refused" ? [outcome.code] : [])));
+  return [...warnings, ...(answer?.warnings ?? [])].filter(({ code }) => !SAID_ELSEWHERE.has(code) && !refusals.has(code));
+}
+
 function Checks(props: {
   answer: NonNullable<EventSolution["answer"]>;
   stations: readonly NumberedStation[];
@@ -61,14 +76,14 @@ function Checks(props: {
           <dd>{words.leavingOneOut}</dd>
           <dt>Low half, high half</dt>
           <dd>{words.drift}</dd>
+          <dt>Clocks</dt>
+          <dd>
+            {words.clocks.map((clock) => (
+              <div key={clock}>{clock}</div>
+            ))}
+          </dd>
         </>
       )}
-      <dt>Clocks</dt>
-      <dd>
-        {words.clocks.map((clock) => (
-          <div key={clock}>{clock}</div>
-        ))}
-      </dd>
       {answer.fit !== null && (
         <>
           <dt>Rings miss it by</dt>

@@ -70,7 +70,7 @@ function Row(props: {
         <button type="button" className={styles.focus} aria-pressed={isInFocus} onClick={() => { props.onFocus(id); }}>
           {name}
         </button>
-        {row.sentIn && <span className={styles.soft}> estimate</span>}
+        <span className={styles.soft}> {id}{row.sentIn && ", estimate"}</span>
       </th>
       {row.refusal !== null && <td colSpan={5} className={styles.words}>{row.refusal}</td>}
       {!row.included && <td colSpan={5} className={styles.words}>left out</td>}
