@@ -19,6 +19,8 @@ export interface MatchedStorm {
   readonly random: RandomStream;
   readonly sizes?: EffectSizes;
   readonly noiseSeconds?: number;
+  /** By station; 8 to 24 where not given. */
+  readonly readingsEach?: number;
 }
 
 /**
@@ -32,7 +34,7 @@ export function matchedReadings(storm: MatchedStorm): StationReading[] {
   return stations.flatMap((station, i) => {
     const distanceMetres = (legs[i]?.distanceMetres ?? NaN) * (1 + effects.scaleFraction) + (effects.pathMetres[i] ?? NaN);
     const departure = originEpochSeconds + (effects.departureSeconds[i] ?? NaN);
-    return drawFrequencies(random).map((frequencyHz) => {
+    return drawFrequencies(random, storm.readingsEach ?? random.whole(8, 24)).map((frequencyHz) => {
       const leaves = departure + effects.tiltSecondsPerHz * (frequencyHz - PIVOT_HZ);
       const arrives = leaves + travelSeconds({ frequencyHz, distanceMetres });
       return ridgeReading({ stationId: station.id, frequencyHz, arrivalEpochSeconds: arrives + noiseSeconds * random.normal() });
@@ -55,9 +57,8 @@ export function ridgeReading(entry: { stationId: string; frequencyHz: number; ar
   };
 }
 
-/** 8 to 24 frequencies, evenly over the part of 0.045 to 0.085 Hz that stood out at this station. */
-function drawFrequencies(random: RandomStream): number[] {
-  const count = random.whole(8, 24);
+/** Evenly over the part of 0.045 to 0.085 Hz that stood out at this station. */
+function drawFrequencies(random: RandomStream, count: number): number[] {
   const low = random.between(0.045, 0.053);
   const high = random.between(0.072, 0.085);
   return Array.from({ length: count }, (_, i) => low + ((high - low) * i) / (count - 1));

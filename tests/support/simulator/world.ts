@@ -86,7 +86,10 @@ function addEdge(columns: Edge[][], from: readonly number[] | undefined, to: rea
   const [x1 = NaN, y1 = NaN] = from;
   const [x2 = NaN, y2 = NaN] = to;
   if (y1 < -89.9 && y2 < -89.9) return; // the pole drawn as a line, no coast
-  if (Math.abs(x2 - x1) <= 180) return place(columns, [x1, y1], [x2, y2]);
+  if (Math.abs(x2 - x1) <= 180) {
+    place(columns, [x1, y1], [x2, y2]);
+    return;
+  }
   const turn = x2 > x1 ? -360 : 360; // crosses the 180th meridian: once on either side of the map
   place(columns, [x1, y1], [x2 + turn, y2]);
   place(columns, [x1 - turn, y1], [x2, y2]);
