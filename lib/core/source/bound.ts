@@ -1,54 +1,60 @@
 import { MEAN_RADIUS_METRES } from "../geodesy/earth.ts";
+import type { Assessment } from "./assess.ts";
 import type { Conditioned } from "./conditioned.ts";
 import type { Site } from "./site.ts";
-import { project, misfit } from "./weigh.ts";
+import { logSum } from "./weigh.ts";
+
+/** What is known of a site whose surroundings are to be bounded. */
+export interface Surroundings {
+  readonly conditioned: Conditioned;
+  readonly site: Site;
+  readonly assessment: Assessment;
+  readonly reachMetres: number;
+  /** True where `conditioned` takes the stations as seeing different parts of the storm, false where it is the site's own. */
+  readonly apart: boolean;
+}
 
 /**
- * An upper bound of the log density (land disregarded) anywhere within `reachMetres` of a site.
+ * An upper bound of the log density (land disregarded) anywhere within the reach of a site.
  *
  * Every subset's misfit is a squared norm of the residuals, so within the reach it is at least
  *   (1)  (|u| - r sqrt(lambda) - k)^2 / (1 + turn)
  * lambda: largest eigenvalue of the whole network's information on the position (a subset knows no more);
  * k: what the circles' curvature adds to the straight-line change of the distances, against the spread's
- * uncorrelated share; turn: how much the covariance can grow while the azimuths turn (its own part never falls
- * under 1 - rho of itself, so it changes by that factor at the most). The subset's determinant and time
- * information shrink by no more than (1 - turn)^size.
+ * uncorrelated share; turn: how much the covariance can grow from the one used, as azimuths turn.
+ * The determinant of a subset of b stations falls to no less than `least`^(2b) of its own.
  */
-export function boundWithin(conditioned: Conditioned, site: Site, reachMetres: number): number {
-  const { network } = conditioned;
+export function boundWithin(surroundings: Surroundings): number {
+  const { conditioned, site, assessment, reachMetres } = surroundings;
+  const { network, plan } = conditioned;
   const { distanceMetres, sharedCorrelation } = network.settings.spread;
   const uncorrelated = distanceMetres * Math.sqrt(network.spreadVarianceFactor * (1 - sharedCorrelation));
-  const curvature = curvatureMetres(site, reachMetres) / uncorrelated;
-  const slack = reachMetres * Math.sqrt(largestInformation(conditioned, site)) + curvature;
-  const turn = turnShare(conditioned, site, reachMetres);
-  const projection = project(conditioned, site);
-  const bearingRoom = bearingGain(conditioned);
-
-  let top = -Infinity;
-  const logs = conditioned.subsets.map((subset) => {
-    const norm = Math.max(0, Math.sqrt(Math.max(0, misfit(subset, projection))) - slack);
-    const shrink = (network.size - subset.stray.length) * -Math.log(1 - Math.min(0.5, turn));
-    const log = subset.logConstant - (0.5 * norm ** 2) / (1 + turn) + shrink + bearingRoom; // (1)
-    top = Math.max(top, log);
-    return log;
-  });
-  return top + Math.log(logs.reduce((sum, log) => sum + Math.exp(log - top), 0));
+  const { turn, least } = turnOf(surroundings);
+  const slack = reachMetres * Math.sqrt(largestInformation(conditioned, site)) + curvatureMetres(site, reachMetres) / uncorrelated;
+  const room = bearingGain(conditioned);
+  const logs = new Float64Array(plan.sets.length);
+  for (let s = 0; s < logs.length; s++) {
+    const norm = Math.max(0, Math.sqrt(Math.max(0, assessment.chiSquares[s] ?? NaN)) - slack);
+    const belonging = network.size - (plan.sets[s]?.length ?? 0);
+    logs[s] = (conditioned.logConstants[s] ?? NaN) - (0.5 * norm * norm) / (1 + turn) - belonging * Math.log(least) + room; // (1)
+  }
+  return logSum(logs);
 }
 
 /** Largest eigenvalue (1/m2) of J' W J, W the distances' information with t0 integrated out. */
-function largestInformation({ network, precision, timeColumn, timeInformation }: Conditioned, site: Site): number {
+function largestInformation({ network, precision, timeColumn, wholeTimeInformation }: Conditioned, site: Site): number {
   const n = network.size;
+  const sines = site.azimuths.map(Math.sin);
+  const cosines = site.azimuths.map(Math.cos);
   let ee = 0;
   let en = 0;
   let nn = 0;
   for (let i = 0; i < n; i++) {
-    const [ei, ni] = [Math.sin(site.azimuths[i] ?? NaN), Math.cos(site.azimuths[i] ?? NaN)];
     for (let j = 0; j < n; j++) {
-      const w = (precision[i * 2 * n + j] ?? NaN) - ((timeColumn[i] ?? NaN) * (timeColumn[j] ?? NaN)) / timeInformation;
-      const [ej, nj] = [Math.sin(site.azimuths[j] ?? NaN), Math.cos(site.azimuths[j] ?? NaN)];
-      ee += w * ei * ej;
-      en += w * ei * nj;
-      nn += w * ni * nj;
+      const w = (precision[i * 2 * n + j] ?? NaN) - ((timeColumn[i] ?? NaN) * (timeColumn[j] ?? NaN)) / wholeTimeInformation;
+      ee += w * (sines[i] ?? NaN) * (sines[j] ?? NaN);
+      en += w * (sines[i] ?? NaN) * (cosines[j] ?? NaN);
+      nn += w * (cosines[i] ?? NaN) * (cosines[j] ?? NaN);
     }
   }
   return (ee + nn) / 2 + Math.hypot((ee - nn) / 2, en);
@@ -64,28 +70,37 @@ function curvatureMetres(site: Site, reachMetres: number): number {
   return Math.sqrt(square);
 }
 
-/** Largest row sum, over the uncorrelated share, of what the shared correlations can change as azimuths turn. */
-function turnShare({ network }: Conditioned, site: Site, reachMetres: number): number {
+/**
+ * How far the covariance within the reach can stand from the one used: S <= (1 + turn) S_used, and its uncorrelated
+ * share alone gives S >= least S_used. Row sums (Gershgorin) of the shared correlations that azimuths can give.
+ */
+function turnOf({ conditioned: { network }, site, reachMetres, apart }: Surroundings): { turn: number; least: number } {
   const { sharedCorrelation, azimuthScaleDegrees } = network.settings.spread;
-  const swing = Array.from(site.distances, (distance) => {
-    const across = MEAN_RADIUS_METRES * Math.abs(Math.sin(distance / MEAN_RADIUS_METRES));
-    return across > reachMetres ? Math.asin(reachMetres / across) : Math.PI;
-  });
+  const perRadian = 180 / Math.PI / azimuthScaleDegrees;
+  const swings = site.distances.map((distance) => swing(distance, reachMetres));
   let most = 0;
   for (let i = 0; i < network.size; i++) {
     let row = 0;
     for (let j = 0; j < network.size; j++) {
       if (i === j) continue;
-      const apart = Math.abs((site.azimuths[i] ?? NaN) - (site.azimuths[j] ?? NaN));
-      const turn = Math.min(apart, 2 * Math.PI - apart);
-      const now = Math.exp((-turn * 180) / Math.PI / azimuthScaleDegrees);
-      const room = Math.min(turn, (swing[i] ?? NaN) + (swing[j] ?? NaN));
-      const nearer = Math.exp((-(turn - room) * 180) / Math.PI / azimuthScaleDegrees);
-      row += Math.max(nearer - now, now - now * Math.exp((-room * 180) / Math.PI / azimuthScaleDegrees));
+      const between = Math.abs((site.azimuths[i] ?? NaN) - (site.azimuths[j] ?? NaN));
+      const angle = Math.min(between, 2 * Math.PI - between);
+      const room = (swings[i] ?? NaN) + (swings[j] ?? NaN);
+      const now = Math.exp(-angle * perRadian);
+      const nearest = Math.exp(-Math.max(0, angle - room) * perRadian);
+      row += apart ? nearest : Math.max(nearest - now, now * (1 - Math.exp(-room * perRadian)));
     }
-    most = Math.max(most, (sharedCorrelation * row) / (1 - sharedCorrelation));
+    most = Math.max(most, row);
   }
-  return most;
+  if (apart) return { turn: sharedCorrelation * most, least: 1 - sharedCorrelation };
+  const turn = (sharedCorrelation * most) / (1 - sharedCorrelation);
+  return { turn, least: Math.max(1 - turn, (1 - sharedCorrelation) / (1 + sharedCorrelation * (network.size - 1))) };
+}
+
+/** How far (radians) the azimuth of a station can turn within the reach. */
+function swing(distanceMetres: number, reachMetres: number): number {
+  const across = MEAN_RADIUS_METRES * Math.abs(Math.sin(distanceMetres / MEAN_RADIUS_METRES));
+  return across > reachMetres ? Math.asin(reachMetres / across) : Math.PI;
 }
 
 /** The most that measured directions can add. */

@@ -1,5 +1,6 @@
 import type { StraySet } from "./belonging.ts";
-import { conditionAt } from "./conditioned.ts";
+import { assess } from "./assess.ts";
+import { conditionAt, planSubsets } from "./conditioned.ts";
 import { linearFit, placeColumns, unitColumn } from "./linear-fit.ts";
 import type { Network } from "./network.ts";
 import type { Peak } from "./peak.ts";
@@ -43,16 +44,16 @@ interface Suspicion extends ClockOffset {
 
 function clockOffsetOf(network: Network, peak: Peak, index: number): Suspicion | null {
   const n = network.size;
-  const stray: StraySet = peak.best.subset.stray.filter((i) => i !== index);
+  const stray: StraySet = (peak.conditioned.plan.sets[peak.best] ?? []).filter((i) => i !== index);
   if (n - stray.length < LEAST_STATIONS) return null;
-  const conditioned = conditionAt(network, peak.site.azimuths, [stray]);
-  const subset = conditioned?.subsets[0];
-  if (!conditioned || !subset) return null;
+  const conditioned = conditionAt(network, peak.site.azimuths, planSubsets(network, [stray]));
+  if (!conditioned) return null;
+  const assessment = assess(conditioned, peak.site.distances);
 
   const clock = unitColumn(2 * n, n + index);
   const columns = [...placeColumns(network, peak.site), clock];
-  const withClock = linearFit(conditioned, subset, peak.site, columns);
-  const withBoth = linearFit(conditioned, subset, peak.site, [...columns, unitColumn(2 * n, index)]);
+  const withClock = linearFit({ conditioned, assessment, subset: 0, columns });
+  const withBoth = linearFit({ conditioned, assessment, subset: 0, columns: [...columns, unitColumn(2 * n, index)] });
   if (!withClock || !withBoth) return null;
   const offsetSeconds = withClock.corrections[3] ?? NaN;
   const variance = withClock.covariance[3 * 4 + 3] ?? NaN;

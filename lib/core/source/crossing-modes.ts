@@ -3,8 +3,9 @@ import { ringCrossings } from "../geodesy/ring-crossings.ts";
 import { frameAt, quickDistance } from "../geodesy/quick-inverse.ts";
 import type { Position } from "../units/position.ts";
 import { byProbability, type DensityOf, type Mode } from "./modes.ts";
+import type { Network } from "./network.ts";
 import { climbToPeak } from "./peak.ts";
-import type { SearchInput, WeighedCell } from "./search.ts";
+import type { Posterior, WeighedCell } from "./search.ts";
 
 /** Climbs that end nearer to each other than this have found one optimum. */
 const ONE_PEAK_METRES = 10_000;
@@ -13,7 +14,7 @@ const ONE_PEAK_METRES = 10_000;
  * The two modes of a pair of stations whose rings cross: an optimum near each crossing, with the cells nearer to it
  * than to the other. Null for any other network, and where both crossings lead to one optimum.
  */
-export function crossingModes({ network, sets }: SearchInput, cells: readonly WeighedCell[], densityOf: DensityOf): Mode[] | null {
+export function crossingModes(network: Network, { cells, plan }: Posterior, densityOf: DensityOf): Mode[] | null {
   const [first, second] = network.arrivals;
   if (!first || !second || network.size !== 2) return null;
   const met = ringCrossings({
@@ -21,7 +22,7 @@ export function crossingModes({ network, sets }: SearchInput, cells: readonly We
     second: { centre: second.position, radiusMetres: second.estimate.distanceMetres },
   });
   if (met.kind !== "cross") return null;
-  const peaks = met.points.flatMap((point) => climbToPeak(network, point, sets)?.position ?? []);
+  const peaks = met.points.flatMap((point) => climbToPeak(network, point, plan)?.position ?? []);
   const [one, other] = peaks;
   if (!one || !other || geodesicInverse({ from: one, to: other }).distanceMetres < ONE_PEAK_METRES) return null;
   return byProbability(split(cells, one, other, densityOf), densityOf);

@@ -5,6 +5,7 @@ import { geodesicInverse } from "../geodesy/geodesic.ts";
 import { factorise, invertFactored } from "../statistics/cholesky.ts";
 import { chiSquareSurvival } from "../statistics/chi-square.ts";
 import type { SourceAnswer, StationArrival } from "./answer.ts";
+import { planSubsets } from "./conditioned.ts";
 import { linearFit, placeColumns } from "./linear-fit.ts";
 import { networkOf, type NetworkOptions } from "./network.ts";
 import { climbToPeak, type Peak } from "./peak.ts";
@@ -75,8 +76,8 @@ interface HalfSolution {
 
 function solved(arrivals: readonly StationArrival[], options: NetworkOptions, start: Peak): HalfSolution | null {
   const network = networkOf(arrivals, options);
-  const peak = climbToPeak(network, start.position, [[]]);
-  const fit = peak && linearFit(peak.conditioned, peak.best.subset, peak.site, placeColumns(network, peak.site));
+  const peak = climbToPeak(network, start.position, planSubsets(network, [[]]));
+  const fit = peak && linearFit({ ...peak, subset: peak.best, columns: placeColumns(network, peak.site) });
   if (!peak || !fit) return null;
   const gain = [0, 1, 2].map((a) => combine(fit.weightedColumns, fit.covariance.subarray(a * 3, a * 3 + 3)));
   const covariance = new Float64Array(9);

@@ -1,20 +1,18 @@
 import { geodesicDirect, geodesicInverse } from "../geodesy/geodesic.ts";
-import type { LandMask } from "../geodesy/land-mask.ts";
 import type { Position } from "../units/position.ts";
 import type { Network } from "./network.ts";
-import { siteFrom, type Site } from "./site.ts";
+import { bearingTerms, type Site } from "./site.ts";
 
 /** A candidate point with geodesics to the last millimetre. [source: karney-2013] */
-export function exactSite(network: Network, position: Position, land: LandMask | null): Site {
+export function exactSite(network: Network, position: Position): Site {
   const geodesics = network.arrivals.map((arrival) => geodesicInverse({ from: position, to: arrival.position }));
-  return siteFrom({
-    network,
-    position,
-    land,
+  const bearings = Float64Array.from(geodesics, (geodesic) => geodesic.arrivesTowardDegrees + 180);
+  return {
     distances: Float64Array.from(geodesics, (geodesic) => geodesic.distanceMetres),
     azimuths: Float64Array.from(geodesics, (geodesic) => (geodesic.departsTowardDegrees * Math.PI) / 180),
-    bearings: Float64Array.from(geodesics, (geodesic) => geodesic.arrivesTowardDegrees + 180),
-  });
+    bearings,
+    logBearing: bearingTerms(network, bearings),
+  };
 }
 
 /** The point a step east and north (metres) away, along the geodesic that leaves in that direction. */

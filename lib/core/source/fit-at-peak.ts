@@ -1,12 +1,12 @@
 import { chiSquareSurvival } from "../statistics/chi-square.ts";
 import type { SourceAnswer } from "./answer.ts";
 import type { StraySet } from "./belonging.ts";
-import { conditionAt } from "./conditioned.ts";
+import { assess } from "./assess.ts";
+import { conditionAt, planSubsets } from "./conditioned.ts";
 import { exactSite } from "./exact-site.ts";
 import type { Peak } from "./peak.ts";
 import type { PlacedMode } from "./possible-sources.ts";
 import type { SearchInput } from "./search.ts";
-import { misfit, project } from "./weigh.ts";
 
 export interface FitAtPeak {
   readonly peak: Peak | null;
@@ -20,16 +20,15 @@ export interface FitAtPeak {
  * How well the stations that belong (probability of a half and more) meet at the placed source: chi-square with
  * 2k - 3 degrees of freedom for k stations (two coordinates and a time are fitted), and how far their rings miss it.
  */
-export function fitAtPeak({ network, land }: SearchInput, main: PlacedMode, belongs: readonly number[]): FitAtPeak {
-  const site = exactSite(network, main.position, land);
+export function fitAtPeak({ network }: SearchInput, main: PlacedMode, belongs: readonly number[]): FitAtPeak {
+  const site = exactSite(network, main.position);
   const stray = belongs.flatMap((probability, i) => (probability < 0.5 ? [i] : []));
   const base = { peak: main.peak, distances: site.distances, belongs, stray };
-  const conditioned = conditionAt(network, site.azimuths, [stray]);
-  const subset = conditioned?.subsets[0];
+  const conditioned = conditionAt(network, site.azimuths, planSubsets(network, [stray]));
   const count = network.size - stray.length;
-  if (!conditioned || !subset || count < 2) return { ...base, summary: null };
+  if (!conditioned || count < 2) return { ...base, summary: null };
 
-  const chiSquare = Math.max(0, misfit(subset, project(conditioned, site)));
+  const chiSquare = Math.max(0, assess(conditioned, site.distances).chiSquares[0] ?? NaN);
   const degreesOfFreedom = 2 * count - 3;
   const squares = Array.from(site.distances, (distance, i) => (stray.includes(i) ? 0 : (distance - (network.distances[i] ?? NaN)) ** 2));
   return {

@@ -38,16 +38,19 @@ export function steadyCovariance(arrivals: readonly StationArrival[], settings: 
   return matrix;
 }
 
-/** Adds (2) for a storm from which the stations are seen at `azimuths` (radians), in place. */
-export function addOwnSpread(matrix: Float64Array, azimuths: Float64Array, settings: EstimationSettings, spreadVarianceFactor: number): void {
-  const n = azimuths.length;
+/** Adds (2) for a storm from which the stations are seen at `azimuths` (radians), in place; null: all R_ij are zero. */
+export function addOwnSpread(
+  matrix: Float64Array,
+  azimuths: Float64Array | null,
+  { size: n, settings, spreadVarianceFactor }: { readonly size: number; readonly settings: EstimationSettings; readonly spreadVarianceFactor: number },
+): void {
   const { distanceMetres, originSeconds, sharedCorrelation, azimuthScaleDegrees } = settings.spread;
   const perRadian = 180 / Math.PI / azimuthScaleDegrees;
   const distanceVariance = distanceMetres ** 2 * spreadVarianceFactor;
   const originVariance = originSeconds ** 2 * spreadVarianceFactor;
   for (let i = 0; i < n; i++) {
-    for (let j = 0; j <= i; j++) {
-      const apart = Math.abs((azimuths[i] ?? NaN) - (azimuths[j] ?? NaN));
+    for (let j = azimuths ? 0 : i; j <= i; j++) {
+      const apart = Math.abs((azimuths?.[i] ?? NaN) - (azimuths?.[j] ?? NaN));
       const turn = Math.min(apart, 2 * Math.PI - apart);
       const correlation = i === j ? 1 : sharedCorrelation * Math.exp(-turn * perRadian); // (2)
       add(matrix, 2 * n, i, j, distanceVariance * correlation);

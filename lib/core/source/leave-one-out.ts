@@ -1,5 +1,6 @@
 import { geodesicInverse } from "../geodesy/geodesic.ts";
 import { straySets } from "./belonging.ts";
+import { planSubsets } from "./conditioned.ts";
 import { networkOf, type Network } from "./network.ts";
 import { climbToPeak, type Peak } from "./peak.ts";
 
@@ -15,7 +16,7 @@ export function leaveOneOutShifts(network: Network, peak: Peak, clocksSetAside: 
       spreadVarianceFactor: network.spreadVarianceFactor,
       clocksSetAside,
     });
-    const without = climbToPeak(others, peak.position, straySets(others.size));
+    const without = climbToPeak(others, peak.position, planSubsets(others, straySets(others.size)));
     return without && geodesicInverse({ from: peak.position, to: without.position }).distanceMetres;
   });
 }

@@ -1,9 +1,9 @@
 import { factorise, invertFactored } from "../statistics/cholesky.ts";
-import type { Conditioned, ConditionedSubset } from "./conditioned.ts";
+import type { Assessment } from "./assess.ts";
+import type { Conditioned } from "./conditioned.ts";
 import type { Network } from "./network.ts";
 import type { Site } from "./site.ts";
 import { applyPrecision, dot } from "./subset-precision.ts";
-import { originOf, project } from "./weigh.ts";
 
 /** Generalised least squares about a point: parameters' corrections, their covariance (row-major), and the gain P_B A. */
 export interface LinearFit {
@@ -33,12 +33,20 @@ export function unitColumn(size: number, row: number): Float64Array {
   return column;
 }
 
+export interface LinearProblem {
+  readonly conditioned: Conditioned;
+  readonly assessment: Assessment;
+  /** Which of the conditioned subsets is fitted. */
+  readonly subset: number;
+  /** Derivatives of the state by each parameter. */
+  readonly columns: readonly Float64Array[];
+}
+
 /** Null where the columns do not determine the parameters. */
-export function linearFit(conditioned: Conditioned, subset: ConditionedSubset, site: Site, columns: readonly Float64Array[]): LinearFit | null {
+export function linearFit({ conditioned, assessment, subset, columns }: LinearProblem): LinearFit | null {
   const n = conditioned.network.size;
-  const projection = project(conditioned, site);
-  const origin = originOf(subset, projection);
-  const residual = projection.residual.map((value, i) => (i < n ? value : value + origin));
+  const origin = assessment.origins[subset] ?? NaN;
+  const residual = assessment.residual.map((value, i) => (i < n ? value : value + origin));
   const weightedColumns = columns.map((column) => applyPrecision(conditioned, subset, column));
   const m = columns.length;
   // Columns differ by many orders of magnitude (metres, seconds): scaled to unit information before inverting.

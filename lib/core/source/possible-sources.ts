@@ -1,13 +1,11 @@
 import { geodesicInverse } from "../geodesy/geodesic.ts";
 import { isOcean, type LandMask } from "../geodesy/land-mask.ts";
 import type { Position } from "../units/position.ts";
-import { exactSite } from "./exact-site.ts";
 import { modesOf, type DensityOf, type Mode } from "./modes.ts";
 import { crossingModes } from "./crossing-modes.ts";
 import { climbToPeak, type Peak } from "./peak.ts";
-import type { Posterior, SearchInput, WeighedCell } from "./search.ts";
+import { heldAt, type Posterior, type SearchInput, type WeighedCell } from "./search.ts";
 import { shareInSight } from "./site.ts";
-import { weigh } from "./weigh.ts";
 
 /** A mode that holds less than this is not a possible source. */
 export const LEAST_PROBABILITY = 0.01;
@@ -28,18 +26,18 @@ export interface PlacedMode {
 
 /** The possible sources, most probable first, each finished on exact geodesics. */
 export function placePossibleSources(input: SearchInput, posterior: Posterior): PlacedMode[] {
-  return separateModes(input, posterior, (cell) => cell.logHeld).map((mode) => placeMode(input, mode));
+  return separateModes(input, posterior, (cell) => cell.logHeld).map((mode) => placeMode(input, posterior, mode));
 }
 
 /** Two rings that cross do so at two points, each an exact optimum however shallow the saddle between them. */
 function separateModes(input: SearchInput, posterior: Posterior, densityOf: DensityOf): Mode[] {
-  const modes = crossingModes(input, posterior.cells, densityOf) ?? modesOf(posterior.cells, densityOf);
+  const modes = crossingModes(input.network, posterior, densityOf) ?? modesOf(posterior.cells, densityOf);
   return modes.filter((mode) => mode.probability >= LEAST_PROBABILITY);
 }
 
-function placeMode({ network, sets, land }: SearchInput, mode: Mode): PlacedMode {
+function placeMode({ network, land }: SearchInput, { plan }: Posterior, mode: Mode): PlacedMode {
   const summit = mode.summit;
-  const peak = climbToPeak(network, mode.start, sets);
+  const peak = climbToPeak(network, mode.start, plan);
   const cutOff: PlacedMode = {
     mode,
     peak: null,
@@ -51,8 +49,7 @@ function placeMode({ network, sets, land }: SearchInput, mode: Mode): PlacedMode
   if (!peak || chiSquareApart(peak, summit.centre) > SAME_PEAK_CHI_SQUARE) return cutOff;
   const found = { ...cutOff, peak, position: peak.position, originSeconds: peak.originSeconds, onLand: false };
   if (land && !isOcean(land, peak.position)) return { ...found, onLand: true, bestInWater: bestInWater(mode, land) };
-  const held = weigh(peak.conditioned, exactSite(network, peak.position, land)).logHeld;
-  return held >= summit.logHeld - 0.5 ? found : cutOff;
+  return heldAt(peak, land) >= summit.logHeld - 0.5 ? found : cutOff;
 }
 
 function bestInWater(mode: Mode, land: LandMask): Position | null {
@@ -73,7 +70,7 @@ function chiSquareApart(peak: Peak, position: Position): number {
 export function whatIsRuledOut(input: SearchInput, posterior: Posterior, placed: readonly PlacedMode[]): { position: Position; reason: string }[] {
   const free = separateModes(input, posterior, (cell) => cell.logFree);
   return free.flatMap((mode) => {
-    const position = climbToPeak(input.network, mode.start, input.sets)?.position ?? mode.start;
+    const position = climbToPeak(input.network, mode.start, posterior.plan)?.position ?? mode.start;
     const isKept = placed.some((source) => isSame(source, mode, position));
     const reason = isKept ? null : reasonAgainst(input, position);
     return reason === null ? [] : [{ position, reason }];

@@ -2,6 +2,7 @@ import { chiSquareSurvival } from "../statistics/chi-square.ts";
 import type { StationArrival } from "./answer.ts";
 import { straySets, type StraySet } from "./belonging.ts";
 import { suspectClock, type ClockOffset } from "./clock-check.ts";
+import { planSubsets } from "./conditioned.ts";
 import { findPeaks } from "./find-peaks.ts";
 import { networkOf, type Network, type NetworkOptions } from "./network.ts";
 import { climbToPeak, type Peak } from "./peak.ts";
@@ -29,16 +30,17 @@ export function prepareNetwork(arrivals: readonly StationArrival[], { settings }
   const plain: NetworkOptions = { settings };
   let network = networkOf(arrivals, plain);
   let sets = straySets(network.size);
-  let peak = bestPeak(network, sets);
-  sets = straySets(network.size, peak ? [peak.best.subset.stray] : []);
+  const peaks = network.size < 2 ? [] : findPeaks(network, planSubsets(network, sets));
+  let peak = peaks[0] ?? null;
+  sets = straySets(network.size, peak ? [strayAt(peak)] : []);
   let clock = peak ? suspectClock(network, peak) : null;
   let options = plain;
   if (peak && clock) {
     const aside: NetworkOptions = { settings, clocksSetAside: new Set([arrivals[clock.index]?.id ?? ""]) };
     const without = networkOf(arrivals, aside);
-    const again = climbToPeak(without, peak.position, sets);
+    const again = climbToPeak(without, peak.position, planSubsets(without, sets));
     // The offset is read again where the others alone put the storm; it must still stand there.
-    clock = again ? suspectClock(network, { ...again, best: peak.best }) : null;
+    clock = again ? suspectClock(network, again) : null;
     if (again && clock) [network, options, peak] = [without, aside, again];
   }
   const raised = peak ? raisedSpread(network, peak, options) : 1;
@@ -49,21 +51,22 @@ export function prepareNetwork(arrivals: readonly StationArrival[], { settings }
   return { network, sets, options, clock, clocksSetAside: options.clocksSetAside ?? new Set() };
 }
 
-function bestPeak(network: Network, sets: readonly StraySet[]): Peak | null {
-  return network.size < 2 ? null : (findPeaks(network, sets)[0] ?? null);
+function strayAt(peak: Peak): StraySet {
+  return peak.conditioned.plan.sets[peak.best] ?? [];
 }
 
 /** The variance factor at which chi-square equals its degrees of freedom, where the misfit asks for one. */
 function raisedSpread(network: Network, peak: Peak, options: NetworkOptions): number {
   const aside = options.clocksSetAside?.size ?? 0;
-  const stray = peak.best.subset.stray;
+  const stray = strayAt(peak);
   const degreesOfFreedom = 2 * (network.size - stray.length) - 3 - aside;
   if (network.size - stray.length < LEAST_STATIONS) return 1;
   const chiSquareAt = (factor: number): number => {
     const widened = networkOf(network.arrivals, { ...options, spreadVarianceFactor: factor });
-    return climbToPeak(widened, peak.position, [stray])?.best.chiSquare ?? NaN;
+    const at = climbToPeak(widened, peak.position, planSubsets(widened, [stray]));
+    return at?.assessment.chiSquares[0] ?? NaN;
   };
-  if (chiSquareSurvival(peak.best.chiSquare, degreesOfFreedom) >= ASKS_BELOW) return 1;
+  if (chiSquareSurvival(peak.assessment.chiSquares[peak.best] ?? NaN, degreesOfFreedom) >= ASKS_BELOW) return 1;
   let [low, high] = [0, Math.log(MOST_VARIANCE_FACTOR)];
   for (let i = 0; i < BISECTIONS; i++) {
     const middle = (low + high) / 2;

@@ -12,55 +12,56 @@ const SIGHT_FLOOR = 0.02;
 /** The same for a point far inland. */
 const OCEAN_FLOOR = 1e-3;
 
-interface StationTerms {
+/** A logarithm by station, and their sum; `none` where all are zero. */
+export interface StationTerms {
   readonly byStation: Float64Array;
   readonly sum: number;
+  readonly none: boolean;
 }
 
-/** A candidate point as the stations have it: how far, at which azimuth, how well in sight. */
+/** A candidate point as the stations have it: how far, at which azimuth. */
 export interface Site {
   readonly distances: Float64Array;
   /** Radians from north, of each station seen from the point. */
   readonly azimuths: Float64Array;
-  /** Log of the share in sight by station, and log likelihood ratio of its mean direction. */
-  readonly logSight: StationTerms;
+  /** Degrees from north, of the point seen from each station. */
+  readonly bearings: Float64Array;
+  /** Log likelihood ratio of each station's measured direction. */
   readonly logBearing: StationTerms;
+}
+
+/** What stands against a point: land under it, land or a cape before it. Logs of shares of the disc about it. */
+export interface Outlook {
+  readonly logSight: StationTerms;
   readonly logOcean: number;
 }
 
 /** Distances as `quickDistance` has them, for the search; `exactSite` finishes. */
-export function quickSite(network: Network, position: Position, land: LandMask | null): Site {
+export function quickSite(network: Network, position: Position): Site {
   const frame = frameAt(position);
-  const distances = Float64Array.from(network.frames, (station) => quickDistance(station, frame));
-  const azimuths = Float64Array.from(network.frames, (station) => quickAzimuth(frame, station));
-  const bearings = Float64Array.from(network.frames, (station) => (quickAzimuth(station, frame) * 180) / Math.PI);
-  return siteFrom({ network, position, land, distances, azimuths, bearings });
+  const n = network.size;
+  const distances = new Float64Array(n);
+  const azimuths = new Float64Array(n);
+  const bearings = new Float64Array(n);
+  network.frames.forEach((station, i) => {
+    distances[i] = quickDistance(station, frame);
+    azimuths[i] = quickAzimuth(frame, station);
+    bearings[i] = (quickAzimuth(station, frame) * 180) / Math.PI;
+  });
+  return { distances, azimuths, bearings, logBearing: bearingTerms(network, bearings) };
 }
 
-export function siteFrom(input: {
-  readonly network: Network;
-  readonly position: Position;
-  readonly land: LandMask | null;
-  readonly distances: Float64Array;
-  readonly azimuths: Float64Array;
-  readonly bearings: Float64Array;
-}): Site {
-  const { network, position, land, distances, azimuths, bearings } = input;
-  const logSight = new Float64Array(network.size);
-  const logBearing = new Float64Array(network.size);
-  network.arrivals.forEach((arrival, i) => {
-    const share = shareInSight(arrival, bearings[i] ?? NaN, distances[i] ?? NaN);
-    logSight[i] = Math.log(Math.max(SIGHT_FLOOR, share.sight * share.exposure));
-    logBearing[i] = bearingTerm(arrival, bearings[i] ?? NaN);
+export function bearingTerms(network: Network, bearings: Float64Array): StationTerms {
+  return termsOf(network, (arrival, i) => bearingTerm(arrival, bearings[i] ?? NaN));
+}
+
+export function outlookFrom(network: Network, site: Site, position: Position, land: LandMask | null): Outlook {
+  const logSight = termsOf(network, (arrival, i) => {
+    const share = shareInSight(arrival, site.bearings[i] ?? NaN, site.distances[i] ?? NaN);
+    return Math.log(Math.max(SIGHT_FLOOR, share.sight * share.exposure));
   });
   const ocean = land ? oceanFraction({ mask: land, position, radiusMetres: DISC_RADIUS_METRES }) : 1;
-  return {
-    distances,
-    azimuths,
-    logSight: { byStation: logSight, sum: sumOf(logSight) },
-    logBearing: { byStation: logBearing, sum: sumOf(logBearing) },
-    logOcean: Math.log(Math.max(OCEAN_FLOOR, ocean)),
-  };
+  return { logSight, logOcean: Math.log(Math.max(OCEAN_FLOOR, ocean)) };
 }
 
 /** How much of the disc about a point the station sees past land (0..1), and how much of it lies where it is open. */
@@ -88,10 +89,19 @@ function bearingTerm({ estimate: { bearing } }: StationArrival, bearingDegrees: 
   return Math.log(360 / (bearing.sigmaDegrees * Math.sqrt(2 * Math.PI))) - 0.5 * (apart / bearing.sigmaDegrees) ** 2;
 }
 
-function positive(degrees: number): number {
-  return ((degrees % 360) + 360) % 360;
+function termsOf(network: Network, term: (arrival: StationArrival, i: number) => number): StationTerms {
+  const byStation = new Float64Array(network.size);
+  let sum = 0;
+  let none = true;
+  network.arrivals.forEach((arrival, i) => {
+    const log = term(arrival, i);
+    byStation[i] = log;
+    sum += log;
+    if (log !== 0) none = false;
+  });
+  return { byStation, sum, none };
 }
 
-function sumOf(values: Float64Array): number {
-  return values.reduce((sum, value) => sum + value, 0);
+function positive(degrees: number): number {
+  return ((degrees % 360) + 360) % 360;
 }

@@ -1,23 +1,26 @@
-import type { Conditioned, ConditionedSubset } from "./conditioned.ts";
+import type { Conditioned } from "./conditioned.ts";
 
 /**
- * The precision of a subset of the stations times a vector of the whole state, P_B = P - P_:O E P_O:; what belongs to
- * stations left out comes out as zero and counts for nothing.
+ * The precision of subset `s` times a vector of the whole state, P_B = P - P_:O E P_O:; what belongs to stations left
+ * out comes out as zero and counts for nothing.
  */
-export function applyPrecision({ precision }: Conditioned, subset: ConditionedSubset, vector: Float64Array): Float64Array {
-  const size = vector.length;
+export function applyPrecision({ network, plan, precision, corrections }: Conditioned, s: number, vector: Float64Array): Float64Array {
+  const size = 2 * network.size;
   const product = new Float64Array(size);
   for (let i = 0; i < size; i++) {
     let sum = 0;
     for (let j = 0; j < size; j++) sum += (precision[i * size + j] ?? NaN) * (vector[j] ?? NaN);
     product[i] = sum;
   }
-  const { rows, correction } = subset;
+  const rows = plan.rows[s] ?? new Int32Array();
   const m = rows.length;
-  const left = rows.map((row) => product[row] ?? NaN);
-  const weights = rows.map((_, a) => left.reduce((sum, value, b) => sum + (correction[a * m + b] ?? NaN) * value, 0));
-  for (let i = 0; i < size; i++) {
-    weights.forEach((weight, a) => (product[i] = (product[i] ?? NaN) - (precision[i * size + (rows[a] ?? NaN)] ?? NaN) * weight));
+  const start = plan.squareStarts[s] ?? 0;
+  const left = Float64Array.from(rows, (row) => product[row] ?? NaN);
+  for (let a = 0; a < m; a++) {
+    let weight = 0;
+    for (let b = 0; b < m; b++) weight += (corrections[start + a * m + b] ?? NaN) * (left[b] ?? NaN);
+    const column = rows[a] ?? NaN;
+    for (let i = 0; i < size; i++) product[i] = (product[i] ?? NaN) - (precision[i * size + column] ?? NaN) * weight;
   }
   return product;
 }
