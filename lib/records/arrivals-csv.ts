@@ -1,5 +1,6 @@
 import type { StationEstimate } from "#lib/core/arrival/observations.ts";
 import type { ArrivalEstimate } from "#lib/core/arrival/estimate.ts";
+import { HALF_GIRTH_METRES } from "#lib/core/geodesy/earth.ts";
 import { SECONDS_PER_HOUR } from "#lib/core/units/time.ts";
 import { readNumber, readText, readTime } from "./cells.ts";
 import type { CellPlace } from "./cells.ts";
@@ -43,7 +44,10 @@ type DefaultCounts = Record<(typeof SIGMA_COLUMNS)[number], number>;
 
 function readEstimate({ cell, defaults }: { cell: (column: string, required?: boolean) => CellPlace; defaults: DefaultCounts }): ArrivalEstimate | null {
   const positive = (unit: string) => ({ wanted: `a number of ${unit} above zero`, accepts: (value: number) => value > 0 });
-  const distanceKm = readNumber(cell("distance_km", true), positive("kilometres"));
+  const distanceKm = readNumber(cell("distance_km", true), {
+    wanted: `a number of kilometres above zero and up to half the Earth's girth (${Math.floor(HALF_GIRTH_METRES / METRES_PER_KM)})`,
+    accepts: (value) => value > 0 && value * METRES_PER_KM <= HALF_GIRTH_METRES,
+  });
   const originEpochSeconds = readTime(cell("origin_time", true));
   const sigmaKm = readNumber(cell("distance_sigma_km"), positive("kilometres"));
   const sigmaHours = readNumber(cell("origin_time_sigma_h"), positive("hours"));

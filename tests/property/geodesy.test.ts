@@ -92,7 +92,8 @@ describe("rings", () => {
     const [north, east] = geodesicRing({ centre, radiusMetres: 1e6, vertices: 4 });
     expectWithin(north?.longitudeDegrees ?? NaN, 20, angle);
     expect(north?.latitudeDegrees).toBeGreaterThan(10);
-    expect(east?.longitudeDegrees).toBeGreaterThan(20);
+    const departs = east === undefined ? NaN : geodesicInverse({ from: centre, to: east }).departsTowardDegrees;
+    expectWithin(departs, 90, angle);
   });
   it("refuse a radius beyond half the girth", () => {
     const centre = { latitudeDegrees: 0, longitudeDegrees: 0 };
@@ -157,6 +158,20 @@ describe("crossings of rings", () => {
       unit: "m",
       because: "girths of the ellipsoid differ by 67 km",
     });
+  });
+
+  it("reach as far round the back as the ellipsoid lets them", () => {
+    const first = { centre: { latitudeDegrees: 35, longitudeDegrees: 20 }, radiusMetres: 1.3e7 };
+    const centre = { latitudeDegrees: -20, longitudeDegrees: 140 };
+    const headingsTried = Array.from({ length: 36_000 }, (_, index) => index / 100);
+    const farthest = Math.max(
+      ...headingsTried.map((headsTowardDegrees) =>
+        distance(centre, geodesicDirect({ from: first.centre, headsTowardDegrees, distanceMetres: 1.3e7 }).position),
+      ),
+    );
+    expect(ringCrossings({ first, second: { centre, radiusMetres: farthest - 1000 } }).kind).toBe("cross");
+    const beyond = ringCrossings({ first, second: { centre, radiusMetres: farthest + 1000 } });
+    expectWithin(beyond.kind === "apart" ? beyond.gapMetres : NaN, 1000, metres(0.5, "headings a hundredth of a degree apart"));
   });
 
   it("say when rings touch, from outside and from inside", () => {

@@ -1,6 +1,7 @@
 import fc from "fast-check";
 import { describe, expect, it } from "vitest";
 import { buildSightTable } from "#lib/core/geodesy/build-sight-table.ts";
+import { connectedOcean } from "#lib/core/geodesy/connected-ocean.ts";
 import { MEAN_RADIUS_METRES } from "#lib/core/geodesy/earth.ts";
 import { buildLandMask, isOcean, oceanFraction } from "#lib/core/geodesy/land-mask.ts";
 import { visibleFraction, type SightTable } from "#lib/core/geodesy/sight-table.ts";
@@ -19,6 +20,7 @@ describe("a mask of invented land", () => {
     block(170, -170, 40, 50), // over the 180th meridian
     [[-180, -80], [-90, -78], [0, -80], [90, -82], [180, -80], [-180, -80]], // round the south pole
     block(60, 80, 20, 40),
+    block(-180, -175, 60, 70), // from the 180th meridian on
     block(65, 75, 25, 35), // a sea inside the last, which no ocean reaches
   ]);
 
@@ -31,6 +33,9 @@ describe("a mask of invented land", () => {
     [at(45, -175), false],
     [at(45, 180), false],
     [at(45, 169.9), true],
+    [at(65, -179.95), false],
+    [at(65, 179.95), true],
+    [at(59.95, 179.95), true],
     [at(45, -169.9), true],
     [at(45, 0), true],
     [at(-89, 10), false],
@@ -45,13 +50,29 @@ describe("a mask of invented land", () => {
   ])("%o is ocean: %s", (position, ocean) => {
     expect(isOcean(mask, position)).toBe(ocean);
     expect(isOcean(mask, at(position.latitudeDegrees, position.longitudeDegrees + 360))).toBe(ocean);
+    expect(isOcean(mask, at(position.latitudeDegrees, position.longitudeDegrees - 360))).toBe(ocean);
   });
 
-  it("keeps an inland sea where it is joined to the ocean, by a corner too", () => {
-    const open = inventedLand([block(0, 10, 0, 10), block(2, 8, 2, 8), block(4.94, 5.06, 7.9, 10.1)]);
-    expect(isOcean(open, at(5, 5))).toBe(true);
-    const closed = inventedLand([block(0, 10, 0, 10), block(2, 8, 2, 8)]);
-    expect(isOcean(closed, at(5, 5))).toBe(false);
+  it("takes an inland sea for ocean only where a strait joins it", () => {
+    const shut = [block(0, 10, 0, 10), block(2, 8, 2, 8)];
+    expect(isOcean(inventedLand(shut), at(5, 5))).toBe(false);
+    expect(isOcean(inventedLand([...shut, block(4.9, 5.1, 8, 10)]), at(5, 5))).toBe(true);
+  });
+
+  it("joins water over sides, corners and the edge of the map", () => {
+    const joined = (water: readonly (readonly [number, number])[][]) =>
+      connectedOcean({
+        water: water.map((runs, row) => runs.map(([first, last]) => ({ row, first, last }))),
+        columns: 10,
+        seed: { row: 0, column: 3 },
+      }).map(({ row, first }) => [row, first]);
+    expect(joined([[[2, 4]], [[4, 5], [8, 8]]])).toEqual([[0, 2], [1, 4]]);
+    expect(joined([[[2, 4]], [[5, 6]]])).toEqual([[0, 2], [1, 5]]);
+    expect(joined([[[2, 4]], [[0, 1]]])).toEqual([[0, 2], [1, 0]]);
+    expect(joined([[[2, 4]], [[6, 7]]])).toEqual([[0, 2]]);
+    expect(joined([[[0, 4], [9, 9]], [[5, 7]]])).toEqual([[0, 0], [0, 9], [1, 5]]);
+    expect(joined([[[2, 9]], [[0, 0], [5, 5]]])).toEqual([[0, 2], [1, 5], [1, 0]]);
+    expect(joined([[[5, 6]]])).toEqual([]);
   });
 
   it("finds no land under another name, and says so", () => {
@@ -92,6 +113,8 @@ describe("the sight of a station", () => {
   it("passes an island shorter than 60 km, and not one of 200 km", () => {
     const small = buildSightTable({ station: at(0, 0), land: inventedLand([block(30, 30.4, -1, 1)]) });
     expect(blockAt(small, 90)).toBe(Infinity);
+    const two = buildSightTable({ station: at(0, 0), land: inventedLand([block(30, 30.4, -1, 1), block(33, 33.4, -1, 1)]) });
+    expect(blockAt(two, 90)).toBe(Infinity);
     const large = buildSightTable({ station: at(0, 0), land: inventedLand([block(30, 32, -1, 1)]) });
     expectWithin(blockAt(large, 90), 30 * METRES_PER_DEGREE, near);
     const strict = { station: at(0, 0), land: inventedLand([block(30, 30.4, -1, 1)]), islandMetres: 20_000 };
@@ -177,6 +200,23 @@ describe("the visible fraction of a disc", () => {
     );
   });
 
+  it("weighs each bearing by the disc's chord along it", () => {
+    // A fine table, blocked beyond four fifths of the disc's half width on one side: a circular segment is hidden.
+    const radius = 600_000 / MEAN_RADIUS_METRES;
+    const edgeDegrees = (Math.asin(0.8 * radius) * 180) / Math.PI; // seen from a quarter turn away
+    const table: SightTable = {
+      stepDegrees: 0.05,
+      firstBlockMetres: Float64Array.from({ length: 7200 }, (_, index) => {
+        const bearing = index * 0.05;
+        return bearing > 90 + edgeDegrees && bearing < 120 ? 1e6 : Infinity;
+      }),
+    };
+    const distanceMetres = 90 * METRES_PER_DEGREE;
+    const found = visibleFraction({ table, bearingDegrees: 90, distanceMetres, discRadiusMetres: 600_000 });
+    const segment = (Math.acos(0.8) - 0.8 * 0.6) / Math.PI;
+    expectWithin(1 - found, segment, fraction(0.004, "bearings of 0.05 degrees; the sphere's curvature is less"));
+  });
+
   it("sees a disc between two bearings by the nearer of them", () => {
     const table = sector(90, 90, 1e6);
     const seen = (bearingDegrees: number, distanceMetres = 8e6) =>
@@ -184,5 +224,6 @@ describe("the visible fraction of a disc", () => {
     expect(seen(90.1)).toBe(0);
     expect(seen(90.4)).toBe(1);
     expect(seen(90.1, 0.9e6)).toBe(1);
+    expect(seen(89.9)).toBe(0);
   });
 });

@@ -112,7 +112,12 @@ describe("the line through points with errors in both coordinates", () => {
 
   it("says so where the x are alike, and gives no number", () => {
     const line = yorkLine({ x: [0.05, 0.05, 0.05], y: [1, 2, 3], xSigma: [0, 0, 0], ySigma: [1, 1, 1] });
-    expect(line).toMatchObject({ converged: false, slope: NaN, intercept: NaN, slopeVariance: NaN });
+    const nothing = { converged: false, slope: NaN, intercept: NaN, slopeVariance: NaN };
+    expect(line).toMatchObject(nothing);
+    const rounded = yorkLine({ x: [0.3, 0.1 + 0.2], y: [1, 2], xSigma: [0, 0], ySigma: [1, 1] });
+    expect(rounded).toMatchObject(nothing);
+    const weightless = { x: [0.05, 0.05, 0.06], y: [1, 2, 3], xSigma: [0, 0, 0], ySigma: [1, 1, 1], weights: [1, 1, 0] };
+    expect(yorkLine(weightless)).toMatchObject(nothing);
   });
 
   it("fits a level line", () => {

@@ -1,4 +1,4 @@
-import { point, type LatLngExpression, type Map as LeafletMap, type Point } from "leaflet";
+import { point, type Map as LeafletMap } from "leaflet";
 import { useEffect } from "react";
 import { useMap } from "react-leaflet";
 
@@ -15,7 +15,7 @@ export function ExactLines() {
 }
 
 function keepFractions(map: LeafletMap): void {
-  map.latLngToLayerPoint = (at: LatLngExpression): Point => {
+  map.latLngToLayerPoint = (at) => {
     const { x, y } = map.project(at);
     const origin = map.getPixelOrigin();
     return point(x - origin.x, y - origin.y);

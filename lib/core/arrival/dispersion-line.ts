@@ -31,10 +31,8 @@ export interface LineSettings {
  */
 export function fitDispersionLine(readings: readonly Reading[], settings: LineSettings): LineOutcome {
   const ordered = distinct(readings);
-  if (ordered.length < 2) return refuse("too-few-readings", `At least two distinct readings are needed; there is ${ordered.length === 1 ? "one" : "none"}.`);
-  if (new Set(ordered.map((reading) => reading.frequencyHz)).size < 2) {
-    return refuse("slope-undetermined", "All readings have one frequency, so nothing says how fast the period falls.");
-  }
+  const unfit = unfitReadings(ordered);
+  if (unfit) return unfit;
 
   const zeroEpochSeconds = ordered[0]?.arrivalEpochSeconds ?? NaN;
   const window: TimedWindow = { gravity: settings.gravity, ...settings.timed };
@@ -71,6 +69,14 @@ export function fitDispersionLine(readings: readonly Reading[], settings: LineSe
       notes: excess > 0.5 ? [weakTimed(excess)] : [],
     } satisfies DispersionLine,
   };
+}
+
+function unfitReadings(ordered: readonly Reading[]): LineOutcome | null {
+  if (ordered.length < 2) return refuse("too-few-readings", `At least two distinct readings are needed; there is ${ordered.length === 1 ? "one" : "none"}.`);
+  if (new Set(ordered.map((reading) => reading.frequencyHz)).size < 2) {
+    return refuse("slope-undetermined", "All readings have one frequency, so nothing says how fast the period falls.");
+  }
+  return null;
 }
 
 /** In order of frequency; a reading told twice counts once. */

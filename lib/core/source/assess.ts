@@ -13,16 +13,17 @@ export interface Assessment {
  * Residuals a = (D - L, -tau) against every subset, t0 profiled out:
  *   (1)  chi^2 = a'S^-1 a - (a'S^-1 1)^2 / 1'S^-1 1,   t0 = -a'S^-1 1 / 1'S^-1 1
  * with the subset's own forms from those of the whole (see `Conditioned`).
+ * `into` is filled and given back where one is handed in.
  */
-export function assess(conditioned: Conditioned, distances: Float64Array): Assessment {
+export function assess(conditioned: Conditioned, distances: Float64Array, into?: Assessment): Assessment {
   const { network, precision, timeColumn, plan } = conditioned;
   const n = network.size;
-  const residual = new Float64Array(2 * n);
+  const assessment = into ?? blankAssessment(conditioned);
+  const { residual, column } = assessment;
   for (let i = 0; i < n; i++) {
     residual[i] = (distances[i] ?? NaN) - (network.distances[i] ?? NaN);
     residual[n + i] = -(network.origins[i] ?? NaN);
   }
-  const column = new Float64Array(2 * n);
   let square = 0;
   let cross = 0;
   for (let i = 0; i < 2 * n; i++) {
@@ -33,9 +34,19 @@ export function assess(conditioned: Conditioned, distances: Float64Array): Asses
     square += sum * (residual[i] ?? NaN);
     cross += (timeColumn[i] ?? NaN) * (residual[i] ?? NaN);
   }
-  const assessment = { residual, column, chiSquares: new Float64Array(plan.sets.length), origins: new Float64Array(plan.sets.length) };
   for (let s = 0; s < plan.sets.length; s++) assessSubset(conditioned, assessment, s, square, cross);
   return assessment;
+}
+
+/** Room for an assessment, to be filled again and again by a search. */
+export function blankAssessment({ network, plan }: Conditioned): Assessment {
+  const count = plan.sets.length;
+  return {
+    residual: new Float64Array(2 * network.size),
+    column: new Float64Array(2 * network.size),
+    chiSquares: new Float64Array(count),
+    origins: new Float64Array(count),
+  };
 }
 
 function assessSubset(conditioned: Conditioned, assessment: Assessment, s: number, wholeSquare: number, wholeCross: number): void {

@@ -1,8 +1,17 @@
 import { MEAN_RADIUS_METRES } from "../geodesy/earth.ts";
 import type { Assessment } from "./assess.ts";
 import type { Conditioned } from "./conditioned.ts";
-import type { Site } from "./site.ts";
-import { logSum } from "./weigh.ts";
+import { visibleFraction } from "../geodesy/sight-table.ts";
+import { DISC_RADIUS_METRES, SIGHT_FLOOR, termsOf, type Site, type StationTerms } from "./site.ts";
+import { belongingTerm, logSum } from "./weigh.ts";
+
+/** Bounds of the log density, and of each subset's part in it, land disregarded and held against it. */
+export interface Bound {
+  readonly logFree: number;
+  readonly logHeld: number;
+  readonly bySubsetFree: Float64Array;
+  readonly bySubsetHeld: Float64Array;
+}
 
 /** What is known of a site whose surroundings are to be bounded. */
 export interface Surroundings {
@@ -15,16 +24,17 @@ export interface Surroundings {
 }
 
 /**
- * An upper bound of the log density (land disregarded) anywhere within the reach of a site.
+ * An upper bound of the log density, free of land and held against it, anywhere within the reach of a site.
  *
  * Every subset's misfit is a squared norm of the residuals, so within the reach it is at least
  *   (1)  (|u| - r sqrt(lambda) - k)^2 / (1 + turn)
  * lambda: largest eigenvalue of the whole network's information on the position (a subset knows no more);
  * k: what the circles' curvature adds to the straight-line change of the distances, against the spread's
  * uncorrelated share; turn: how much the covariance can grow from the one used, as azimuths turn.
+ * A disc that a station sees nothing of holds no smaller disc that it sees, so sight is bounded as well.
  * The determinant of a subset of b stations falls to no less than `least`^(2b) of its own.
  */
-export function boundWithin(surroundings: Surroundings): number {
+export function boundWithin(surroundings: Surroundings): Bound {
   const { conditioned, site, assessment, reachMetres } = surroundings;
   const { network, plan } = conditioned;
   const { distanceMetres, sharedCorrelation } = network.settings.spread;
@@ -32,13 +42,27 @@ export function boundWithin(surroundings: Surroundings): number {
   const { turn, least } = turnOf(surroundings);
   const slack = reachMetres * Math.sqrt(largestInformation(conditioned, site)) + curvatureMetres(site, reachMetres) / uncorrelated;
   const room = bearingGain(conditioned);
+  const hidden = hiddenTerms(surroundings);
   const logs = new Float64Array(plan.sets.length);
+  const helds = new Float64Array(plan.sets.length);
   for (let s = 0; s < logs.length; s++) {
     const norm = Math.max(0, Math.sqrt(Math.max(0, assessment.chiSquares[s] ?? NaN)) - slack);
     const belonging = network.size - (plan.sets[s]?.length ?? 0);
     logs[s] = (conditioned.logConstants[s] ?? NaN) - (0.5 * norm * norm) / (1 + turn) - belonging * Math.log(least) + room; // (1)
+    helds[s] = (logs[s] ?? NaN) + (hidden.none ? 0 : belongingTerm(hidden, plan.rows[s]));
   }
-  return logSum(logs);
+  const logFree = logSum(logs);
+  return { logFree, logHeld: hidden.none ? logFree : logSum(helds), bySubsetFree: logs, bySubsetHeld: helds };
+}
+
+/** Stations that see nothing of the disc about any point within the reach have no more than the floor of sight there. */
+function hiddenTerms({ conditioned: { network }, site, reachMetres }: Surroundings): StationTerms {
+  return termsOf(network, (arrival, i) => {
+    const disc = DISC_RADIUS_METRES + reachMetres;
+    const table = arrival.sight;
+    const seen = table ? visibleFraction({ table, bearingDegrees: site.bearings[i] ?? NaN, distanceMetres: site.distances[i] ?? NaN, discRadiusMetres: disc }) : 1;
+    return seen > 0 ? 0 : Math.log(SIGHT_FLOOR);
+  });
 }
 
 /** Largest eigenvalue (1/m2) of J' W J, W the distances' information with t0 integrated out. */

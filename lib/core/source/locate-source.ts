@@ -42,7 +42,7 @@ export function locateSource(arrivals: readonly StationArrival[], options: Locat
   const sorted = [...arrivals].sort((a, b) => (a.id < b.id ? -1 : 1));
   const prepared = prepareNetwork(sorted, options);
   const input: SearchInput = { network: prepared.network, sets: prepared.sets, land: options.land };
-  const posterior = searchOcean(input);
+  const posterior = searchOcean(input, prepared.peaks);
   const crossings = pairwiseCrossings(arrivals);
   const regions = REGION_PROBABILITIES.map((probability) => regionHolding(posterior, probability));
   const placed = sorted.length > 1 ? placePossibleSources(input, posterior) : [];

@@ -20,6 +20,8 @@ export interface Prepared {
   readonly options: NetworkOptions;
   readonly clock: ClockOffset | null;
   readonly clocksSetAside: ReadonlySet<string>;
+  /** The free peaks, where the network they were found for is still the one to be searched. */
+  readonly peaks: readonly Peak[] | undefined;
 }
 
 /**
@@ -29,10 +31,15 @@ export interface Prepared {
 export function prepareNetwork(arrivals: readonly StationArrival[], { settings }: { settings: EstimationSettings }): Prepared {
   const plain: NetworkOptions = { settings };
   let network = networkOf(arrivals, plain);
-  let sets = straySets(network.size);
-  const peaks = network.size < 2 ? [] : findPeaks(network, planSubsets(network, sets));
+  let sets: readonly StraySet[] = straySets(network.size);
+  let peaks = network.size < 2 ? [] : findPeaks(network, planSubsets(network, sets));
   let peak = peaks[0] ?? null;
-  sets = straySets(network.size, peak ? [strayAt(peak)] : []);
+  const around = straySets(network.size, peak ? [strayAt(peak)] : []);
+  if (around.length > sets.length) {
+    sets = around;
+    peaks = findPeaks(network, planSubsets(network, sets));
+    peak = peaks[0] ?? null;
+  }
   let clock = peak ? suspectClock(network, peak) : null;
   let options = plain;
   if (peak && clock) {
@@ -48,7 +55,7 @@ export function prepareNetwork(arrivals: readonly StationArrival[], { settings }
     options = { ...options, spreadVarianceFactor: raised };
     network = networkOf(arrivals, options);
   }
-  return { network, sets, options, clock, clocksSetAside: options.clocksSetAside ?? new Set() };
+  return { network, sets, options, clock, clocksSetAside: options.clocksSetAside ?? new Set(), peaks: options === plain && network.size > 1 ? peaks : undefined };
 }
 
 function strayAt(peak: Peak): StraySet {

@@ -12,10 +12,12 @@ import { cellsHolding } from "./regions.ts";
 import { outlookFrom, quickSite, type Site } from "./site.ts";
 import { logSum, subsetLogs, weigh, type Weight } from "./weigh.ts";
 
-/** Cells whose best possible density lies this far (natural log) below the best found are left: e^-10. */
-const PRUNE_DEPTH = 10;
+/** Cells whose best possible density lies this far (natural log) below the best found are left: e^-7.5. */
+const PRUNE_DEPTH = 7.5;
+/** The same where land is disregarded: what is looked at only to say that it is ruled out. */
+const FREE_DEPTH = 6;
 /** Subsets of stations that at their very best lie this far below it are not summed. */
-const FAINT_SUBSET = 14;
+const FAINT_SUBSET = 10;
 /** Level from which cells share one covariance with all their descendants: within 250 km azimuths turn little. */
 const COVARIANCE_LEVEL = 2;
 /** No answer stops coarser than this. */
@@ -52,13 +54,14 @@ interface Prospect {
   readonly conditioned: Conditioned | null;
 }
 
-interface Look {
-  readonly cell: string;
-  readonly centre: Position;
-  readonly site: Site;
-  readonly conditioned: Conditioned;
-  readonly assessment: Assessment;
-  readonly logs: Float64Array;
+/** What every level of a search goes by. */
+interface Quest {
+  readonly network: Network;
+  readonly land: LandMask | null;
+  readonly plan: SubsetPlan;
+  /** Log density of the best peak, land held against it and land disregarded. */
+  readonly heldFloor: number;
+  readonly freeFloor: number;
 }
 
 /**
@@ -66,45 +69,82 @@ interface Look {
  * density, until the spacing is at most half the smallest 1-sigma axis and 100 cells lie in the 95 % region.
  * `known`: the network's free peaks, where they have been found already. [source: tarantola-valette-1982, h3]
  */
-export function searchOcean(input: SearchInput, known?: readonly Peak[]): Posterior {
-  const { network, sets, land } = input;
+export function searchOcean({ network, sets, land }: SearchInput, known?: readonly Peak[]): Posterior {
   const peaks = known ?? findPeaks(network, planSubsets(network, sets));
-  let floor = Math.max(-Infinity, ...peaks.map((peak) => heldAt(peak, land)));
-  const plan = planSubsets(network, weighty(peaks, sets, floor));
-  const axis = finestAxisMetres(peaks);
-  const apart = conditionAt(network, null, plan);
-  let prospects: readonly Prospect[] = firstCells().map((cell) => ({ cell, conditioned: apart }));
+  const heldFloor = Math.max(-Infinity, ...peaks.map((peak) => heldAt(peak, land)));
+  const freeFloor = Math.max(-Infinity, ...peaks.map((peak) => peak.logFree));
+  let quest: Quest = { network, land, plan: planSubsets(network, weighty(peaks, sets, heldFloor)), heldFloor, freeFloor };
+  const wanted = wantedLevel(peaks);
+  const apart = conditionAt(network, null, quest.plan);
+  let prospects: Prospect[] = firstCells().map((cell) => ({ cell, conditioned: apart }));
   for (let level = FIRST_LEVEL; ; level++) {
-    const looks = prospects.flatMap((prospect) => lookAt(network, plan, prospect) ?? []);
-    if (level >= LEAST_LEVEL) {
-      const cells = looks.flatMap((look) => weighCell(look, land, floor) ?? []);
-      floor = cells.reduce((most, cell) => Math.max(most, cell.logHeld), floor);
-      if (isFineEnough(level, cells, axis) || looks.length > MOST_CELLS) return { level, cells, peaks, plan };
+    if (level >= wanted || prospects.length > MOST_CELLS) {
+      const cells = weighCells(quest, prospects);
+      const enough = cellsHolding(cells, 0.95).length >= LEAST_CELLS_IN_REGION;
+      if (enough || level === LAST_LEVEL || prospects.length > MOST_CELLS) return { level, cells, peaks, plan: quest.plan };
     }
-    const kept = looks.filter((look) => boundWithin({ ...look, reachMetres: reachMetres(level), apart: level < COVARIANCE_LEVEL }) > floor - PRUNE_DEPTH);
-    prospects = kept.flatMap(({ cell, conditioned }) => childrenOf(cell).map((child) => ({ cell: child, conditioned: level < COVARIANCE_LEVEL ? null : conditioned })));
+    const { kept, plan } = pruned(quest, prospects, level);
+    quest = { ...quest, plan };
+    prospects = kept.flatMap(({ cell, conditioned }) => childrenOf(cell).map((child) => ({ cell: child, conditioned })));
   }
 }
 
-function lookAt(network: Network, plan: SubsetPlan, prospect: Prospect): Look | null {
+/** The cells with room for density within them, and the subsets that weigh anything in any of them. */
+function pruned(quest: Quest, prospects: readonly Prospect[], level: number): { kept: Prospect[]; plan: SubsetPlan } {
+  const { network, plan, heldFloor, freeFloor } = quest;
+  const best = new Float64Array(plan.sets.length).fill(-Infinity);
+  const kept = prospects.flatMap((prospect) => {
+    const look = lookAt(quest, prospect);
+    if (!look) return [];
+    const bound = boundWithin({ ...look, reachMetres: reachMetres(level), apart: level < COVARIANCE_LEVEL });
+    if (bound.logHeld < heldFloor - PRUNE_DEPTH && bound.logFree < freeFloor - FREE_DEPTH) return [];
+    for (let s = 0; s < best.length; s++) {
+      best[s] = Math.max(best[s] ?? NaN, (bound.bySubsetHeld[s] ?? NaN) - heldFloor, (bound.bySubsetFree[s] ?? NaN) - freeFloor);
+    }
+    return [{ cell: prospect.cell, azimuths: look.site.azimuths, conditioned: look.conditioned }];
+  });
+  const left = planSubsets(network, plan.sets.filter((_, s) => (best[s] ?? NaN) > -FAINT_SUBSET));
+  const changed = left.sets.length < plan.sets.length;
+  return {
+    plan: left,
+    kept: kept.map(({ cell, azimuths, conditioned }) => {
+      if (level < COVARIANCE_LEVEL) return { cell, conditioned: null };
+      return { cell, conditioned: changed || level === COVARIANCE_LEVEL ? conditionAt(network, azimuths, left) : conditioned };
+    }),
+  };
+}
+
+interface Look {
+  readonly centre: Position;
+  readonly site: Site;
+  readonly conditioned: Conditioned;
+  readonly assessment: Assessment;
+}
+
+function lookAt({ network, plan }: Quest, prospect: Prospect): Look | null {
   const centre = centreOf(prospect.cell);
   const site = quickSite(network, centre);
   const conditioned = prospect.conditioned ?? conditionAt(network, site.azimuths, plan);
-  if (!conditioned) return null;
-  const assessment = assess(conditioned, site.distances);
-  return { cell: prospect.cell, centre, site, conditioned, assessment, logs: subsetLogs(conditioned, assessment, site.logBearing) };
+  return conditioned && { centre, site, conditioned, assessment: assess(conditioned, site.distances) };
 }
 
-/** Null for a cell whose density is nothing beside the best, land or no land. */
-function weighCell({ cell, centre, site, conditioned, assessment, logs }: Look, land: LandMask | null, floor: number): WeighedCell | null {
-  if (logSum(logs) < floor - PRUNE_DEPTH) return null;
-  const outlook = outlookFrom(conditioned.network, site, centre, land);
-  return { cell, centre, areaSquareMetres: areaOf(cell, centre), ...weigh(conditioned, assessment, logs, outlook) };
+/** Leaves out cells whose density is nothing beside the best, land or no land. */
+function weighCells(quest: Quest, prospects: readonly Prospect[]): WeighedCell[] {
+  return prospects.flatMap((prospect) => {
+    const look = lookAt(quest, prospect);
+    if (!look) return [];
+    const { centre, site, conditioned, assessment } = look;
+    const logs = subsetLogs(conditioned, assessment, site.logBearing);
+    if (logSum(logs) < quest.heldFloor - PRUNE_DEPTH) return [];
+    const outlook = outlookFrom(quest.network, site, centre, quest.land);
+    const areaSquareMetres = areaOf(prospect.cell, centre);
+    return [{ cell: prospect.cell, centre, areaSquareMetres, ...weigh({ conditioned, assessment, logs, outlook }) }];
+  });
 }
 
 /** Log density at a peak with land, sight and exposure held against it. */
 export function heldAt({ conditioned, assessment, logs, site, position }: Peak, land: LandMask | null): number {
-  return weigh(conditioned, assessment, logs, outlookFrom(conditioned.network, site, position, land)).logHeld;
+  return weigh({ conditioned, assessment, logs, outlook: outlookFrom(conditioned.network, site, position, land) }).logHeld;
 }
 
 /** The subsets that could weigh anything with no misfit at all, judged by their constants at the peaks found. */
@@ -113,9 +153,12 @@ function weighty(peaks: readonly Peak[], sets: readonly StraySet[], floor: numbe
   return sets.filter((_, s) => peaks.some(({ conditioned }) => (conditioned.logConstants[s] ?? -Infinity) > floor - FAINT_SUBSET));
 }
 
-function isFineEnough(level: number, cells: readonly WeighedCell[], finestAxis: number): boolean {
-  if (level === LAST_LEVEL) return true;
-  return spacingMetres(level) <= finestAxis / 2 && cellsHolding(cells, 0.95).length >= LEAST_CELLS_IN_REGION;
+/** The coarsest level whose spacing is at most half the smallest 1-sigma axis. */
+function wantedLevel(peaks: readonly Peak[]): number {
+  const axis = finestAxisMetres(peaks);
+  let level = LEAST_LEVEL;
+  while (level < LAST_LEVEL && spacingMetres(level) > axis / 2) level++;
+  return level;
 }
 
 /** The smallest 1-sigma axis (m) among the peaks that count. */

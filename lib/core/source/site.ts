@@ -8,7 +8,7 @@ import type { Network } from "./network.ts";
 /** Storms are wide: what counts is how much of a disc of this radius lies in water and in sight. */
 export const DISC_RADIUS_METRES = 150_000;
 /** A coastline's error must never rule the truth out for good: the least that a station's sight can count. */
-const SIGHT_FLOOR = 0.02;
+export const SIGHT_FLOOR = 0.02;
 /** The same for a point far inland. */
 const OCEAN_FLOOR = 1e-3;
 
@@ -89,7 +89,7 @@ function bearingTerm({ estimate: { bearing } }: StationArrival, bearingDegrees: 
   return Math.log(360 / (bearing.sigmaDegrees * Math.sqrt(2 * Math.PI))) - 0.5 * (apart / bearing.sigmaDegrees) ** 2;
 }
 
-function termsOf(network: Network, term: (arrival: StationArrival, i: number) => number): StationTerms {
+export function termsOf(network: Network, term: (arrival: StationArrival, i: number) => number): StationTerms {
   const byStation = new Float64Array(network.size);
   let sum = 0;
   let none = true;

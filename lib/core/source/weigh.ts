@@ -41,7 +41,12 @@ export function logSum(logs: Float64Array): number {
  * Weighs a point: the mixture over which stations belong. A station's share in sight multiplies what it says where it
  * belongs; a stray tells nothing of the place. [source: tarantola-valette-1982]
  */
-export function weigh(conditioned: Conditioned, assessment: Assessment, logs: Float64Array, outlook: Outlook): Weight {
+export function weigh({ conditioned, assessment, logs, outlook }: {
+  readonly conditioned: Conditioned;
+  readonly assessment: Assessment;
+  readonly logs: Float64Array;
+  readonly outlook: Outlook;
+}): Weight {
   const { network, plan, timeInformation } = conditioned;
   const helds = logs.map((log, s) => log + (outlook.logSight.none ? 0 : belongingTerm(outlook.logSight, plan.rows[s])));
   let top = -Infinity;
@@ -71,7 +76,7 @@ export function weigh(conditioned: Conditioned, assessment: Assessment, logs: Fl
 }
 
 /** A sum over the stations that belong, from the sum over all. */
-function belongingTerm(terms: StationTerms, rows: Int32Array | undefined): number {
+export function belongingTerm(terms: StationTerms, rows: Int32Array | undefined): number {
   let log = terms.sum;
   const count = (rows?.length ?? 0) / 2;
   for (let a = 0; a < count; a++) log -= terms.byStation[rows?.[a] ?? NaN] ?? NaN;
