@@ -1,4 +1,5 @@
-import type { Conditioned } from "./conditioned.ts";
+import type { Conditioned, SubsetPlan } from "./conditioned.ts";
+import type { Network } from "./network.ts";
 
 /** The residuals of a candidate point, and each subset's chi-square at its own best t0 (seconds from the network's zero). */
 export interface Assessment {
@@ -18,7 +19,7 @@ export interface Assessment {
 export function assess(conditioned: Conditioned, distances: Float64Array, into?: Assessment): Assessment {
   const { network, precision, timeColumn, plan } = conditioned;
   const n = network.size;
-  const assessment = into ?? blankAssessment(conditioned);
+  const assessment = into ?? blankAssessment(network, plan);
   const { residual, column } = assessment;
   for (let i = 0; i < n; i++) {
     residual[i] = (distances[i] ?? NaN) - (network.distances[i] ?? NaN);
@@ -39,7 +40,7 @@ export function assess(conditioned: Conditioned, distances: Float64Array, into?:
 }
 
 /** Room for an assessment, to be filled again and again by a search. */
-export function blankAssessment({ network, plan }: Conditioned): Assessment {
+export function blankAssessment(network: Network, plan: SubsetPlan): Assessment {
   const count = plan.sets.length;
   return {
     residual: new Float64Array(2 * network.size),

@@ -23,8 +23,15 @@ export interface Surroundings {
   readonly apart: boolean;
 }
 
+/** Log densities below which nobody asks for a bound, land disregarded and held against it. */
+export interface Floors {
+  readonly free: number;
+  readonly held: number;
+}
+
 /**
- * An upper bound of the log density, free of land and held against it, anywhere within the reach of a site.
+ * An upper bound of the log density, free of land and held against it, anywhere within the reach of a site; null where
+ * it lies below both floors.
  *
  * Every subset's misfit is a squared norm of the residuals, so within the reach it is at least
  *   (1)  (|u| - r sqrt(lambda) - k)^2 / (1 + turn)
@@ -34,7 +41,21 @@ export interface Surroundings {
  * A disc that a station sees nothing of holds no smaller disc that it sees, so sight is bounded as well.
  * The determinant of a subset of b stations falls to no less than `least`^(2b) of its own.
  */
-export function boundWithin(surroundings: Surroundings): Bound {
+export function boundAbove(floors: Floors, surroundings: Surroundings): Bound | null {
+  const logs = freeBounds(surroundings);
+  const logFree = logSum(logs);
+  // What lies under land's or a cape's shadow is worth no more than what does not.
+  if (logFree < floors.free && logFree < floors.held) return null;
+  const { plan } = surroundings.conditioned;
+  const hidden = hiddenTerms(surroundings);
+  if (hidden.none) return { logFree, logHeld: logFree, bySubsetFree: logs, bySubsetHeld: logs };
+  const helds = logs.map((log, s) => log + belongingTerm(hidden, plan.rows[s]));
+  const logHeld = logSum(helds);
+  return logFree < floors.free && logHeld < floors.held ? null : { logFree, logHeld, bySubsetFree: logs, bySubsetHeld: helds };
+}
+
+/** By subset, with no land in the way. */
+function freeBounds(surroundings: Surroundings): Float64Array {
   const { conditioned, site, assessment, reachMetres } = surroundings;
   const { network, plan } = conditioned;
   const { distanceMetres, sharedCorrelation } = network.settings.spread;
@@ -42,17 +63,13 @@ export function boundWithin(surroundings: Surroundings): Bound {
   const { turn, least } = turnOf(surroundings);
   const slack = reachMetres * Math.sqrt(largestInformation(conditioned, site)) + curvatureMetres(site, reachMetres) / uncorrelated;
   const room = bearingGain(conditioned);
-  const hidden = hiddenTerms(surroundings);
   const logs = new Float64Array(plan.sets.length);
-  const helds = new Float64Array(plan.sets.length);
   for (let s = 0; s < logs.length; s++) {
     const norm = Math.max(0, Math.sqrt(Math.max(0, assessment.chiSquares[s] ?? NaN)) - slack);
     const belonging = network.size - (plan.sets[s]?.length ?? 0);
     logs[s] = (conditioned.logConstants[s] ?? NaN) - (0.5 * norm * norm) / (1 + turn) - belonging * Math.log(least) + room; // (1)
-    helds[s] = (logs[s] ?? NaN) + (hidden.none ? 0 : belongingTerm(hidden, plan.rows[s]));
   }
-  const logFree = logSum(logs);
-  return { logFree, logHeld: hidden.none ? logFree : logSum(helds), bySubsetFree: logs, bySubsetHeld: helds };
+  return logs;
 }
 
 /** Stations that see nothing of the disc about any point within the reach have no more than the floor of sight there. */

@@ -86,6 +86,20 @@ export function conditionAt(network: Network, azimuths: Float64Array | null, pla
   return conditioned;
 }
 
+/** The same covariance, for those subsets of it alone that `plan` lists: `kept[s]` is where its s-th stands in the old plan. */
+export function narrowed(conditioned: Conditioned, plan: SubsetPlan, kept: readonly number[]): Conditioned {
+  const old = conditioned.plan;
+  const corrections = new Float64Array(plan.squareStarts[kept.length] ?? 0);
+  const correctedTimes = new Float64Array(plan.rowStarts[kept.length] ?? 0);
+  kept.forEach((from, s) => {
+    corrections.set(conditioned.corrections.subarray(old.squareStarts[from], old.squareStarts[from + 1]), plan.squareStarts[s]);
+    correctedTimes.set(conditioned.correctedTimes.subarray(old.rowStarts[from], old.rowStarts[from + 1]), plan.rowStarts[s]);
+  });
+  const timeInformation = Float64Array.from(kept, (from) => conditioned.timeInformation[from] ?? NaN);
+  const logConstants = Float64Array.from(kept, (from) => conditioned.logConstants[from] ?? NaN);
+  return { ...conditioned, plan, corrections, correctedTimes, timeInformation, logConstants };
+}
+
 /** Fills in one subset; one whose block is singular to rounding gets no weight. */
 function conditionSubset(conditioned: Conditioned, logDeterminant: number, s: number): void {
   const { network, plan, timeColumn, corrections, correctedTimes } = conditioned;

@@ -1,5 +1,5 @@
-import { gridDisk } from "h3-js";
 import type { Position } from "../units/position.ts";
+import type { NeighboursOf } from "./neighbours.ts";
 import { logTotal } from "./regions.ts";
 import type { WeighedCell } from "./search.ts";
 
@@ -8,6 +8,12 @@ const SADDLE_DEPTH = 2;
 
 /** Log density of a cell, one of those that it carries. */
 export type DensityOf = (cell: WeighedCell) => number;
+
+/** Cells, and which of them touch. */
+export interface Landscape {
+  readonly cells: readonly WeighedCell[];
+  readonly neighboursOf: NeighboursOf;
+}
 
 export interface Mode {
   /** Where a climb to the mode's optimum starts. */
@@ -23,25 +29,21 @@ export interface Mode {
  * maximum they touch; where two maxima meet, the lower one is merged unless the meeting lies `SADDLE_DEPTH` below it
  * (topological persistence). [source: edelsbrunner-2002]
  */
-export function modesOf(cells: readonly WeighedCell[], densityOf: DensityOf): Mode[] {
+export function modesOf({ cells, neighboursOf }: Landscape, densityOf: DensityOf): Mode[] {
   const densest = [...cells].sort((a, b) => densityOf(b) - densityOf(a) || (a.cell < b.cell ? -1 : 1));
-  const owner = new Map<string, WeighedCell>();
+  const owner = new Map<WeighedCell, WeighedCell>();
   const mergedInto = new Map<WeighedCell, WeighedCell>();
   for (const cell of densest) {
-    const touching = [...new Set(neighbourOwners(cell, owner).map((summit) => rootOf(summit, mergedInto)))];
-    touching.sort((a, b) => densityOf(b) - densityOf(a));
+    const owners = neighboursOf(cell).flatMap((neighbour) => owner.get(neighbour) ?? []);
+    const touching = [...new Set(owners.map((summit) => rootOf(summit, mergedInto)))].sort((a, b) => densityOf(b) - densityOf(a));
     const [highest, ...others] = touching;
-    owner.set(cell.cell, highest ?? cell);
+    owner.set(cell, highest ?? cell);
     if (!highest) continue;
     for (const lower of others) {
       if (densityOf(lower) - densityOf(cell) < SADDLE_DEPTH) mergedInto.set(lower, highest);
     }
   }
   return gather(densest, owner, mergedInto, densityOf);
-}
-
-function neighbourOwners(cell: WeighedCell, owner: ReadonlyMap<string, WeighedCell>): WeighedCell[] {
-  return gridDisk(cell.cell, 1).flatMap((neighbour) => owner.get(neighbour) ?? []);
 }
 
 function rootOf(summit: WeighedCell, mergedInto: ReadonlyMap<WeighedCell, WeighedCell>): WeighedCell {
@@ -52,13 +54,13 @@ function rootOf(summit: WeighedCell, mergedInto: ReadonlyMap<WeighedCell, Weighe
 
 function gather(
   cells: readonly WeighedCell[],
-  owner: ReadonlyMap<string, WeighedCell>,
+  owner: ReadonlyMap<WeighedCell, WeighedCell>,
   mergedInto: ReadonlyMap<WeighedCell, WeighedCell>,
   densityOf: DensityOf,
 ): Mode[] {
   const groups = new Map<WeighedCell, WeighedCell[]>();
   for (const cell of cells) {
-    const summit = rootOf(owner.get(cell.cell) ?? cell, mergedInto);
+    const summit = rootOf(owner.get(cell) ?? cell, mergedInto);
     const group = groups.get(summit);
     if (group) group.push(cell);
     else groups.set(summit, [cell]);

@@ -2,6 +2,7 @@ import { frameAt, type Frame } from "../geodesy/quick-inverse.ts";
 import type { StationArrival } from "./answer.ts";
 import { steadyCovariance } from "./joint-covariance.ts";
 import type { EstimationSettings } from "./settings.ts";
+import type { StationTerms } from "./site.ts";
 
 /** How far apart in origin time two arrivals may be and still have been brought in for one event. */
 export const PLAUSIBLE_ORIGIN_SECONDS = 10 * 86_400;
@@ -29,6 +30,8 @@ export interface Network {
   readonly steady: Float64Array;
   /** Log density (per metre and second) of an arrival that is of anything but this storm. */
   readonly logStrayDensity: Float64Array;
+  /** What measured directions say anywhere, where no station has one: nothing. Null where one has. */
+  readonly noBearings: StationTerms | null;
 }
 
 export interface NetworkOptions {
@@ -62,5 +65,6 @@ export function networkOf(arrivals: readonly StationArrival[], options: NetworkO
       aside,
       (sigma) => -Math.log(PLAUSIBLE_DISTANCE_METRES) - Math.log(sigma > 0 ? sigma * Math.sqrt(2 * Math.PI) : PLAUSIBLE_ORIGIN_SECONDS),
     ),
+    noBearings: arrivals.some((arrival) => arrival.estimate.bearing) ? null : { byStation: new Float64Array(size), sum: 0, none: true },
   };
 }

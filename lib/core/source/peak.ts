@@ -41,16 +41,17 @@ const FAINT_INFORMATION = 1 / 5_000_000 ** 2;
  * The best point near `start` without regard to land: Gauss-Newton on the exact geodesics, each subset of stations
  * weighted by its share at the current point (expectation-maximisation). The covariance is taken at the current
  * azimuths and iterated with them; a step is judged under the covariance it was made with, so that readings which
- * agree exactly give exactly their common point. Null where the covariance is singular.
+ * agree exactly give exactly their common point. Null where the covariance is singular. A climb that `isKnown` ends
+ * where it stands.
  * [source: tarantola-valette-1982, karney-2013]
  */
-export function climbToPeak(network: Network, start: Position, plan: SubsetPlan): Peak | null {
+export function climbToPeak(network: Network, start: Position, plan: SubsetPlan, isKnown: (position: Position) => boolean = () => false): Peak | null {
   let here = look(network, start, plan);
   let longest = LONGEST_STEP_METRES;
   for (let count = 0; here && count < MOST_STEPS; count++) {
     const step = shortened(newtonStep(here), longest);
     const length = Math.hypot(step.east, step.north);
-    if (length < SETTLED_METRES) break;
+    if (length < SETTLED_METRES || isKnown(here.position)) break;
     const next: Look | null = look(network, stepped(here.position, step), plan);
     if (!next) return null;
     const worse = logUnder(here.conditioned, next.site) < here.logFree - 1e-9;

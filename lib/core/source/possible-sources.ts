@@ -31,7 +31,7 @@ export function placePossibleSources(input: SearchInput, posterior: Posterior): 
 
 /** Two rings that cross do so at two points, each an exact optimum however shallow the saddle between them. */
 function separateModes(input: SearchInput, posterior: Posterior, densityOf: DensityOf): Mode[] {
-  const modes = crossingModes(input.network, posterior, densityOf) ?? modesOf(posterior.cells, densityOf);
+  const modes = crossingModes(input.network, posterior, densityOf) ?? modesOf(posterior, densityOf);
   return modes.filter((mode) => mode.probability >= LEAST_PROBABILITY);
 }
 

@@ -1,15 +1,16 @@
 import type { LandMask } from "../geodesy/land-mask.ts";
 import type { Position } from "../units/position.ts";
-import { assess, type Assessment } from "./assess.ts";
+import { assess, blankAssessment, type Assessment } from "./assess.ts";
 import type { StraySet } from "./belonging.ts";
-import { boundWithin } from "./bound.ts";
-import { conditionAt, planSubsets, type Conditioned, type SubsetPlan } from "./conditioned.ts";
+import { boundAbove, type Floors } from "./bound.ts";
+import { conditionAt, narrowed, planSubsets, type Conditioned, type SubsetPlan } from "./conditioned.ts";
 import { findPeaks } from "./find-peaks.ts";
 import { areaOf, centreOf, childrenOf, firstCells, FIRST_LEVEL, LAST_LEVEL, reachMetres, spacingMetres } from "./grid.ts";
+import { neighbourFinder, type NeighboursOf } from "./neighbours.ts";
 import type { Network } from "./network.ts";
 import type { Peak } from "./peak.ts";
 import { cellsHolding } from "./regions.ts";
-import { outlookFrom, quickSite, type Site } from "./site.ts";
+import { blankSite, outlookFrom, quickSite, type Site, type SiteColumns } from "./site.ts";
 import { logSum, subsetLogs, weigh, type Weight } from "./weigh.ts";
 
 /** Cells whose best possible density lies this far (natural log) below the best found are left: e^-7.5. */
@@ -42,6 +43,7 @@ export interface SearchInput {
 export interface Posterior {
   readonly level: number;
   readonly cells: readonly WeighedCell[];
+  readonly neighboursOf: NeighboursOf;
   /** Free peaks (land disregarded) by density, best first. */
   readonly peaks: readonly Peak[];
   /** The subsets of stations that weigh anything. */
@@ -62,6 +64,9 @@ interface Quest {
   /** Log density of the best peak, land held against it and land disregarded. */
   readonly heldFloor: number;
   readonly freeFloor: number;
+  /** Room for one look at a cell. */
+  readonly columns: SiteColumns;
+  readonly blank: Assessment;
 }
 
 /**
@@ -73,7 +78,8 @@ export function searchOcean({ network, sets, land }: SearchInput, known?: readon
   const peaks = known ?? findPeaks(network, planSubsets(network, sets));
   const heldFloor = Math.max(-Infinity, ...peaks.map((peak) => heldAt(peak, land)));
   const freeFloor = Math.max(-Infinity, ...peaks.map((peak) => peak.logFree));
-  let quest: Quest = { network, land, plan: planSubsets(network, weighty(peaks, sets, heldFloor)), heldFloor, freeFloor };
+  const start = planSubsets(network, weighty(peaks, sets, heldFloor));
+  let quest: Quest = { network, land, plan: start, heldFloor, freeFloor, columns: blankSite(network), blank: blankAssessment(network, start) };
   const wanted = wantedLevel(peaks);
   const apart = conditionAt(network, null, quest.plan);
   let prospects: Prospect[] = firstCells().map((cell) => ({ cell, conditioned: apart }));
@@ -81,7 +87,7 @@ export function searchOcean({ network, sets, land }: SearchInput, known?: readon
     if (level >= wanted || prospects.length > MOST_CELLS) {
       const cells = weighCells(quest, prospects);
       const enough = cellsHolding(cells, 0.95).length >= LEAST_CELLS_IN_REGION;
-      if (enough || level === LAST_LEVEL || prospects.length > MOST_CELLS) return { level, cells, peaks, plan: quest.plan };
+      if (enough || level === LAST_LEVEL || prospects.length > MOST_CELLS) return { level, cells, neighboursOf: neighbourFinder(cells), peaks, plan: quest.plan };
     }
     const { kept, plan } = pruned(quest, prospects, level);
     quest = { ...quest, plan };
@@ -92,53 +98,51 @@ export function searchOcean({ network, sets, land }: SearchInput, known?: readon
 /** The cells with room for density within them, and the subsets that weigh anything in any of them. */
 function pruned(quest: Quest, prospects: readonly Prospect[], level: number): { kept: Prospect[]; plan: SubsetPlan } {
   const { network, plan, heldFloor, freeFloor } = quest;
+  const floors: Floors = { held: heldFloor - PRUNE_DEPTH, free: freeFloor - FREE_DEPTH };
   const best = new Float64Array(plan.sets.length).fill(-Infinity);
-  const kept = prospects.flatMap((prospect) => {
-    const look = lookAt(quest, prospect);
-    if (!look) return [];
-    const bound = boundWithin({ ...look, reachMetres: reachMetres(level), apart: level < COVARIANCE_LEVEL });
-    if (bound.logHeld < heldFloor - PRUNE_DEPTH && bound.logFree < freeFloor - FREE_DEPTH) return [];
+  const kept = prospects.flatMap(({ cell, conditioned: shared }) => {
+    const look = lookAt(quest, centreOf(cell), shared);
+    const bound = look && boundAbove(floors, { ...look, reachMetres: reachMetres(level), apart: level < COVARIANCE_LEVEL });
+    if (!bound) return [];
     for (let s = 0; s < best.length; s++) {
       best[s] = Math.max(best[s] ?? NaN, (bound.bySubsetHeld[s] ?? NaN) - heldFloor, (bound.bySubsetFree[s] ?? NaN) - freeFloor);
     }
-    return [{ cell: prospect.cell, azimuths: look.site.azimuths, conditioned: look.conditioned }];
+    return [{ cell, conditioned: look.conditioned }];
   });
-  const left = planSubsets(network, plan.sets.filter((_, s) => (best[s] ?? NaN) > -FAINT_SUBSET));
-  const changed = left.sets.length < plan.sets.length;
-  return {
-    plan: left,
-    kept: kept.map(({ cell, azimuths, conditioned }) => {
-      if (level < COVARIANCE_LEVEL) return { cell, conditioned: null };
-      return { cell, conditioned: changed || level === COVARIANCE_LEVEL ? conditionAt(network, azimuths, left) : conditioned };
-    }),
-  };
+  if (level < COVARIANCE_LEVEL) return { plan, kept: kept.map(({ cell }) => ({ cell, conditioned: null })) };
+  const left = plan.sets.flatMap((_, s) => ((best[s] ?? NaN) > -FAINT_SUBSET ? [s] : []));
+  if (left.length === plan.sets.length) return { plan, kept };
+  const fewer = planSubsets(network, left.map((s) => plan.sets[s] ?? []));
+  const narrow = new Map(kept.map(({ conditioned }) => [conditioned, null as Conditioned | null]));
+  for (const conditioned of narrow.keys()) narrow.set(conditioned, narrowed(conditioned, fewer, left));
+  return { plan: fewer, kept: kept.map(({ cell, conditioned }) => ({ cell, conditioned: narrow.get(conditioned) ?? null })) };
 }
 
 interface Look {
-  readonly centre: Position;
   readonly site: Site;
   readonly conditioned: Conditioned;
   readonly assessment: Assessment;
 }
 
-function lookAt({ network, plan }: Quest, prospect: Prospect): Look | null {
-  const centre = centreOf(prospect.cell);
-  const site = quickSite(network, centre);
-  const conditioned = prospect.conditioned ?? conditionAt(network, site.azimuths, plan);
-  return conditioned && { centre, site, conditioned, assessment: assess(conditioned, site.distances) };
+/** A look lasts until the next: its columns are written over. */
+function lookAt({ network, plan, columns, blank }: Quest, centre: Position, shared: Conditioned | null): Look | null {
+  const site = quickSite(network, centre, columns);
+  const conditioned = shared ?? conditionAt(network, site.azimuths, plan);
+  return conditioned && { site, conditioned, assessment: assess(conditioned, site.distances, blank) };
 }
 
 /** Leaves out cells whose density is nothing beside the best, land or no land. */
 function weighCells(quest: Quest, prospects: readonly Prospect[]): WeighedCell[] {
-  return prospects.flatMap((prospect) => {
-    const look = lookAt(quest, prospect);
+  return prospects.flatMap(({ cell, conditioned: shared }) => {
+    const centre = centreOf(cell);
+    const look = lookAt(quest, centre, shared);
     if (!look) return [];
-    const { centre, site, conditioned, assessment } = look;
+    const { site, conditioned, assessment } = look;
     const logs = subsetLogs(conditioned, assessment, site.logBearing);
     if (logSum(logs) < quest.heldFloor - PRUNE_DEPTH) return [];
     const outlook = outlookFrom(quest.network, site, centre, quest.land);
-    const areaSquareMetres = areaOf(prospect.cell, centre);
-    return [{ cell: prospect.cell, centre, areaSquareMetres, ...weigh({ conditioned, assessment, logs, outlook }) }];
+    const areaSquareMetres = areaOf(cell, centre);
+    return [{ cell, centre, areaSquareMetres, ...weigh({ conditioned, assessment, logs, outlook }) }];
   });
 }
 

@@ -36,23 +36,28 @@ export interface Outlook {
   readonly logOcean: number;
 }
 
-/** Distances as `quickDistance` has them, for the search; `exactSite` finishes. */
-export function quickSite(network: Network, position: Position): Site {
+/** The columns of a site, to be filled again and again by a search. */
+export type SiteColumns = Pick<Site, "distances" | "azimuths" | "bearings">;
+
+export function blankSite({ size }: Network): SiteColumns {
+  return { distances: new Float64Array(size), azimuths: new Float64Array(size), bearings: new Float64Array(size) };
+}
+
+/** Distances as `quickDistance` has them, for the search; `exactSite` finishes. Writes into the columns it is given. */
+export function quickSite(network: Network, position: Position, columns: SiteColumns): Site {
   const frame = frameAt(position);
-  const n = network.size;
-  const distances = new Float64Array(n);
-  const azimuths = new Float64Array(n);
-  const bearings = new Float64Array(n);
-  network.frames.forEach((station, i) => {
+  const { distances, azimuths, bearings } = columns;
+  for (let i = 0; i < network.size; i++) {
+    const station = network.frames[i] ?? frame;
     distances[i] = quickDistance(station, frame);
     azimuths[i] = quickAzimuth(frame, station);
     bearings[i] = (quickAzimuth(station, frame) * 180) / Math.PI;
-  });
+  }
   return { distances, azimuths, bearings, logBearing: bearingTerms(network, bearings) };
 }
 
 export function bearingTerms(network: Network, bearings: Float64Array): StationTerms {
-  return termsOf(network, (arrival, i) => bearingTerm(arrival, bearings[i] ?? NaN));
+  return network.noBearings ?? termsOf(network, (arrival, i) => bearingTerm(arrival, bearings[i] ?? NaN));
 }
 
 export function outlookFrom(network: Network, site: Site, position: Position, land: LandMask | null): Outlook {
