@@ -55,6 +55,12 @@ describe("rules of thumb for deep water", () => {
       expectWithin(found[quantity]?.(1 / period) ?? NaN, factor * period ** power, table.tolerance);
     }
   });
+  it("lie 2.8 % under the common 1.56 T kn for the group speed", () => {
+    const rule = z.strictObject({ quantity: z.string(), factor: z.number(), percentHigh: z.number() });
+    const { highRule } = referenceFacts("group-speed-rules", z.object({ highRule: rule }));
+    const percent = 100 * (highRule.factor / (found[highRule.quantity]?.(1) ?? NaN) - 1);
+    expectWithin(percent, highRule.percentHigh, { absolute: 0.05, unit: "%", because: "given to a tenth" });
+  });
 });
 
 describe("a wave of 10 s in 3 m of water", () => {
