@@ -11,7 +11,7 @@ import { countHeld, median, tallyClocks } from "../support/coverage/tally.ts";
 const STORMS = Number(process.env.OFFING_COVERAGE_STORMS ?? 4000);
 const STRESSED_STORMS = Math.ceil(STORMS / 10);
 const SEEDS = [101, 102, 103];
-const MEASURED = new URL("./coverage-worker.ts", import.meta.url);
+const MEASURED = new URL("./coverage-worker.mjs", import.meta.url);
 
 const STRESSED: readonly RecipeName[] = [
   "waves-bins-0.005-corrected",
