@@ -4,7 +4,7 @@ import tseslint from "typescript-eslint";
 const root = new URL("..", import.meta.url).pathname;
 
 export default tseslint.config(
-  { ignores: ["node_modules/", ".next/", ".data/", "lib/store/generated/", "tests/output/", "next-env.d.ts"] },
+  { ignores: ["node_modules/", ".scratch/", ".next/", ".data/", "lib/store/generated/", "tests/output/", "next-env.d.ts"] },
   {
     files: ["**/*.{ts,tsx}"],
     extends: [tseslint.configs.strictTypeChecked, tseslint.configs.stylisticTypeChecked],

@@ -1,7 +1,7 @@
 // From a fresh clone to the demo in the browser. It runs before anything is installed, so it uses nothing but what
 // comes with Node.
 import { spawn, spawnSync } from "node:child_process";
-import { existsSync, mkdirSync, renameSync, rmSync, statSync } from "node:fs";
+import { existsSync, mkdirSync, readdirSync, renameSync, rmSync, statSync, writeFileSync } from "node:fs";
 import { createServer } from "node:net";
 import { dirname, join } from "node:path";
 import { fileURLToPath } from "node:url";
@@ -57,6 +57,23 @@ function install() {
   if (!driverLoads()) stop(COMPILER_ADVICE);
 }
 
+/** When the last of these files and folders, and of all that they hold, was changed. A file taken away changes its folder. */
+function lastChange(paths) {
+  const within = (path) => (statSync(path).isDirectory() ? readdirSync(path, { recursive: true, encoding: "utf8" }).map((name) => join(path, name)) : []);
+  const all = paths.map((path) => join(root, path)).filter((path) => existsSync(path)).flatMap((path) => [path, ...within(path)]);
+  return Math.max(...all.map((path) => statSync(path).mtimeMs));
+}
+
+/** Pages are built anew only after something that they are made of has changed. Every other build takes the mark away. */
+function build() {
+  const mark = join(root, ".next", "built-for-demo");
+  const sources = ["app", "lib", "public", "prisma/schema.prisma", "next.config.js", "proxy.ts", "package.json", "package-lock.json"];
+  const isCurrent = existsSync(mark) && statSync(mark).mtimeMs >= lastChange(sources);
+  if (isCurrent) return;
+  step("Building the pages", "npm", ["run", "build"]);
+  writeFileSync(mark, "");
+}
+
 /** Fills a folder beside the demo's own and moves it there when it is whole. Data that are there already stay. */
 function seed() {
   if (existsSync(dataDirectory)) {
@@ -82,11 +99,13 @@ const [major, minor] = process.versions.node.split(".").map(Number);
 if (major < 20 || (major === 20 && minor < 19)) stop(`Node 20.19 or later is needed; this is ${process.versions.node}.`);
 
 install();
-step("Preparing the database code", "npm", ["run", "generate"]);
+// Saving the events needs the database code, which the build makes as well.
+if (!existsSync(dataDirectory)) step("Preparing the database code", "npm", ["run", "generate"]);
 seed();
-step("Building the pages", "npm", ["run", "build"]);
+build();
 
 const port = (await isFree(USUAL_PORT)) ? USUAL_PORT : 0;
+if (port === 0) console.log(`Port ${USUAL_PORT} is taken on this machine; another is used.`);
 const server = spawn("npx", ["tsx", "lib/cli/start.ts", "--data", dataDirectory, "--port", String(port)], { cwd: root, stdio: "inherit" });
 for (const signal of ["SIGINT", "SIGTERM"]) process.on(signal, () => server.kill(signal));
 server.once("exit", (code) => process.exit(code ?? 0));

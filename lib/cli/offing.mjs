@@ -1,6 +1,8 @@
 #!/usr/bin/env node
-// The command's door. It needs nothing but what `npm ci` installs: the program's TypeScript is read as it stands.
-import { register } from "tsx/esm/api";
+// The command's door. It needs nothing but what `npm ci` installs.
+import { fileURLToPath } from "node:url";
+import { loadCommand } from "./load-command.mjs";
 
-register();
-await import("./main.ts");
+const packageRoot = fileURLToPath(new URL("../../", import.meta.url));
+const { main } = await loadCommand(packageRoot);
+main({ packageRoot });

@@ -1,6 +1,6 @@
 import { spawn } from "node:child_process";
 import { existsSync } from "node:fs";
-import { connect, createServer } from "node:net";
+import { createServer } from "node:net";
 import { join, resolve } from "node:path";
 import { setTimeout as pause } from "node:timers/promises";
 import { fileURLToPath } from "node:url";
@@ -15,6 +15,8 @@ const USAGE = `npm start -- --data DIR [--port N] [--host H]
   --port N     3000 unless told otherwise; 0 takes a free one
   --host H     127.0.0.1 unless told otherwise: only this machine can reach it`;
 
+const OK = 200;
+
 const packageRoot = fileURLToPath(new URL("../../", import.meta.url));
 
 interface StartCall {
@@ -24,7 +26,12 @@ interface StartCall {
 }
 
 function wrongCall(message: string): InputError {
-  return new InputError([{ code: "wrong-call", path: "", message: `${message}\n\n${USAGE}` }]);
+  return cannotStart(`${message}\n\n${USAGE}`);
+}
+
+/** The call is well formed, and something about this machine stands against it. */
+function cannotStart(message: string): InputError {
+  return new InputError([{ code: "cannot-start", path: "", message }]);
 }
 
 /** @throws InputError where the call is not as `USAGE` says. */
@@ -54,12 +61,16 @@ function readOptions<Values>(read: () => Values): Values {
   }
 }
 
-/** A port of `host` that nothing listens on: `port` itself, or any where it is 0. Null where it is taken. */
-function freePort({ host, port }: { host: string; port: number }): Promise<number | null> {
-  return new Promise((answer) => {
+/**
+ * A port of `host` that nothing listens on: `port` itself, or any where it is 0.
+ *
+ * @throws InputError where there is none.
+ */
+function freePort({ host, port }: { host: string; port: number }): Promise<number> {
+  return new Promise((answer, refuse) => {
     const probe = createServer();
-    probe.once("error", () => {
-      answer(null);
+    probe.once("error", (error: NodeJS.ErrnoException) => {
+      refuse(cannotStart(WHY_NOT[error.code ?? ""]?.({ host, port }) ?? `Port ${port} of ${host} cannot be listened on: ${error.message}.`));
     });
     probe.listen(port, host, () => {
       const address = probe.address();
@@ -70,24 +81,26 @@ function freePort({ host, port }: { host: string; port: number }): Promise<numbe
   });
 }
 
-function answersAt({ host, port }: { host: string; port: number }): Promise<boolean> {
-  return new Promise((answer) => {
-    const socket = connect({ host, port });
-    socket.once("connect", () => {
-      socket.destroy();
-      answer(true);
-    });
-    socket.once("error", () => {
-      answer(false);
-    });
-  });
+const WHY_NOT: Readonly<Record<string, (place: { host: string; port: number }) => string>> = {
+  EADDRINUSE: ({ host, port }) => `Port ${port} of ${host} is taken. Name another with --port, or let --port 0 find one.`,
+  EADDRNOTAVAIL: ({ host }) => `${host} is no address of this machine. Name one of its own with --host.`,
+  ENOTFOUND: ({ host }) => `${host} is no address of this machine. Name one of its own with --host.`,
+  EACCES: ({ port }) => `Port ${port} may not be listened on without more rights. Name another with --port.`,
+};
+
+/** Status of the server's first page; null while nothing answers. That page opens the data folder, which is then held. */
+async function statusAt(address: string): Promise<number | null> {
+  try {
+    return (await fetch(address)).status;
+  } catch {
+    return null;
+  }
 }
 
 /** Serves until it is told to stop; gives the exit status. */
 async function serve(call: StartCall): Promise<number> {
-  if (!existsSync(join(packageRoot, ".next", "BUILD_ID"))) throw wrongCall("The pages are not built yet. First: npm run build");
+  if (!existsSync(join(packageRoot, ".next", "BUILD_ID"))) throw cannotStart("The pages are not built yet. First: npm run build");
   const port = await freePort(call);
-  if (port === null) throw wrongCall(`Port ${call.port} of ${call.host} is taken. Name another with --port.`);
   // Pending migrations are applied here, before anyone can ask for a page, and fail where the keeper sees it.
   const migrationsDirectory = join(packageRoot, "prisma", "migrations");
   await (await openStore({ dataDirectory: call.dataDirectory, migrationsDirectory })).close();
@@ -109,14 +122,21 @@ async function serve(call: StartCall): Promise<number> {
   });
   for (const signal of ["SIGINT", "SIGTERM"] as const) process.on(signal, () => server.kill(signal));
 
-  let isUp = false;
-  while (!isUp && server.exitCode === null) {
-    await pause(50);
-    isUp = await answersAt({ host: call.host, port });
-  }
   const name = call.host.includes(":") ? `[${call.host}]` : call.host;
-  if (isUp) console.log(`Offing is at http://${name}:${port}/\nData: ${call.dataDirectory}\nCtrl-C stops it.`);
-  return ended;
+  const address = `http://${name}:${port}/`;
+  let status = await statusAt(address);
+  while (status === null && server.exitCode === null && server.signalCode === null) {
+    await pause(50);
+    status = await statusAt(address);
+  }
+  if (status === null || status === OK) {
+    if (status === OK) console.log(`Offing is at ${address}\nData: ${call.dataDirectory}\nCtrl-C stops it.`);
+    return ended;
+  }
+  server.kill("SIGTERM");
+  await ended;
+  console.error(`The first page answered with status ${status}, so the server was stopped. What went wrong stands above.`);
+  return 1;
 }
 
 try {

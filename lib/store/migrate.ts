@@ -1,5 +1,6 @@
 import { randomUUID } from "node:crypto";
 import Database from "better-sqlite3";
+import { InputError } from "#lib/core/failures/input-error.ts";
 import { readMigrationFiles } from "./migration-files.ts";
 import type { MigrationFile } from "./migration-files.ts";
 
@@ -25,8 +26,9 @@ export interface MigrationResult {
  * Brings a database up to the migrations in `migrationsDirectory`: each in a transaction of its own, after a copy of
  * the whole database beside it.
  *
- * @throws Error where a migration fails (it is undone, those before it stay, the copy stays), where one that was applied
- *   has changed since, or where the database knows one that this program does not.
+ * @throws InputError where the database knows a migration that this program does not.
+ * @throws Error where a migration fails (it is undone, those before it stay, the copy stays), or where one that was
+ *   applied has changed since.
  */
 export function migrate(paths: { databasePath: string; migrationsDirectory: string }): MigrationResult {
   const files = readMigrationFiles(paths.migrationsDirectory);
@@ -65,7 +67,8 @@ function pendingMigrations(files: readonly MigrationFile[], applied: ReadonlyMap
   const known = new Set(files.map((file) => file.name));
   const foreign = [...applied.keys()].filter((name) => !known.has(name));
   if (foreign.length > 0) {
-    throw new Error(`The database was written by a newer version of this program (${foreign.join(", ")}).`);
+    const message = `The database was written by a newer version of this program (${foreign.join(", ")}). Use that version, or another data folder.`;
+    throw new InputError([{ code: "newer-database", path: "data folder", message }]);
   }
   const changed = files.find((file) => applied.has(file.name) && applied.get(file.name) !== file.checksum);
   if (changed !== undefined) {

@@ -4,8 +4,10 @@ import type { EventStore } from "#lib/application/ports.ts";
 import { openClient } from "./client.ts";
 import type { Prisma } from "./generated/client.ts";
 import { listEvents, loadEvent } from "./load-events.ts";
+import { lockFolder } from "./lock-folder.ts";
 import { migrate } from "./migrate.ts";
 import { saveEvent } from "./save-event.ts";
+import { unusableFolder } from "./unusable-folder.ts";
 import { createWriteGate } from "./write-gate.ts";
 
 export const DATABASE_FILE = "offing.sqlite";
@@ -16,15 +18,20 @@ export interface Store extends EventStore {
   close(): Promise<void>;
 }
 
-/**
- * Opens the database in `dataDirectory`, made if it is missing, and applies pending migrations first. One process
- * writes to a data directory at a time.
- */
-export async function openStore(place: { dataDirectory: string; migrationsDirectory: string }): Promise<Store> {
-  mkdirSync(place.dataDirectory, { recursive: true });
-  const databasePath = join(place.dataDirectory, DATABASE_FILE);
-  migrate({ databasePath, migrationsDirectory: place.migrationsDirectory });
+interface Place {
+  readonly dataDirectory: string;
+  readonly migrationsDirectory: string;
+}
 
+/**
+ * Opens the database in `dataDirectory`, made if it is missing, and applies pending migrations first. One store at a
+ * time has a data folder: two that write would each find the other's rows changed under their transactions.
+ *
+ * @throws InputError where the folder cannot be used or is in use, and as `migrate` says.
+ */
+export async function openStore(place: Place): Promise<Store> {
+  const databasePath = join(place.dataDirectory, DATABASE_FILE);
+  const release = takeFolder(place, databasePath);
   const writer = await openClient(databasePath);
   const reader = await openClient(databasePath);
   const gate = createWriteGate();
@@ -39,6 +46,24 @@ export async function openStore(place: { dataDirectory: string; migrationsDirect
     async close() {
       await gate.settled();
       await Promise.all([writer.$disconnect(), reader.$disconnect()]);
+      release();
     },
   };
+}
+
+/** Locks the folder and brings its database up to date; gives what lets go of the folder. */
+function takeFolder({ dataDirectory, migrationsDirectory }: Place, databasePath: string): () => void {
+  try {
+    mkdirSync(dataDirectory, { recursive: true });
+    const release = lockFolder(dataDirectory);
+    try {
+      migrate({ databasePath, migrationsDirectory });
+    } catch (error) {
+      release();
+      throw error;
+    }
+    return release;
+  } catch (error) {
+    throw unusableFolder(error, dataDirectory) ?? error;
+  }
 }

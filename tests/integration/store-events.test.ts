@@ -4,7 +4,8 @@ import { describe, expect, onTestFinished, test } from "vitest";
 import { DATABASE_FILE, openStore } from "#lib/store/open-store.ts";
 import { inventedEvent, INVENTED_DEPLOYMENT } from "#tests/support/invented-event.ts";
 import { temporaryDirectory } from "#tests/support/temporary-directory.ts";
-import { MIGRATIONS_DIRECTORY, temporaryStore } from "#tests/support/temporary-store.ts";
+import { MIGRATIONS_DIRECTORY } from "#tests/support/migrations-directory.ts";
+import { temporaryStore } from "#tests/support/temporary-store.ts";
 
 describe("events in the store", () => {
   test("come back as they went in, from the file and not from memory", async () => {

@@ -6,7 +6,7 @@ import { migrate } from "#lib/store/migrate.ts";
 import { openStore } from "#lib/store/open-store.ts";
 import { inventedEvent } from "#tests/support/invented-event.ts";
 import { temporaryDirectory } from "#tests/support/temporary-directory.ts";
-import { MIGRATIONS_DIRECTORY } from "#tests/support/temporary-store.ts";
+import { MIGRATIONS_DIRECTORY } from "#tests/support/migrations-directory.ts";
 
 /** A database with one event, and a copy of the migrations to which a test can add. */
 async function keptDatabase(): Promise<{ databasePath: string; migrationsDirectory: string; add(name: string, sql: string): void }> {

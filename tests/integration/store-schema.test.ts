@@ -6,7 +6,7 @@ import { migrate } from "#lib/store/migrate.ts";
 import { readPrismaSchema } from "#tests/support/prisma-schema.ts";
 import type { SchemaTable } from "#tests/support/prisma-schema.ts";
 import { temporaryDirectory } from "#tests/support/temporary-directory.ts";
-import { MIGRATIONS_DIRECTORY } from "#tests/support/temporary-store.ts";
+import { MIGRATIONS_DIRECTORY } from "#tests/support/migrations-directory.ts";
 
 const declared = readPrismaSchema(readFileSync("prisma/schema.prisma", "utf8"));
 

@@ -4,7 +4,7 @@ const ALPHABET = ["core/failures", "core/units", "core/waves", "core/signal", "c
 const CORE = [...ALPHABET, "core/arrival", "core/source", "core/scan", "core/onward"];
 
 /** Who may import whom; a room may always import itself. What is missing here may import nothing of ours. */
-export const MAY_IMPORT: Readonly<Record<string, readonly string[] | undefined>> = {
+const MAY_IMPORT: Readonly<Record<string, readonly string[] | undefined>> = {
   "core/failures": [],
   "core/units": ["core/failures"],
   "core/waves": ALPHABET,
@@ -50,7 +50,7 @@ const CORE_PACKAGES = /^(@stdlib\/|geographiclib-geodesic$|geojson$|h3-js$|topoj
 /** What code that is sent to a browser may reach. */
 const BROWSER_ROOMS = new Set([...CORE, "contracts", "presentation", "chart", "app"]);
 
-export function roomOf(path: string): string {
+function roomOf(path: string): string {
   if (path.startsWith("lib/store/generated/")) return "store";
   if (path === "lib/application/ports.ts") return "application/ports";
   const [top = "", second = "", third = ""] = path.split("/");

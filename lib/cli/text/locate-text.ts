@@ -1,3 +1,4 @@
+import { toEstimationSettings } from "#lib/contracts/estimation-settings.ts";
 import type { LocatedStationJson, LocateJson } from "#lib/contracts/locate-json.ts";
 import { numberedStations } from "#lib/core/arrival/numbered-stations.ts";
 import type { EventObservations } from "#lib/core/arrival/observations.ts";
@@ -21,7 +22,7 @@ export function locateText({ observations, solution, answer }: {
   readonly answer: LocateJson;
 }): string {
   const stations = numberedStations(observations);
-  const words = answerWords({ solution, stations, unit: UNIT });
+  const words = answerWords({ solution, stations, settings: toEstimationSettings(answer.settings), unit: UNIT });
   const checks = solution.answer === null ? null : checkWords({ answer: solution.answer, stations, unit: UNIT });
   const numbers = new Map(stations.map(({ id, number }) => [id, number]));
   const refused = answer.stations.filter(({ error }) => error !== undefined);

@@ -5,9 +5,9 @@ import { connectedOcean, type WaterRun } from "./connected-ocean.ts";
 import { headingVector, sphericalDirect, sphericalFrame } from "./spherical-frame.ts";
 import { MEAN_RADIUS_METRES } from "./earth.ts";
 
-export const CELLS_PER_DEGREE = 10;
-export const MASK_ROWS = 180 * CELLS_PER_DEGREE;
-export const MASK_COLUMNS = 360 * CELLS_PER_DEGREE;
+const CELLS_PER_DEGREE = 10;
+const MASK_ROWS = 180 * CELLS_PER_DEGREE;
+const MASK_COLUMNS = 360 * CELLS_PER_DEGREE;
 const WORDS_PER_ROW = Math.ceil(MASK_COLUMNS / 32);
 
 /** Which cells of 0.1 degree hold ocean at their centre: rows from the south, columns from 180 W, a bit each. */

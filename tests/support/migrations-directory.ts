@@ -1,0 +1,1 @@
+export const MIGRATIONS_DIRECTORY = "prisma/migrations";
