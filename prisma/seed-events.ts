@@ -1,37 +1,82 @@
 import { existsSync, readdirSync, readFileSync } from "node:fs";
-import { join } from "node:path";
+import { basename, join } from "node:path";
 import { z } from "zod";
-import type { EventStore } from "#lib/application/ports.ts";
+import type { EventStore, StoredEvent } from "#lib/application/ports.ts";
 import type { EventObservations } from "#lib/core/arrival/observations.ts";
+import { InputError } from "#lib/core/failures/input-error.ts";
+import type { InputIssue } from "#lib/core/failures/input-error.ts";
+import { Refusal } from "#lib/core/failures/refusal.ts";
 import { readEventFiles } from "#lib/records/event-files.ts";
 import type { TextFile } from "#lib/records/event-files.ts";
+import { decodeText } from "#lib/records/text.ts";
 
 const EventFile = z.strictObject({ title: z.string().min(1), note: z.string() });
 
-/** A scenario's folder: `stations.csv`, and a folder for each event with `event.json` and its readings and arrivals. */
-export interface Scenario {
-  readonly directory: string;
-  readonly savedEpochSeconds: number;
+export interface Intake {
+  readonly saved: readonly string[];
+  /** Why others were not, in a sentence each. */
+  readonly refused: readonly string[];
 }
 
-/** Saves all events of a scenario, in the order of their names, and gives their ids. */
-export async function seedEvents(store: EventStore, scenario: Scenario): Promise<string[]> {
-  const ids = readdirSync(scenario.directory, { withFileTypes: true })
-    .filter((entry) => entry.isDirectory() && existsSync(join(scenario.directory, entry.name, "event.json")))
+/**
+ * The events of a folder, in the order of their names: `stations.csv`, and a folder for each event, named by its id,
+ * with `event.json` (`{"title": ..., "note": ...}`) and `readings.csv`, `arrivals.csv` or both.
+ *
+ * @throws InputError with the problems of all their files.
+ */
+export function readEventFolder(directory: string): StoredEvent[] {
+  const issues: InputIssue[] = [];
+  const stations = textFile(directory, "stations.csv");
+  if (stations === null) throw problem(directory, "found no stations.csv; wanted one, and a folder for each event beside it");
+  const ids = readdirSync(directory, { withFileTypes: true })
+    .filter((entry) => entry.isDirectory() && existsSync(join(directory, entry.name, "event.json")))
     .map((entry) => entry.name)
     .sort();
-  for (const id of ids) {
-    const folder = join(scenario.directory, id);
-    const { title, note } = EventFile.parse(JSON.parse(readFileSync(join(folder, "event.json"), "utf8")));
-    const { value } = readEventFiles({
-      stations: textFile(scenario.directory, "stations.csv"),
-      readings: textFile(folder, "readings.csv"),
-      arrivals: textFile(folder, "arrivals.csv"),
-    });
-    const { savedEpochSeconds } = scenario;
-    await store.saveEvent({ id, title, note, actor: "demo", savedEpochSeconds, observations: withoutIdle(value) });
+  const events = ids.flatMap((id) => {
+    try {
+      return [readEvent(id, join(directory, id), stations)];
+    } catch (error) {
+      if (!(error instanceof InputError)) throw error;
+      issues.push(...error.issues);
+      return [];
+    }
+  });
+  if (issues.length > 0) throw new InputError(issues);
+  if (events.length === 0) throw problem(directory, "found no event; wanted a folder for each, with an event.json in it");
+  return events;
+}
+
+/** Saves events one by one. One that is known already, or clashes with what is, does not keep the others out. */
+export async function saveEvents(store: EventStore, events: readonly StoredEvent[], by: { actor: string; savedEpochSeconds: number }): Promise<Intake> {
+  const saved: string[] = [];
+  const refused: string[] = [];
+  for (const event of events) {
+    try {
+      await store.saveEvent({ ...event, ...by });
+      saved.push(event.id);
+    } catch (error) {
+      if (!(error instanceof Refusal)) throw error;
+      refused.push(`${event.id}: ${error.message}`);
+    }
   }
-  return ids;
+  return { saved, refused };
+}
+
+function readEvent(id: string, folder: string, stations: TextFile): StoredEvent {
+  const { title, note } = readEventFile(join(folder, "event.json"), id);
+  const { value } = readEventFiles({ stations, readings: textFile(folder, "readings.csv"), arrivals: textFile(folder, "arrivals.csv") });
+  if (value.readings.length + value.estimates.length === 0) {
+    throw problem(folder, "found neither readings.csv nor arrivals.csv; wanted one of them at least");
+  }
+  return { id, title, note, observations: withoutIdle(value) };
+}
+
+function readEventFile(path: string, id: string): z.infer<typeof EventFile> {
+  try {
+    return EventFile.parse(JSON.parse(readFileSync(path, "utf8")));
+  } catch {
+    throw problem(join(id, "event.json"), 'found something else; wanted {"title": "...", "note": "..."}, the title not empty');
+  }
 }
 
 /** Stations that have nothing to say of an event take no part in it. */
@@ -40,7 +85,14 @@ function withoutIdle(observations: EventObservations): EventObservations {
   return { ...observations, deployments: observations.deployments.filter(({ stationId }) => heard.has(stationId)) };
 }
 
-function textFile(folder: string, fileName: string): TextFile | null {
-  const path = join(folder, fileName);
-  return existsSync(path) ? { text: readFileSync(path, "utf8"), fileName } : null;
+/** Named by its folder as well where it is an event's, for there are many of one name. */
+function textFile(folder: string, name: string): TextFile | null {
+  const path = join(folder, name);
+  if (!existsSync(path)) return null;
+  const fileName = name === "stations.csv" ? name : join(basename(folder), name);
+  return { text: decodeText(readFileSync(path), fileName), fileName };
+}
+
+function problem(place: string, found: string): InputError {
+  return new InputError([{ code: "event-folder", path: place, message: `${place}: ${found}.` }]);
 }

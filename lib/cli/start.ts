@@ -16,6 +16,9 @@ const USAGE = `npm start -- --data DIR [--port N] [--host H]
   --host H     127.0.0.1 unless told otherwise: only this machine can reach it`;
 
 const OK = 200;
+/** Statuses that a program ends with when it was told to stop: 128 and the number of the signal. */
+const AFTER_SIGINT = 130;
+const AFTER_SIGTERM = 143;
 
 const packageRoot = fileURLToPath(new URL("../../", import.meta.url));
 
@@ -117,7 +120,8 @@ async function serve(call: StartCall): Promise<number> {
       answer(1);
     });
     server.once("exit", (code, signal) => {
-      answer(code ?? (signal === "SIGINT" || signal === "SIGTERM" ? 0 : 1));
+      const toldTo = signal === "SIGINT" || signal === "SIGTERM" || code === AFTER_SIGINT || code === AFTER_SIGTERM;
+      answer(toldTo ? 0 : (code ?? 1));
     });
   });
   for (const signal of ["SIGINT", "SIGTERM"] as const) process.on(signal, () => server.kill(signal));
