@@ -1,5 +1,3 @@
-import type { Position } from "#lib/core/units/position.ts";
-
 /**
  * Latitude and longitude in degrees, in the order in which the map library takes them. Longitudes run on past 180, so
  * that a line across the antimeridian has no jump. Pairs live in this room only; everything else says `Position`.
@@ -14,7 +12,3 @@ export type ChartPolygon = ChartLine[];
 
 /** Everything that is painted with one brush: one stroke of it shows no seam between its parts. */
 export type ChartArea = ChartPolygon[];
-
-export function chartPoint(position: Position): ChartPoint {
-  return [position.latitudeDegrees, position.longitudeDegrees];
-}

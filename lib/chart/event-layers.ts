@@ -7,10 +7,11 @@ import type { EventSolution, StationSolution } from "#lib/core/source/solution.t
 import type { ChartArea, ChartLine, ChartPoint } from "./chart-point.ts";
 import { pointInWindow, type ChartWindow } from "./chart-window.ts";
 import { areaCopies, lineCopies } from "./copies.ts";
+import { cutAtEdges } from "./cut-at-edges.ts";
 import { areaIntoWindow } from "./into-window.ts";
 import { regionShape } from "./region-shape.ts";
 import { bandPolygon, ringLine } from "./ring-shape.ts";
-import { sightLine, type SightLine } from "./sight-line.ts";
+import { sightLine } from "./sight-line.ts";
 
 export interface RingLayer {
   readonly stationId: string;
@@ -24,6 +25,14 @@ export interface RegionLayer {
   readonly outline: ChartLine[];
 }
 
+/** The way of the swell to one station, and where land stops it. */
+export interface SightLayer {
+  readonly stationId: string;
+  readonly open: ChartLine[];
+  readonly beyond: ChartLine[];
+  readonly blockedAt: ChartPoint | null;
+}
+
 /** One solution as the chart draws it: copies included where a shape may run over an edge of the window. */
 export interface EventLayers {
   readonly rings: readonly RingLayer[];
@@ -33,7 +42,7 @@ export interface EventLayers {
   readonly ruledOut: readonly { readonly reason: string; readonly point: ChartPoint }[];
   readonly source: ChartPoint | null;
   readonly bestInWater: ChartPoint | null;
-  readonly sightLines: readonly (SightLine & { readonly stationId: string })[];
+  readonly sightLines: readonly SightLayer[];
 }
 
 export function eventLayers(drawing: {
@@ -71,7 +80,7 @@ function ringLayers(drawing: { window: ChartWindow; solution: EventSolution; spr
     return [
       {
         stationId: station.id,
-        line: lineCopies([ringLine(window, { centre: station.position, radiusMetres: estimate.distanceMetres })]),
+        line: lineCopies(cutAtEdges(ringLine(window, { centre: station.position, radiusMetres: estimate.distanceMetres }))),
         band: areaCopies(bandInWindow(window, { station, radiusMetres: estimate.distanceMetres, sigmaMetres })),
       },
     ];
@@ -96,7 +105,7 @@ function regionLayers(answer: SourceAnswer | null): RegionLayer[] {
   const regions = [...(answer?.regions ?? [])].sort((a, b) => b.probability - a.probability);
   return regions.map(({ probability, geometry }) => {
     const { area, outline } = regionShape(geometry);
-    return { probability, area: areaCopies(area), outline: lineCopies(outline) };
+    return { probability, area: areaCopies(area), outline: lineCopies(outline.flatMap(cutAtEdges)) };
   });
 }
 
@@ -104,17 +113,19 @@ function sightLines(drawing: {
   window: ChartWindow;
   solution: EventSolution;
   sightTables: ReadonlyMap<string, SightTable>;
-}): EventLayers["sightLines"] {
+}): SightLayer[] {
   const source = drawing.solution.answer?.source;
   if (!source) return [];
   return drawing.solution.stations
     .filter((station) => outcomeEstimate(station.outcome) !== null)
-    .map((station) => ({
-      stationId: station.id,
-      ...sightLine(drawing.window, {
-        station: station.position,
-        source: source.position,
-        sight: drawing.sightTables.get(station.id) ?? null,
-      }),
-    }));
+    .map((station) => {
+      const sight = drawing.sightTables.get(station.id) ?? null;
+      const line = sightLine(drawing.window, { station: station.position, source: source.position, sight });
+      return {
+        stationId: station.id,
+        open: lineCopies(cutAtEdges(line.open)),
+        beyond: lineCopies(cutAtEdges(line.beyond)),
+        blockedAt: line.blockedAt,
+      };
+    });
 }

@@ -8,12 +8,12 @@ import { unbrokenLine } from "./unbroken-line.ts";
 /** One vertex every 100 km follows a geodesic to within a quarter of a kilometre. */
 const STEP_METRES = 100_000;
 
-export interface SightLine {
+interface SightLine {
   /** From the station as far as it sees. */
   readonly open: ChartLine;
   /** From the land that blocks it on to the source; empty where nothing does. */
   readonly beyond: ChartLine;
-  readonly blockedAt: { readonly point: ChartPoint; readonly position: Position; readonly distanceMetres: number } | null;
+  readonly blockedAt: ChartPoint | null;
 }
 
 /** The way of the swell between a station and a source, drawn outwards from the station, and where land stops it. */
@@ -31,11 +31,10 @@ export function sightLine(
   const whole = unbrokenLine(window, [...marks.filter((mark) => mark < seenMetres), seenMetres, ...marks.filter((mark) => mark > seenMetres)].map(at));
   const openVertices = marks.filter((mark) => mark < seenMetres).length + 1;
   const blocked = seenMetres < distanceMetres;
-  const block = at(seenMetres);
   return {
     open: whole.slice(0, openVertices),
     beyond: blocked ? whole.slice(openVertices - 1) : [],
-    blockedAt: blocked ? { point: pointInWindow(window, block), position: block, distanceMetres: seenMetres } : null,
+    blockedAt: blocked ? pointInWindow(window, at(seenMetres)) : null,
   };
 }
 

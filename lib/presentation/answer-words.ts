@@ -1,9 +1,11 @@
 import type { NumberedStation } from "#lib/core/arrival/numbered-stations.ts";
 import { outcomeEstimate } from "#lib/core/arrival/outcome-estimate.ts";
 import type { SourceAnswer } from "#lib/core/source/answer.ts";
+import type { EstimationSettings } from "#lib/core/source/settings.ts";
 import type { EventSolution } from "#lib/core/source/solution.ts";
-import { areaWords, distanceWords, type DistanceUnit } from "./distances.ts";
-import { percentWords, probabilityFigure } from "./figures.ts";
+import { areaWords, distanceWords, uncertainDistanceWords, type DistanceUnit } from "./distances.ts";
+import { percentWords, pValueWords } from "./figures.ts";
+import { loneRingSigmas } from "./lone-ring.ts";
 import { countWord, listWords, startingSentence } from "./numbers-in-words.ts";
 import { positionParts, positionWords } from "./positions.ts";
 import { plusMinusHours, uncertainMomentWords } from "./times.ts";
@@ -16,11 +18,14 @@ export interface AnswerWords {
   readonly sentence: string;
 }
 
-export function answerWords(said: {
-  solution: EventSolution;
-  stations: readonly NumberedStation[];
-  unit: DistanceUnit;
-}): AnswerWords {
+interface Said {
+  readonly solution: EventSolution;
+  readonly stations: readonly NumberedStation[];
+  readonly settings: EstimationSettings;
+  readonly unit: DistanceUnit;
+}
+
+export function answerWords(said: Said): AnswerWords {
   const { answer } = said.solution;
   if (answer === null) return tooFew(said.solution);
   switch (answer.outcome) {
@@ -44,16 +49,23 @@ function placed(answer: SourceAnswer): { large: string[]; time: string | null } 
   return { large: [latitude, longitude], time: `${moment} ${plusMinusHours(source.originSigmaSeconds)}` };
 }
 
-function locatedSentence(answer: SourceAnswer, said: { unit: DistanceUnit }): string {
+function locatedSentence(answer: SourceAnswer, said: Said): string {
   const asked = answer.stations.length;
   const agree = answer.stations.filter(({ belongs }) => belongs !== null && belongs >= 0.5).length;
-  const p = answer.fit === null ? "" : ` (p\u00a0${probabilityFigure(answer.fit.pValue)})`;
+  const p = answer.fit === null ? "" : ` (${pValueWords(answer.fit.pValue)})`;
   const all = asked === 2 ? "Both" : `All ${countWord(asked)}`;
   const who = agree === asked ? `${all} stations` : `${startingSentence(countWord(agree))} stations of ${countWord(asked)}`;
-  const stations = `${who} agree${p}.`;
+  const stations = `${who} agree${clockSentence(answer, said)}${p}.`;
   const widest = answer.regions.find(({ probability }) => probability === 0.95);
   const region = widest ? ` The 95\u202f% region covers ${areaWords(widest.areaSquareMetres, said.unit)}.` : "";
   return stations + region + landSentence(answer);
+}
+
+/** A station whose clock was set aside agrees in its distance alone. */
+function clockSentence(answer: SourceAnswer, said: Said): string {
+  const suspect = answer.stations.filter(({ clockOffset }) => clockOffset !== null).map(({ id }) => id);
+  const numbers = said.stations.filter(({ id }) => suspect.includes(id)).map(({ number }) => String(number));
+  return numbers.length === 0 ? "" : `, but for the clock of ${listWords(numbers)}`;
 }
 
 function severalWords(answer: SourceAnswer): { verdict: string; sentence: string } {
@@ -76,7 +88,7 @@ function landSentence(answer: SourceAnswer): string {
 }
 
 /** One ring, or several that are one and the same circle. */
-function ringOnly(said: { solution: EventSolution; stations: readonly NumberedStation[]; unit: DistanceUnit }): AnswerWords {
+function ringOnly(said: Said): AnswerWords {
   const heard = said.solution.stations.flatMap((station) => {
     const estimate = outcomeEstimate(station.outcome);
     return estimate === null ? [] : [{ station, estimate }];
@@ -84,16 +96,16 @@ function ringOnly(said: { solution: EventSolution; stations: readonly NumberedSt
   const [first] = heard;
   if (first === undefined) return tooFew(said.solution);
   const { station, estimate } = first;
-  const sigmaSeconds = Math.sqrt(estimate.covariance.originVariance);
+  const { distanceSigmaMetres, originSigmaSeconds } = loneRingSigmas({ estimate, settings: said.settings });
   const number = said.stations.find(({ id }) => id === station.id)?.number ?? "";
   const where = `the storm stood somewhere on the ring about ${number}\u00a0${station.name}`;
   return {
-    large: [distanceWords(estimate.distanceMetres, said.unit)],
-    time: `${uncertainMomentWords(estimate.originEpochSeconds, sigmaSeconds)} ${plusMinusHours(sigmaSeconds)}`,
+    large: [uncertainDistanceWords(estimate.distanceMetres, distanceSigmaMetres, said.unit)],
+    time: `${uncertainMomentWords(estimate.originEpochSeconds, originSigmaSeconds)} ${plusMinusHours(originSigmaSeconds)}`,
     verdict: "Distance only.",
     sentence:
       heard.length === 1
-        ? `One station gives a ring and a time, not a place: ${where}, in the part that it sees.`
+        ? `One station gives a ring and a time, not a place: ${where}, in the part that it sees. The error is wider than the band: one station cannot tell a growing storm from a far one.`
         : `The stations stand at one place, or at one another’s antipodes, so their rings are one circle: ${where}.`,
   };
 }

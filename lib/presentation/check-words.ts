@@ -23,7 +23,7 @@ function leavingOneOut(said: { answer: SourceAnswer; stations: readonly Numbered
   for (const { id, leaveOneOutShiftMetres: shiftMetres } of said.answer.stations) {
     if (shiftMetres !== null && (most === null || shiftMetres > most.shiftMetres)) most = { id, shiftMetres };
   }
-  if (most === null) return "not possible with so few stations";
+  if (most === null) return said.answer.stations.length < 3 ? "needs three stations" : "leaves no place to compare";
   return `moves it at most ${distanceWords(most.shiftMetres, said.unit)} (without ${numberOf(most.id, said.stations)})`;
 }
 

@@ -1,4 +1,4 @@
-import { figure, signedFigure, twoLeadingDigits } from "./figures.ts";
+import { figure, roundedToError, signedFigure, twoLeadingDigits } from "./figures.ts";
 
 /** The reader's unit of distance. Nautical mile: 1852 m, BIPM, The International System of Units, 8th edition, table 8. */
 export type DistanceUnit = "km" | "nmi";
@@ -14,7 +14,7 @@ export function distanceUnitName(unit: DistanceUnit): string {
   return NAMES[unit];
 }
 
-export function inUnit(metres: number, unit: DistanceUnit): number {
+function inUnit(metres: number, unit: DistanceUnit): number {
   return metres / METRES_IN[unit];
 }
 
@@ -30,6 +30,12 @@ export function signedDistanceFigure(metres: number, unit: DistanceUnit): string
 /** Figure and unit, for a sentence. */
 export function distanceWords(metres: number, unit: DistanceUnit): string {
   return `${distanceFigure(metres, unit)}\u00a0${unit}`;
+}
+
+/** A distance and its error (1 sigma): the error to two digits, the distance to where they end. */
+export function uncertainDistanceWords(metres: number, sigmaMetres: number, unit: DistanceUnit): string {
+  const { value, error } = roundedToError(inUnit(metres, unit), inUnit(sigmaMetres, unit));
+  return `${figure(value)} ±\u00a0${figure(error)}\u00a0${unit}`;
 }
 
 /** An area to two leading digits: regions are not known better. */

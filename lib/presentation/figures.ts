@@ -20,6 +20,12 @@ export function signedFigure(value: number, fractionDigits = 0): string {
   return value > 0 && Number(value.toFixed(fractionDigits)) !== 0 ? `+${plain}` : plain;
 }
 
+/** "p = 0.61", or "p > 0.99" where two digits would read as certain. */
+export function pValueWords(pValue: number): string {
+  const said = probabilityFigure(pValue);
+  return /^[<>]/.test(said) ? `p\u00a0${said.charAt(0)}\u00a0${said.slice(1)}` : `p\u00a0=\u00a0${said}`;
+}
+
 /** A probability with two digits; what is not quite certain never reads as 0 or 1. */
 export function probabilityFigure(probability: number): string {
   if (probability > 0 && probability < 0.005) return "<0.01";
@@ -33,6 +39,13 @@ export function percentWords(probability: number): string {
   if (percent > 0 && percent < 1) return `under 1${THIN_SPACE}%`;
   if (percent < 100 && percent > 99) return `over 99${THIN_SPACE}%`;
   return `${figure(percent)}${THIN_SPACE}%`;
+}
+
+/** A value above 1 without the digits that its error leaves open: both end at the error's second digit, or at the unit. */
+export function roundedToError(value: number, error: number): { value: number; error: number } {
+  if (!(error > 0) || !Number.isFinite(error)) return { value, error };
+  const step = Math.max(1, 10 ** (Math.floor(Math.log10(error)) - 1));
+  return { value: Math.round(value / step) * step, error: Math.round(error / step) * step };
 }
 
 /** Rounded to two leading digits, for areas and spans that are not known better than that. */

@@ -1,7 +1,9 @@
 import type { NumberedStation } from "#lib/core/arrival/numbered-stations.ts";
+import type { EstimationSettings } from "#lib/core/source/settings.ts";
 import type { EventSolution } from "#lib/core/source/solution.ts";
 import { answerWords } from "#lib/presentation/answer-words.ts";
 import type { DistanceUnit } from "#lib/presentation/distances.ts";
+import { listWords } from "#lib/presentation/numbers-in-words.ts";
 import styles from "./answer.module.css";
 
 /** The answer first: place and time large, then what was found in a sentence. */
@@ -10,13 +12,19 @@ export function Answer(props: {
   note: string;
   solution: EventSolution;
   stations: readonly NumberedStation[];
+  /** Ids of the stations that the reader has left out. */
+  without: readonly string[];
+  settings: EstimationSettings;
   unit: DistanceUnit;
+  /** Whether the figures still answer the choice of stations before this one. */
+  isWorking: boolean;
 }) {
   const words = answerWords(props);
+  const leftOut = props.stations.filter(({ id }) => props.without.includes(id));
   return (
     <section className={styles.answer} aria-label="Answer">
       <h1 className={styles.title}>{props.title}</h1>
-      <div role="status">
+      <div role="status" aria-busy={props.isWorking} className={styles.words}>
         <p className={styles.headline}>
           {words.large.map((part) => (
             <span key={part} className={styles.large}>
@@ -28,6 +36,9 @@ export function Answer(props: {
         <p className={styles.sentence}>
           <strong>{words.verdict}</strong> {words.sentence}
         </p>
+        {leftOut.length > 0 && (
+          <p className={styles.sentence}>Left out: {listWords(leftOut.map(({ number, name }) => `${number}\u00a0${name}`))}.</p>
+        )}
       </div>
       {props.note !== "" && <p className={styles.note}>{props.note}</p>}
     </section>

@@ -3,12 +3,11 @@ import { Pane, Polygon, Polyline } from "react-leaflet";
 import type { BaseMap } from "#lib/chart/base-map.ts";
 import type { ChartLine } from "#lib/chart/chart-point.ts";
 import { areaCopies, lineCopies } from "#lib/chart/copies.ts";
+import { EDGE_LATITUDE_DEGREES } from "#lib/chart/cut-at-edges.ts";
 import styles from "./chart.module.css";
 import { PANES } from "./panes.ts";
 
 const STEP_DEGREES = 30;
-/** Where the chart's own projection ends. */
-const EDGE_LATITUDE_DEGREES = 85;
 
 /** Natural Earth's land and coast, over a net of meridians and parallels. It never changes, so it is drawn once. */
 export const BaseMapLayers = memo(function BaseMapLayers({ baseMap, middle }: { baseMap: BaseMap | null; middle: number }) {

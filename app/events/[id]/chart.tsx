@@ -46,7 +46,7 @@ function DrawnChart(props: ChartProps & { layers: EventLayers }) {
       ref={nameTheChart}
       className={styles.chart ?? ""}
       bounds={opensOn}
-      boundsOptions={{ padding: [28, 28] }}
+      boundsOptions={{ paddingTopLeft: [28, 28], paddingBottomRight: [28, SCALE_BAR_PIXELS] }}
       maxBounds={[[-86, middle - 200], [86, middle + 200]]}
       maxBoundsViscosity={1}
       minZoom={1}
@@ -58,7 +58,7 @@ function DrawnChart(props: ChartProps & { layers: EventLayers }) {
       <ExactLines />
       <BaseMapLayers baseMap={props.baseMap} middle={middle} />
       <RingLayers layers={layers} overlap={props.overlap} view={view} />
-      <SourceLayers layers={layers} />
+      <SourceLayers layers={layers} showsSight={view.showsSight} />
       <StationMarks window={window} stations={stations} view={view} onFocus={props.onFocus} />
       <ZoomControl position="topleft" />
       <ScaleBar unit={view.unit} />
@@ -86,6 +86,9 @@ function extent(window: ChartWindow, stations: readonly NumberedStation[], layer
   const shown = places.map(([latitude, longitude]): ChartPoint => [Math.max(-78, Math.min(80, latitude)), longitude]);
   return latLngBounds(shown);
 }
+
+/** What the scale bar takes at the chart's foot. */
+const SCALE_BAR_PIXELS = 44;
 
 /** More places than this that the storm did not stand at need not all be seen at first. */
 const FEW = 4;

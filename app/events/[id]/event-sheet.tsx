@@ -35,15 +35,22 @@ export function EventSheet(props: EventSheetProps) {
   const worker = useEventWorker({ observations, settings, window, solution: props.solution });
   const { solve, findOverlap, drawn } = worker;
   const solution = drawn?.solution ?? props.solution;
+  const cannotSolve = drawn === null && worker.failure !== null;
 
   const change = useCallback(
     (part: Partial<EventView>) => {
       const next = { ...view, ...part };
+      const address = globalThis.location.pathname + queryFromView(next);
+      // Without the worker the server works the new choice out; figures of the old one must not stand under it.
+      if (part.without !== undefined && cannotSolve) {
+        globalThis.location.assign(address);
+        return;
+      }
       setView(next);
       if (part.without !== undefined) solve(part.without);
-      globalThis.history.replaceState(null, "", globalThis.location.pathname + queryFromView(next));
+      globalThis.history.replaceState(null, "", address);
     },
-    [view, solve],
+    [view, solve, cannotSolve],
   );
   const toggleFocus = useCallback((id: string) => { change({ focus: view.focus === id ? null : id }); }, [change, view.focus]);
   const toggleStation = useCallback(
@@ -57,7 +64,7 @@ export function EventSheet(props: EventSheetProps) {
     if (view.showsOverlap && drawn !== null) findOverlap(view.focus);
   }, [view.showsOverlap, view.focus, drawn, findOverlap]);
 
-  const said = { solution, stations, unit: view.unit };
+  const said = { solution, stations, settings, unit: view.unit };
   return (
     <div className={styles.sheet}>
       <section className={styles.chart} aria-label="Chart">
@@ -71,17 +78,17 @@ export function EventSheet(props: EventSheetProps) {
             view={view}
             onFocus={toggleFocus}
           />
-          <ChartState isDrawn={drawn !== null} failure={worker.failure} />
+          <ChartState isDrawn={drawn !== null} isWorking={worker.isWorking} failure={worker.failure} />
         </div>
         <ChartBar view={view} onChange={change} />
       </section>
-      <Answer title={props.title} note={props.note} {...said} />
-      <Evidence {...said} view={view} spread={settings.spread} onInclude={toggleStation} onFocus={toggleFocus} />
+      <Answer title={props.title} note={props.note} without={view.without} isWorking={worker.isWorking} {...said} />
+      <Evidence {...said} view={view} onInclude={toggleStation} onFocus={toggleFocus} />
     </div>
   );
 }
 
-function ChartState({ isDrawn, failure }: { isDrawn: boolean; failure: string | null }) {
+function ChartState({ isDrawn, isWorking, failure }: { isDrawn: boolean; isWorking: boolean; failure: string | null }) {
   if (failure !== null) {
     return (
       <p className={styles.state} role="alert">
@@ -91,9 +98,10 @@ function ChartState({ isDrawn, failure }: { isDrawn: boolean; failure: string | 
       </p>
     );
   }
-  return isDrawn ? null : (
-    <p className={styles.state} role="status">
-      Drawing the chart…
+  if (isDrawn && !isWorking) return null;
+  return (
+    <p className={`${styles.state ?? ""} ${isDrawn ? (styles.late ?? "") : ""}`} role="status">
+      {isDrawn ? "Working out this choice of stations…" : "Drawing the chart…"}
     </p>
   );
 }

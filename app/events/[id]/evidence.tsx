@@ -1,6 +1,6 @@
 import type { NumberedStation } from "#lib/core/arrival/numbered-stations.ts";
 import type { AnswerWarning } from "#lib/core/source/answer.ts";
-import type { SpreadSettings } from "#lib/core/source/settings.ts";
+import type { EstimationSettings } from "#lib/core/source/settings.ts";
 import type { EventSolution } from "#lib/core/source/solution.ts";
 import { checkWords } from "#lib/presentation/check-words.ts";
 import { areaWords, distanceWords, type DistanceUnit } from "#lib/presentation/distances.ts";
@@ -16,7 +16,7 @@ export function Evidence(props: {
   stations: readonly NumberedStation[];
   unit: DistanceUnit;
   view: EventView;
-  spread: SpreadSettings;
+  settings: EstimationSettings;
   onInclude: (id: string, included: boolean) => void;
   onFocus: (id: string) => void;
 }) {
@@ -24,7 +24,7 @@ export function Evidence(props: {
   const warnings = warningsToSay(props.solution);
   return (
     <section className={styles.evidence} aria-label="Evidence">
-      <StationTable {...props} />
+      <StationTable {...props} spread={props.settings.spread} />
       {answer !== null && <Checks {...props} answer={answer} />}
       {answer !== null && <Places answer={answer} />}
       {warnings.length > 0 && (

@@ -1,6 +1,6 @@
 import type { Metadata } from "next";
 import { notFound } from "next/navigation";
-import { cache } from "react";
+import { cache, Suspense } from "react";
 import { locateEvent } from "#lib/application/locate-event.ts";
 import type { StoredEvent } from "#lib/application/ports.ts";
 import { toEstimationSettings } from "#lib/contracts/estimation-settings.ts";
@@ -9,7 +9,8 @@ import { numberedStations } from "#lib/core/arrival/numbered-stations.ts";
 import { withoutStations } from "#lib/core/arrival/without-stations.ts";
 import { runningProgram } from "#lib/http/running-program.ts";
 import { EventSheet } from "./event-sheet.tsx";
-import { viewFromQuery } from "./view.ts";
+import { viewFromQuery, type EventView } from "./view.ts";
+import text from "../../page-text.module.css";
 
 interface EventAddress {
   readonly params: Promise<{ id: string }>;
@@ -31,15 +32,32 @@ export default async function EventPage({ params, searchParams }: EventAddress) 
   const event = await loadEvent((await params).id);
   if (event === null) notFound();
 
-  const { title, note, observations } = event;
   const view = viewFromQuery(
     toQuery(await searchParams),
-    numberedStations(observations).map(({ id }) => id),
+    numberedStations(event.observations).map(({ id }) => id),
   );
+  // What is known to exist is promised before it is worked out; what does not exist has been answered 404 above.
+  return (
+    <Suspense fallback={<Working />}>
+      <LocatedEvent event={event} view={view} />
+    </Suspense>
+  );
+}
+
+async function LocatedEvent({ event, view }: { event: StoredEvent; view: EventView }) {
+  const { title, note, observations } = event;
   const { host } = await runningProgram();
   const settings = DEFAULT_PUBLIC_SETTINGS;
   const { solution } = locateEvent({ observations: withoutStations(observations, view.without), settings, host });
   return <EventSheet {...{ title, note, observations, solution, view }} settings={toEstimationSettings(settings)} />;
+}
+
+function Working() {
+  return (
+    <div className={text.page} role="status">
+      <p className={text.lead}>Working out where the storm was…</p>
+    </div>
+  );
 }
 
 function toQuery(searchParams: Record<string, string | string[] | undefined>): URLSearchParams {

@@ -2,7 +2,6 @@ import { Fragment } from "react";
 import { Pane, Polygon, Polyline } from "react-leaflet";
 import type { ChartArea } from "#lib/chart/chart-point.ts";
 import type { EventLayers, RingLayer } from "#lib/chart/event-layers.ts";
-import { lineCopies } from "#lib/chart/copies.ts";
 import styles from "./chart.module.css";
 import { PANES } from "./panes.ts";
 import type { EventView } from "./view.ts";
@@ -44,9 +43,9 @@ export function RingLayers(props: { layers: EventLayers; overlap: readonly Chart
         {view.showsSight &&
           layers.sightLines.map(({ stationId, open, beyond }) => (
             <Fragment key={stationId}>
-              <Polyline positions={lineCopies([open])} className={styles.sight} interactive={false} smoothFactor={0} />
+              <Polyline positions={open} className={styles.sight} interactive={false} smoothFactor={0} />
               {beyond.length > 0 && (
-                <Polyline positions={lineCopies([beyond])} className={styles.blockedSight} interactive={false} smoothFactor={0} />
+                <Polyline positions={beyond} className={styles.blockedSight} interactive={false} smoothFactor={0} />
               )}
             </Fragment>
           ))}

@@ -8,7 +8,7 @@ import { ruledOutMark, sourceMark } from "./marks.ts";
 import { PANES } from "./panes.ts";
 
 /** Where the storm may have been: regions, possible sources, crossings, and the places that were ruled out. */
-export function SourceLayers({ layers }: { layers: EventLayers }) {
+export function SourceLayers({ layers, showsSight }: { layers: EventLayers; showsSight: boolean }) {
   const several = layers.possibleSources.length > 1;
   return (
     <>
@@ -39,8 +39,8 @@ export function SourceLayers({ layers }: { layers: EventLayers }) {
           layers.possibleSources.map(({ probability, point }, index) => (
             <PossibleSource key={sourceMark(index)} at={point} text={`${sourceMark(index)} ${percentWords(probability)}`} />
           ))}
-        {layers.sightLines.map(({ stationId, blockedAt }) =>
-          blockedAt === null ? null : <Letter key={`block ${stationId}`} at={blockedAt.point} text="|" className={styles.block} />,
+        {showsSight && layers.sightLines.map(({ stationId, blockedAt }) =>
+          blockedAt === null ? null : <Letter key={`block ${stationId}`} at={blockedAt} text="|" className={styles.block} />,
         )}
       </Pane>
     </>

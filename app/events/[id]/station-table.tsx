@@ -31,9 +31,8 @@ export function StationTable(props: {
           <th scope="col" className={styles.number}><span className="for-screen-readers">Number</span></th>
           <th scope="col" className={styles.name}>station</th>
           <th scope="col">ring, <abbr title={unitName}>{unit}</abbr></th>
-          <th scope="col"><abbr title={`${unitName}, ring minus answer`}>{unit}</abbr></th>
-          <th scope="col"><abbr title="hours, ring minus answer">h</abbr></th>
-          <td className={styles.bar} />
+          <th scope="col">residual, <abbr title={unitName}>{unit}</abbr></th>
+          <th scope="col"><span className="for-screen-readers">residual, </span><abbr title="hours">h</abbr></th>
           <th scope="col">belongs</th>
         </tr>
       </thead>
@@ -68,12 +67,11 @@ function Row(props: {
       <td className={styles.number}>{number}</td>
       <th scope="row" className={styles.name}>
         <button type="button" className={styles.focus} aria-pressed={isInFocus} onClick={() => { props.onFocus(id); }}>
-          {name}
+          {name} <span className={styles.id}>{id}{row.sentIn && ", estimate"}</span>
         </button>
-        <span className={styles.soft}> {id}{row.sentIn && ", estimate"}</span>
       </th>
-      {row.refusal !== null && <td colSpan={5} className={styles.words}>{row.refusal}</td>}
-      {!row.included && <td colSpan={5} className={styles.words}>left out</td>}
+      {row.refusal !== null && <td colSpan={4} className={styles.words}>{row.refusal}</td>}
+      {!row.included && <td colSpan={4} className={styles.words}>left out</td>}
       {row.included && row.refusal === null && <Figures row={row} />}
     </tr>
   );
@@ -83,11 +81,13 @@ function Figures({ row }: { row: StationRow }) {
   return (
     <>
       <td>
-        {row.ring} <span className={styles.soft}>{row.ringSigma}</span>
+        {row.ring} <span className={styles.sigma}>{row.ringSigma}</span>
       </td>
-      <td>{row.residualDistance}</td>
+      <td>
+        {row.residualInSigmas !== null && <ResidualBar inSigmas={row.residualInSigmas} />}
+        <span className={styles.figure}>{row.residualDistance}</span>
+      </td>
       <td>{row.residualHours}</td>
-      <td className={styles.bar}>{row.residualInSigmas !== null && <ResidualBar inSigmas={row.residualInSigmas} />}</td>
       <td>{row.belongs}</td>
     </>
   );
@@ -97,7 +97,7 @@ function Figures({ row }: { row: StationRow }) {
 function ResidualBar({ inSigmas }: { inSigmas: number }) {
   const end = Math.max(-2, Math.min(2, inSigmas)) * 12;
   return (
-    <svg viewBox="-25 -8 50 16" width="50" height="16" aria-hidden="true">
+    <svg className={styles.bar} viewBox="-25 -8 50 16" width="44" height="14" aria-hidden="true">
       <rect className={styles.barFill} x={Math.min(0, end)} y="-3" width={Math.abs(end)} height="6" />
       <path className={styles.barAxis} d="M0 -7V7" />
     </svg>

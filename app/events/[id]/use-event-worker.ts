@@ -17,6 +17,8 @@ export interface EventWorker {
   readonly drawn: Drawn | null;
   readonly overlap: readonly ChartArea[];
   readonly failure: string | null;
+  /** Whether a question is on its way, and what is shown still answers the one before. */
+  readonly isWorking: boolean;
   readonly solve: (without: readonly string[]) => void;
   readonly findOverlap: (focus: string | null) => void;
 }
@@ -30,6 +32,7 @@ export function useEventWorker(opening: Omit<Extract<WorkerRequest, { kind: "ope
   const [drawn, setDrawn] = useState<Drawn | null>(null);
   const [overlap, setOverlap] = useState<readonly ChartArea[]>([]);
   const [failure, setFailure] = useState<string | null>(null);
+  const [asked, setAsked] = useState(0);
 
   useEffect(() => {
     const started = new Worker(new URL("./event-worker.ts", import.meta.url), { type: "module" });
@@ -55,6 +58,7 @@ export function useEventWorker(opening: Omit<Extract<WorkerRequest, { kind: "ope
 
   const solve = useCallback((without: readonly string[]) => {
     lastAsk.current.solve += 1;
+    setAsked(lastAsk.current.solve);
     post(worker.current, { kind: "solve", ask: lastAsk.current.solve, without });
   }, []);
   const findOverlap = useCallback((focus: string | null) => {
@@ -62,7 +66,8 @@ export function useEventWorker(opening: Omit<Extract<WorkerRequest, { kind: "ope
     post(worker.current, { kind: "overlap", ask: lastAsk.current.overlap, focus });
   }, []);
 
-  return { baseMap, drawn, overlap, failure, solve, findOverlap };
+  const isWorking = failure === null && asked !== (drawn?.ask ?? 0);
+  return { baseMap, drawn, overlap, failure, isWorking, solve, findOverlap };
 }
 
 function post(worker: Worker | null, request: WorkerRequest): void {
