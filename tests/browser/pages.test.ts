@@ -1,0 +1,105 @@
+import { readFileSync } from "node:fs";
+import { createRequire } from "node:module";
+import type { Page } from "playwright-core";
+import { describe, expect, test } from "vitest";
+import { demoBrowser, DESK, PHONE } from "#tests/support/demo-browser.ts";
+import { DEMO_EVENTS } from "#tests/support/simulator/demo-events.ts";
+
+const { open, openEvent, address, expectFault } = demoBrowser();
+
+const AXE = readFileSync(createRequire(import.meta.url).resolve("axe-core/axe.min.js"), "utf8");
+
+/** One sentence for each thing that axe finds against the page, at every rule it has. */
+async function violations(page: Page): Promise<string[]> {
+  await page.evaluate(AXE);
+  return page.evaluate(async () => {
+    const { axe } = globalThis as unknown as { axe: { run: () => Promise<{ violations: { id: string; nodes: { html: string }[] }[] }> } };
+    const found = await axe.run();
+    return found.violations.flatMap(({ id, nodes }) => nodes.map(({ html }) => `${id}: ${html}`));
+  });
+}
+
+/** Lightness of a colour as the page paints it, from 0 to 1 (WCAG 2.2, relative luminance). */
+function luminance(colour: string): number {
+  const [red = NaN, green = NaN, blue = NaN] = (colour.match(/[\d.]+/g) ?? []).map((part) => {
+    const share = Number(part) / 255;
+    return share <= 0.04045 ? share / 12.92 : ((share + 0.055) / 1.055) ** 2.4;
+  });
+  return 0.2126 * red + 0.7152 * green + 0.0722 * blue;
+}
+
+describe("the list of events", () => {
+  test("names every event, latest first, and leads to each", async () => {
+    const page = await open("");
+    const titles = await page.getByRole("main").getByRole("link").allInnerTexts();
+    const latestFirst = [...DEMO_EVENTS].sort((a, b) => b.originEpochSeconds - a.originEpochSeconds);
+    expect(titles).toStrictEqual(latestFirst.map(({ title }) => title));
+
+    await page.getByRole("link", { name: "Far southern storm" }).click();
+    await page.locator("[data-drawn] .leaflet-rings-pane path").first().waitFor();
+    expect(await page.title()).toBe("Far southern storm · Offing");
+    expect(new URL(page.url()).pathname).toBe("/events/albatross");
+  });
+});
+
+describe("an address that leads nowhere", () => {
+  test.each(["events/nope", "events/%3Cscript%3E", "nowhere"])("%s is answered 404 with a way back", async (path) => {
+    expectFault(/status of 404/);
+    expect((await fetch(address(path))).status).toBe(404);
+    const page = await open(path);
+    expect(await page.getByRole("heading", { level: 1 }).innerText()).toBe("Nothing here");
+    await page.getByRole("link", { name: "All events" }).click();
+    await page.waitForURL(address(""));
+  });
+});
+
+describe("on a phone, and on the narrowest screen that WCAG asks for (1.4.10)", () => {
+  test.each(["", ...DEMO_EVENTS.map(({ id }) => `events/${id}`)])("nothing runs over the side of /%s", async (path) => {
+    const page = await open(path, { viewport: PHONE });
+    if (path !== "") await page.locator("[data-drawn]").waitFor();
+    for (const viewport of [PHONE, { width: 320, height: 640 }]) {
+      await page.setViewportSize(viewport);
+      expect(await overTheSide(page), `${viewport.width} px`).toStrictEqual({ pixels: 0, texts: [] });
+    }
+  });
+});
+
+/** How far the page can be scrolled sideways, and the texts outside the chart that are cut by the screen's edge. */
+function overTheSide(page: Page): Promise<{ pixels: number; texts: (string | null)[] }> {
+  return page.evaluate(() => {
+    const texts = [...document.querySelectorAll("main p, main h1, main h2, main td, main th, main li, main label, main dd, main button, main summary")];
+    const shown = texts.filter((element) => element.closest(".leaflet-container, .for-screen-readers, details:not([open]) ul") === null && element.getClientRects().length > 0);
+    const cut = shown.filter((element) => {
+      const { left, right } = element.getBoundingClientRect();
+      return right > innerWidth + 0.5 || left < -0.5;
+    });
+    return { pixels: document.documentElement.scrollWidth - document.documentElement.clientWidth, texts: cut.map(({ textContent }) => textContent) };
+  });
+}
+
+describe.each(["light", "dark"] as const)("in the %s", (colorScheme) => {
+  test("ink stands out from the paper, and the sea and the land from each other", async () => {
+    const page = await openEvent("petrel", { colorScheme });
+    const [paper, ink, land, sea] = await page.evaluate(() => {
+      const style = (selector: string) => getComputedStyle(document.querySelector(selector) ?? document.body);
+      return [style("html").backgroundColor, style("html").color, style(".leaflet-land-pane path").fill, style(".leaflet-container").backgroundColor];
+    });
+    const [onPaper, inInk] = [luminance(paper), luminance(ink)];
+    expect(onPaper > inInk).toBe(colorScheme === "light");
+    expect((Math.max(onPaper, inInk) + 0.05) / (Math.min(onPaper, inInk) + 0.05)).toBeGreaterThan(7);
+    expect(land).not.toBe(sea);
+  });
+
+  test.each([
+    ["the list", "", DESK],
+    ["a located event", "events/gannet?focus=umb&overlap=yes&without=red", DESK],
+    ["two possible sources, on a phone", "events/tern", PHONE],
+    ["one station", "events/fulmar", DESK],
+  ])("axe finds nothing against %s", async (_, path, viewport) => {
+    const page = await open(path, { colorScheme, viewport });
+    if (path !== "") await page.locator("[data-drawn] .leaflet-rings-pane path").first().waitFor();
+    const key = page.getByText("Key", { exact: true });
+    if ((await key.count()) > 0) await key.click();
+    expect(await violations(page)).toStrictEqual([]);
+  });
+});
