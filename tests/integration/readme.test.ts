@@ -1,0 +1,29 @@
+import { readFileSync } from "node:fs";
+import { join } from "node:path";
+import { expect, test } from "vitest";
+import { DEFAULT_PUBLIC_SETTINGS } from "#lib/contracts/settings.ts";
+import { runOffing } from "#tests/support/run-offing.ts";
+
+const README = readFileSync("README.md", "utf8");
+const CALL = /```sh\nnpm run --silent offing -- (.+)\n```\n\n```text\n([^`]*)```/g;
+
+test("the worked calls of README.md print what it says they print", () => {
+  const calls = [...README.matchAll(CALL)].map(([, args = "", printed]) => ({ args: args.split(" "), printed }));
+  expect(calls.map(({ args }) => args[0])).toStrictEqual(["fit", "locate"]);
+  for (const { args, printed } of calls) {
+    const run = runOffing({ args: args.map((word) => (word.startsWith("fixtures/") ? join(process.cwd(), word) : word)) });
+    expect(run.out).toBe(printed);
+  }
+});
+
+test("README.md names every script that a reader is sent to, and every setting", () => {
+  const { scripts } = JSON.parse(readFileSync("package.json", "utf8")) as { scripts: Record<string, string> };
+  const sentTo = [...README.matchAll(/npm (?:run )?(?:--silent )?(demo|test|start|build|intake|bench|offing)\b/g)].map(([, name = ""]) => name);
+  expect(new Set(sentTo)).toStrictEqual(new Set(["demo", "test", "start", "build", "intake", "bench", "offing"]));
+  for (const name of sentTo) expect(scripts).toHaveProperty(name);
+  const settings = Object.entries(DEFAULT_PUBLIC_SETTINGS).flatMap(([key, value]) =>
+    typeof value === "object" ? Object.keys(value).map((inner) => `\`${key}.${inner}\``) : [`\`${key}\``],
+  );
+  expect(settings).toHaveLength(13);
+  for (const name of settings) expect(README).toContain(name);
+});
