@@ -36,6 +36,7 @@ function digestOf(packageRoot) {
 
 /** Whether the one file could be made. It appears whole, whoever else is making it at the same time. */
 async function joined({ packageRoot, file }) {
+  const { buildSync } = await import("esbuild");
   const unfinished = `${file}.${process.pid}`;
   try {
     mkdirSync(dirname(file), { recursive: true });
@@ -45,7 +46,6 @@ async function joined({ packageRoot, file }) {
     return false;
   }
   try {
-    const { buildSync } = await import("esbuild");
     buildSync({
       ...{ entryPoints: [join(packageRoot, ENTRY)], outfile: unfinished, allowOverwrite: true, absWorkingDir: packageRoot },
       ...{ bundle: true, platform: "node", format: "cjs", target: "node20", logLevel: "silent", legalComments: "none" },

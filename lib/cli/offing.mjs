@@ -4,5 +4,11 @@ import { fileURLToPath } from "node:url";
 import { loadCommand } from "./load-command.mjs";
 
 const packageRoot = fileURLToPath(new URL("../../", import.meta.url));
-const { main } = await loadCommand(packageRoot);
-main({ packageRoot });
+try {
+  const { main } = await loadCommand(packageRoot);
+  main({ packageRoot });
+} catch (error) {
+  if (error.code !== "ERR_MODULE_NOT_FOUND") throw error;
+  console.error("The packages that the command leans on are not installed. First: npm ci");
+  process.exitCode = 1;
+}
