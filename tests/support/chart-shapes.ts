@@ -1,7 +1,7 @@
 import type { ChartArea, ChartLine } from "#lib/chart/chart-point.ts";
 import type { Position } from "#lib/core/units/position.ts";
 
-/** Radius of the sphere of the same area as WGS84 (m), and its first eccentricity squared: Moritz 2000, GRS80/WGS84. */
+/** Radius of the sphere of the same area as WGS84 (m), and its first eccentricity squared; from memory. */
 const AUTHALIC_RADIUS_METRES = 6_371_007.181;
 const ECCENTRICITY_SQUARED = 0.006_694_379_990_141;
 
@@ -44,7 +44,7 @@ function lineIntegral(line: ChartLine): number {
   return sum;
 }
 
-/** Snyder 1987, Map projections: a working manual, equations 3-11 and 3-12. */
+/** Snyder 1987, Map projections: a working manual, equations 3-11 and 3-12, from memory. */
 function sinAuthalic(latitudeDegrees: number): number {
   const q = snyderQ(Math.sin((latitudeDegrees * Math.PI) / 180));
   return q / snyderQ(1);

@@ -25,7 +25,7 @@ interface Pixel {
 /**
  * Finds the chart's scale from two stations whose numbers stand on it (`known`, far apart), by the spherical Mercator
  * projection: x runs with longitude, y with ln tan(45 degrees + latitude / 2). Snyder 1987, Map projections: a working
- * manual, equations 7-1 and 7-2.
+ * manual, equations 7-1 and 7-2, from memory.
  */
 export async function readChart(page: Page, known: readonly { name: string; position: Position }[]): Promise<DrawnChart> {
   // The map glides to its place.
