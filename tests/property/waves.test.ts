@@ -76,6 +76,18 @@ describe("slope and distance", () => {
   });
 });
 
+describe("the way over deep water", () => {
+  it("takes no time where there is none, and in proportion to its length", () => {
+    expect(deepWaterTravelSeconds({ frequencyHz: 0.05, distanceMetres: 0, gravity })).toBe(0);
+    fc.assert(
+      fc.property(frequencies, fc.double({ min: 1e-3, max: 2e7, noNaN: true }), (frequencyHz, distanceMetres) => {
+        const expected = (4 * Math.PI * frequencyHz * distanceMetres) / gravity;
+        expectWithin(deepWaterTravelSeconds({ frequencyHz, distanceMetres, gravity }), expected, rounding);
+      }),
+    );
+  });
+});
+
 describe("the delay over a shelf", () => {
   it("is nothing over deep water or without legs", () => {
     expect(shelfDelaySeconds({ frequencyHz: 0.06, legs: [], gravity })).toBe(0);

@@ -114,6 +114,8 @@ describe("the line through points with errors in both coordinates", () => {
     const line = yorkLine({ x: [0.05, 0.05, 0.05], y: [1, 2, 3], xSigma: [0, 0, 0], ySigma: [1, 1, 1] });
     const nothing = { converged: false, slope: NaN, intercept: NaN, slopeVariance: NaN };
     expect(line).toMatchObject(nothing);
+    const barely = yorkLine({ x: [0.05, 0.05 + 1e-11], y: [1, 2], xSigma: [0, 0], ySigma: [1, 1] });
+    expectWithin(barely.slope, 1e11, ratio(1e-4, "the frequencies' own rounding"));
     const rounded = yorkLine({ x: [0.3, 0.1 + 0.2], y: [1, 2], xSigma: [0, 0], ySigma: [1, 1] });
     expect(rounded).toMatchObject(nothing);
     const weightless = { x: [0.05, 0.05, 0.06], y: [1, 2, 3], xSigma: [0, 0, 0], ySigma: [1, 1, 1], weights: [1, 1, 0] };
@@ -123,6 +125,20 @@ describe("the line through points with errors in both coordinates", () => {
   it("fits a level line", () => {
     const line = yorkLine({ x: [1, 2, 3], y: [4, 4, 4], xSigma: [1, 1, 1], ySigma: [1, 1, 1] });
     expect(line).toMatchObject({ converged: true, slope: 0, intercept: 4, chiSquare: 0 });
+  });
+
+  it("settles on a line that is level but for rounding", () => {
+    fc.assert(
+      fc.property(fc.array(fc.double({ min: 0.1, max: 1, noNaN: true }), { minLength: 2, maxLength: 8 }), (steps) => {
+        let reach = 0;
+        const right = steps.map((step) => [(reach += step), step] as const);
+        const points = [...right.map(([x, y]) => [-x, y] as const), ...right]; // its own mirror image
+        const ones = points.map(() => 1);
+        const line = yorkLine({ x: points.map(([x]) => x), y: points.map(([, y]) => y), xSigma: ones, ySigma: ones });
+        expect(line.converged).toBe(true);
+        expectWithin(line.slope, 0, { absolute: 1e-12, unit: "(no unit)", because: "rounding" });
+      }),
+    );
   });
 
   it("refuses one point, a missing standard deviation and columns of unlike length", () => {

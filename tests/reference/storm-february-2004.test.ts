@@ -1,7 +1,9 @@
 import { describe, expect, it } from "vitest";
 import { z } from "zod";
 import type { StationReading } from "#lib/core/arrival/observations.ts";
+import { buildSightTable } from "#lib/core/geodesy/build-sight-table.ts";
 import { buildLandMask } from "#lib/core/geodesy/land-mask.ts";
+import { visibleFraction } from "#lib/core/geodesy/sight-table.ts";
 import { planSubsets } from "#lib/core/source/conditioned.ts";
 import { linearFit, placeColumns } from "#lib/core/source/linear-fit.ts";
 import { networkOf } from "#lib/core/source/network.ts";
@@ -76,6 +78,17 @@ describe("the storm of February 2004, placed from its arrivals", () => {
     }
     const together = modes.reduce((sum, { probability }) => sum + probability, 0);
     expectWithin(together, 1, { absolute: 1e-9, unit: "(probability)", because: "each cell goes to one crossing" });
+  });
+});
+
+describe("the ways of the storm of February 2004", () => {
+  it("cross land on the way to Port Moresby alone", () => {
+    const open = receivers.map(({ id, position }) => {
+      const { distanceMetres, headsTowardDegrees } = legBetween(position, storm);
+      const table = buildSightTable({ station: position, land });
+      return [id, visibleFraction({ table, bearingDegrees: headsTowardDegrees, distanceMetres, discRadiusMetres: 150_000 }) > 0.5];
+    });
+    expect(Object.fromEntries(open)).toEqual({ berkeley: true, "port-moresby": false, christmas: true });
   });
 });
 
