@@ -2,10 +2,10 @@ import * as z from "zod/mini";
 import { InputError } from "#lib/core/failures/input-error.ts";
 import type { InputIssue } from "#lib/core/failures/input-error.ts";
 
-const number = (range: { above?: number; from?: number; to: number }) =>
+const number = (range: { above?: number; from?: number; to?: number; below?: number }) =>
   z.number().check(
     range.above === undefined ? z.gte(range.from ?? 0) : z.gt(range.above),
-    z.lte(range.to),
+    range.below === undefined ? z.lte(range.to ?? Infinity) : z.lt(range.below),
   );
 
 /**
@@ -23,7 +23,8 @@ const settingsShape = z.strictObject({
     tiltHours: number({ from: 0, to: 240 }),
     scaleFraction: number({ from: 0, to: 0.5 }),
   }),
-  belongPrior: number({ above: 0, to: 1 }),
+  // Nobody is certain before looking: at 1 one stray station would leave no answer at all.
+  belongPrior: number({ above: 0, below: 1 }),
   sight: z.boolean(),
   timed: z.strictObject({
     durationHours: number({ from: 0, to: 240 }),
@@ -94,7 +95,7 @@ function issueOf(issue: z.core.$ZodIssue, overrides: unknown, sourceName: string
 
 function wantedOf(issue: z.core.$ZodIssue): string {
   if (issue.code === "too_small") return `a number ${issue.inclusive === true ? "of at least" : "above"} ${issue.minimum}`;
-  if (issue.code === "too_big") return `a number of at most ${issue.maximum}`;
+  if (issue.code === "too_big") return `a number ${issue.inclusive === true ? "of at most" : "below"} ${issue.maximum}`;
   if (issue.code !== "invalid_type") return "a value that this setting takes";
   return { number: "a number", boolean: "true or false", object: "an object of settings" }[String(issue.expected)] ?? issue.expected;
 }

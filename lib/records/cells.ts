@@ -13,9 +13,22 @@ export interface CellPlace {
 }
 
 export interface NumberWanted {
-  /** To follow the word "wanted", e.g. "a number of seconds above zero". */
+  /** To follow the word "wanted", e.g. "a number of metres above zero". */
   readonly wanted: string;
   readonly accepts: (value: number) => boolean;
+}
+
+interface Range {
+  readonly least: number;
+  readonly most: number;
+}
+
+export function inRange(unit: string, { least, most }: Range): NumberWanted {
+  return { wanted: `a number of ${unit} from ${least} to ${most}`, accepts: (value) => value >= least && value <= most };
+}
+
+export function zeroOrInRange(unit: string, { least, most }: Range): NumberWanted {
+  return { wanted: `a number of ${unit}, 0 or from ${least} to ${most}`, accepts: (value) => value === 0 || (value >= least && value <= most) };
 }
 
 const DECIMAL = /^[+-]?(?:\d+\.?\d*|\.\d+)(?:[eE][+-]?\d+)?$/;

@@ -1,4 +1,4 @@
-import { readNumber } from "./cells.ts";
+import { inRange, readNumber, zeroOrInRange } from "./cells.ts";
 import type { CellPlace } from "./cells.ts";
 
 /** Periods are written to tenths of a second and frequencies to thousandths of a hertz: rounding alone may part them by this. */
@@ -6,10 +6,14 @@ const PERIOD_AGREEMENT_FRACTION = 0.02;
 /** Errors are written to one or two digits. */
 const SIGMA_AGREEMENT_FRACTION = 0.2;
 
-const SECONDS = { wanted: "a number of seconds above zero", accepts: (value: number) => value > 0 };
-const HERTZ = { wanted: "a number of hertz above zero", accepts: (value: number) => value > 0 };
-const SECONDS_OR_ZERO = { wanted: "a number of seconds, zero or more", accepts: (value: number) => value >= 0 };
-const HERTZ_OR_ZERO = { wanted: "a number of hertz, zero or more", accepts: (value: number) => value >= 0 };
+/** Wide of every wave that a station of any kind hears; what lies outside is a slip of unit or of the decimal point. */
+const PERIOD_SECONDS = { least: 0.5, most: 1000 };
+const FREQUENCY_HZ = { least: 0.001, most: 2 };
+
+const SECONDS = inRange("seconds", PERIOD_SECONDS);
+const HERTZ = inRange("hertz", FREQUENCY_HZ);
+const SECONDS_OR_ZERO = zeroOrInRange("seconds", { least: 1e-6, most: PERIOD_SECONDS.most });
+const HERTZ_OR_ZERO = zeroOrInRange("hertz", { least: 1e-9, most: FREQUENCY_HZ.most });
 
 /**
  * A row's frequency and its standard deviation, from `frequency_hz` or `period_s` and `frequency_sigma_hz` or
@@ -60,6 +64,6 @@ function reportIfEmpty(cell: (column: string) => CellPlace): void {
   const { table, row, problems } = cell("period_s");
   const columns = ["period_s", "frequency_hz"].filter((name) => table.columns.has(name));
   if (columns.some((name) => row.cells[table.columns.get(name) ?? -1] !== "")) return;
-  const wanted = columns.length === 2 ? "a period or a frequency above zero" : columns[0] === "period_s" ? SECONDS.wanted : HERTZ.wanted;
+  const wanted = columns.length === 2 ? "a period or a frequency" : columns[0] === "period_s" ? SECONDS.wanted : HERTZ.wanted;
   problems.add({ code: "empty-cell", row: row.row, column: columns.join(" or "), found: "", wanted });
 }

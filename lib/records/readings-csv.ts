@@ -1,6 +1,6 @@
 import type { StationReading } from "#lib/core/arrival/observations.ts";
 import type { Bearing, Reading } from "#lib/core/arrival/reading.ts";
-import { readChoice, readNumber, readText, readTime } from "./cells.ts";
+import { readChoice, readNumber, readText, readTime, zeroOrInRange } from "./cells.ts";
 import type { CellPlace } from "./cells.ts";
 import { readCsvTable } from "./csv-table.ts";
 import { distinctRows } from "./distinct-rows.ts";
@@ -10,6 +10,9 @@ import { readFrequency } from "./reading-frequency.ts";
 const OPTIONAL_COLUMNS = [
   "period_s", "frequency_hz", "period_sigma_s", "frequency_sigma_hz", "time_sigma_s", "kind", "bearing_deg", "bearing_sigma_deg",
 ];
+
+/** From a millisecond to thirty days: what lies outside is no error of a time. */
+const TIME_SIGMA = zeroOrInRange("seconds", { least: 0.001, most: 30 * 86_400 });
 
 interface DefaultValue {
   readonly value: number;
@@ -71,7 +74,7 @@ function readReading(cells: RowCells): Reading | null {
   const arrivalEpochSeconds = readTime(cell("time", true));
   const kind = readChoice(cell("kind"), ["ridge", "timed"]) ?? "ridge";
   const frequency = readFrequency({ cell });
-  const timeSigma = readNumber(cell("time_sigma_s"), { wanted: "a number of seconds, zero or more", accepts: (value) => value >= 0 });
+  const timeSigma = readNumber(cell("time_sigma_s"), TIME_SIGMA);
   const bearing = readBearing(cells);
   if (arrivalEpochSeconds === null || frequency === null) return null;
   const { frequencyHz } = frequency;

@@ -24,8 +24,14 @@ function fit(readings: string) {
 
 describe("wrong input ends with status 2, nothing on standard output, and a line for each problem", () => {
   it.each([
-    ["NaN", csv("station,time,period_s", ["WEST,2031-02-11T00:00Z,18", "WEST,2031-02-11T06:00Z,NaN"]), [/^r\.csv, row 3, column period_s: found "NaN"; wanted a number of seconds above zero\.$/]],
+    ["NaN", csv("station,time,period_s", ["WEST,2031-02-11T00:00Z,18", "WEST,2031-02-11T06:00Z,NaN"]), [/^r\.csv, row 3, column period_s: found "NaN"; wanted a number of seconds from 0\.5 to 1000\.$/]],
     ["a local time without an offset", csv("station,time,period_s", ["WEST,2031-02-11T00:00,18"]), [/^r\.csv, row 2, column time: found "2031-02-11T00:00"; wanted a time that ends in Z or an offset/]],
+    ["periods in milliseconds", csv("station,time,period_s", ["WEST,2031-02-11T00:00Z,18000", "WEST,2031-02-11T06:00Z,17"]), [/^r\.csv, row 2, column period_s: found "18000"; wanted a number of seconds from 0\.5 to 1000\.$/]],
+    ["frequencies in millihertz", csv(HEADER, ["WEST,2031-02-11T00:00Z,55", "WEST,2031-02-11T06:00Z,0.06"]), [/^r\.csv, row 2, column frequency_hz: found "55"; wanted a number of hertz from 0\.001 to 2\.$/]],
+    ["an error of a time beyond reason", csv(`${HEADER},time_sigma_s`, ["WEST,2031-02-11T00:00Z,0.05,1e300", "WEST,2031-02-11T06:00Z,0.06,1e-300"]), [
+      /^r\.csv, row 2, column time_sigma_s: found "1e300"; wanted a number of seconds, 0 or from 0\.001 to 2592000\.$/,
+      /^r\.csv, row 3, column time_sigma_s: found "1e-300"/,
+    ]],
     ["an unknown station", csv(HEADER, [...ridge("WEST", 5000), ...ridge("NORTH", 5000).slice(0, 1)]), [/^r\.csv, row 9, column station: found "NORTH"; wanted a station of s\.csv \(WEST, EAST, MID\)\.$/]],
   ])("%s", (_, readings, lines) => {
     const run = locate({ readings });

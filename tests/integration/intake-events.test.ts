@@ -47,7 +47,7 @@ test("what is wrong with a folder is told of all its events at once, by file, ro
   const problems = problemsOf(directory);
   expect(problems).toHaveLength(3);
   expect(problems[0]).toMatch(/empty: found neither readings\.csv nor arrivals\.csv; wanted one of them at least\.$/);
-  expect(problems[1]).toBe('heron/readings.csv, row 2, column period_s: found "NaN"; wanted a number of seconds above zero.');
+  expect(problems[1]).toBe('heron/readings.csv, row 2, column period_s: found "NaN"; wanted a number of seconds from 0.5 to 1000.');
   expect(problems[2]).toMatch(/^tern\/event\.json: found something else; wanted \{"title"/);
 });
 
