@@ -1,5 +1,4 @@
-import { readFileSync } from "node:fs";
-import { createRequire } from "node:module";
+import axe from "axe-core";
 import type { Page } from "playwright-core";
 import { describe, expect, test } from "vitest";
 import { demoBrowser, DESK, PHONE } from "#tests/support/demo-browser.ts";
@@ -7,14 +6,12 @@ import { DEMO_EVENTS } from "#tests/support/simulator/demo-events.ts";
 
 const { open, openEvent, address, expectFault } = demoBrowser();
 
-const AXE = readFileSync(createRequire(import.meta.url).resolve("axe-core/axe.min.js"), "utf8");
-
 /** One sentence for each thing that axe finds against the page, at every rule it has. */
 async function violations(page: Page): Promise<string[]> {
-  await page.evaluate(AXE);
+  await page.evaluate(axe.source);
   return page.evaluate(async () => {
-    const { axe } = globalThis as unknown as { axe: { run: () => Promise<{ violations: { id: string; nodes: { html: string }[] }[] }> } };
-    const found = await axe.run();
+    const inPage = globalThis as unknown as { axe: { run: () => Promise<{ violations: { id: string; nodes: { html: string }[] }[] }> } };
+    const found = await inPage.axe.run();
     return found.violations.flatMap(({ id, nodes }) => nodes.map(({ html }) => `${id}: ${html}`));
   });
 }

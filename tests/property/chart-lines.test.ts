@@ -96,6 +96,17 @@ describe("a region on the chart", () => {
     expect(longest, "a side of a cell is some 60 km long").toBeLessThan(120_000);
   });
 
+  it("has the same outline from whichever vertex its lines are given", () => {
+    const corners: [number, number][] = [[180, 10], [180, 20], [178, 21], [176, 20], [174, 15], [176, 10], [178, 9]];
+    const outlines = corners.map((_, start) => {
+      const turned = [...corners.slice(start), ...corners.slice(0, start)];
+      const line = turned.concat(turned.slice(0, 1));
+      return regionShape({ type: "MultiPolygon", coordinates: [[line]] }).outline;
+    });
+    for (const outline of outlines) expect(outline).toStrictEqual(outlines[0]);
+    expect(outlines[0]?.map((piece) => [piece[0], piece.at(-1)])).toStrictEqual([[[20, 180], [10, 180]]]);
+  });
+
   it("meets its copy across the 180th meridian", () => {
     const { outline, area } = shapeOf(at(40, 179.5)).shape;
     const ends = lineCopies(outline).flatMap((line) => [line[0], line.at(-1)]).flatMap((end) => (end === undefined ? [] : [end]));

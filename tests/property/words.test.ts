@@ -207,6 +207,9 @@ describe("the table of stations", () => {
       [true, true, "–", "–", "–", "–"],
       [false, false, "–", "–", "–", "–"],
     ]);
+    // A station just left out, of which the answer before still speaks.
+    const early = stationRows({ stations, excludedIds: ["s1"], solution: solution(ANSWER), spread: DEFAULT_SETTINGS.spread, unit: "km" });
+    expect(early.map(({ included, ring }) => [included, plain(ring)])).toStrictEqual([[false, "–"], [true, "5 985"], [true, "3 862"]]);
     const [first] = rows;
     // The band: own error, 150 km and 2 % of the distance.
     const sigmaKm = Math.hypot(30, 150, 0.02 * 5204);
