@@ -97,6 +97,39 @@ describe("the posterior laid out densely", () => {
   });
 });
 
+describe("whether two stations heard one storm", () => {
+  /** Log odds that they did: against one of the two alone, or neither, with any place and any time of ten days as probable. */
+  function logOdds(arrivals: readonly StatedArrival[]): number {
+    const [prior, stray, tenDays] = [0.95, 1 / (19_500_000 * 10 * 86_400), 10 * 86_400];
+    const together = densePosterior(arrivals, DENSE_MODEL).reduce((sum, { logDensity, areaSquareMetres }) => sum + Math.exp(logDensity) * areaSquareMetres, 0);
+    const girths = arrivals.map(({ distanceMetres }) => 2 * Math.PI * 6_371_008.8 * Math.sin(distanceMetres / 6_371_008.8));
+    const alone = girths.reduce((sum, girth) => sum + prior * girth * (1 - prior) * stray, 0);
+    const neither = ((1 - prior) * stray) ** 2 * 510_065_621.724e6 * tenDays;
+    return Math.log(together / (alone + neither));
+  }
+  const apartBy = (hours: number) =>
+    exactArrivals({ stations: [{ id: "a", position: STATIONS.california }, { id: "c", position: STATIONS.kiritimati }], storm: at(42, 160) }).map((arrival, i) => ({
+      ...arrival,
+      originEpochSeconds: arrival.originEpochSeconds + i * 3600 * hours,
+    }));
+  const outcomeOf = (arrivals: readonly StatedArrival[]) =>
+    solveEvent({ observations: statedObservations(arrivals), settings: DEFAULT_SETTINGS, land: null, sightTables: new Map(), checks: false }).answer?.outcome;
+
+  it("turns where the odds are even", () => {
+    let [low, high] = [0, 200];
+    for (let i = 0; i < 9; i += 1) {
+      const middle = (low + high) / 2;
+      if (logOdds(apartBy(middle)) > 0) low = middle;
+      else high = middle;
+    }
+    expect(low).toBeGreaterThan(30);
+    expect(high).toBeLessThan(150);
+    expect(logOdds(apartBy(low - 2))).toBeLessThan(1); // two hours are less than a factor of e
+    expect(outcomeOf(apartBy(low - 2))).toBe("several");
+    expect(outcomeOf(apartBy(high + 2))).toBe("no-agreement");
+  });
+});
+
 function isNearest(place: Position, modes: readonly { readonly position: Position }[], index = 0): boolean {
   const apart = modes.map(({ position }) => legBetween(place, position).distanceMetres);
   return apart.every((metres) => metres >= (apart[index] ?? NaN));

@@ -172,6 +172,31 @@ describe("the line of one station's readings", () => {
   });
 });
 
+describe("a reading far off at an end, where it bears most on the slope", () => {
+  it.each([[0, 10], [7, 10], [0, 3], [7, 3], [7, -10], [0, -1]])("does not carry the line along: reading %d, %d days out", (wrong, days) => {
+    const samples = even(8).map((frequencyHz, i) => ({ frequencyHz, offSeconds: 900 * Math.sin(7 * i) + (i === wrong ? 86_400 * days : 0) }));
+    const line = fitted(readingsOf(6e6, samples));
+    expect(line.downweightedRows).toEqual([wrong + 2]);
+    expectWithin(line.distanceMetres, 6e6, ratio(0.07, "least squares alone would start tens of per cent off"));
+  });
+  it("is left out among many readings too", () => {
+    const samples = even(150).map((frequencyHz, i) => ({ frequencyHz, offSeconds: 900 * Math.sin(7 * i) + (i % 10 === 9 ? 4 * 86_400 : 0) }));
+    const line = fitted(readingsOf(6e6, samples));
+    expect(line.downweightedRows).toEqual(samples.flatMap(({ offSeconds }, i) => (offSeconds > 86_400 ? [i + 2] : [])));
+    expectWithin(line.distanceMetres, 6e6, ratio(0.02, "a tenth of them are wrong"));
+  });
+  it("counts for less from two and a half standard deviations on (huber-1964, one good reading in eighty)", () => {
+    const rowsAt = (sigmas: number) => {
+      const samples = even(41).map((frequencyHz, i) => ({ frequencyHz, offSeconds: i === 20 ? 1800 * sigmas : 0 }));
+      return fitted(readingsOf(6e6, samples)).downweightedRows;
+    };
+    // One of 41 readings takes a fortieth of its own miss with it.
+    expect(rowsAt(2.5)).toEqual([]);
+    expect(rowsAt(2.6)).toEqual([22]);
+    expect(rowsAt(-2.6)).toEqual([22]);
+  });
+});
+
 describe("what the line says of its own errors", () => {
   const frequencies = even(16);
   const runs = 1500;
@@ -331,6 +356,11 @@ describe("readings that make no line", () => {
     expect(codeOf(fit(readingsOf(5e6, close)))).toBe("slope-undetermined");
     const risesALittle = [0.06, 0.0601].map((frequencyHz) => ({ frequencyHz, sigmaSeconds: 7200 }));
     expect(codeOf(fit(readingsOf(-5e6, risesALittle)))).toBe("slope-undetermined");
+  });
+  it("are refused from two standard deviations of the slope down, and told apart from periods that rise", () => {
+    const slopeSigma = (1800 * Math.SQRT2) / 0.01;
+    const at = (sigmas: number) => codeOf(fit(readingsOf((sigmas * slopeSigma) / SECONDS_PER_METRE_AND_HERTZ, [{ frequencyHz: 0.05 }, { frequencyHz: 0.06 }])));
+    expect([2.05, 1.95, 0.1, -1.95, -2.05].map(at)).toEqual(["fitted", "slope-undetermined", "slope-undetermined", "slope-undetermined", "period-rises"]);
   });
   it("are refused beyond half the girth, with the distance that they ask for, and not before", () => {
     const at = (distanceMetres: number) => fit(readingsOf(distanceMetres, even(8).map((frequencyHz) => ({ frequencyHz, sigmaSeconds: 600 }))));
