@@ -1,4 +1,4 @@
-import { readFileSync } from "node:fs";
+import { readdirSync, readFileSync } from "node:fs";
 import { join } from "node:path";
 import { expect, test } from "vitest";
 import { DEFAULT_PUBLIC_SETTINGS } from "#lib/contracts/settings.ts";
@@ -26,4 +26,21 @@ test("README.md names every script that a reader is sent to, and every setting",
   );
   expect(settings).toHaveLength(13);
   for (const name of settings) expect(README).toContain(name);
+});
+
+test("DEVELOPERS.md names only files, scripts and packages that exist, and every package", () => {
+  const paper = readFileSync("DEVELOPERS.md", "utf8");
+  const manifest = JSON.parse(readFileSync("package.json", "utf8")) as Record<"scripts" | "dependencies" | "devDependencies", Record<string, string>>;
+  const files = ["app", "lib", "prisma", "tests", "fixtures", ".ci"].flatMap((room) =>
+    readdirSync(room, { recursive: true, encoding: "utf8" }).map((name) => `/${room}/${name}`),
+  );
+  const known = [...files, ...readdirSync(".").map((name) => `/${name}`)];
+  const named = [...paper.matchAll(/`([\w./[\]-]+\.(?:tsx?|mjs|sql|css|json|prisma|md))`/g)].map(([, name = ""]) => name).filter((name) => !name.includes("NNNN") && !name.startsWith("tests/output"));
+  expect(named.length).toBeGreaterThan(40);
+  expect(named.filter((name) => !known.some((path) => path.endsWith(`/${name}`)))).toStrictEqual([]);
+
+  const scripts = [...paper.matchAll(/npm run ([\w:]+)/g)].map(([, name = ""]) => name);
+  expect(scripts.filter((name) => !(name in manifest.scripts))).toStrictEqual([]);
+  const packages = Object.keys({ ...manifest.dependencies, ...manifest.devDependencies }).filter((name) => !name.startsWith("@types/"));
+  expect(packages.filter((name) => !paper.includes(`\`${name}\``) && !name.startsWith("@stdlib/stats-base-dists-"))).toStrictEqual([]);
 });

@@ -1,5 +1,5 @@
 import { spawn } from "node:child_process";
-import { chmodSync, mkdirSync, writeFileSync } from "node:fs";
+import { chmodSync, mkdirSync, readFileSync, writeFileSync } from "node:fs";
 import { dirname, join } from "node:path";
 import { createInterface } from "node:readline";
 import Database from "better-sqlite3";
@@ -69,6 +69,16 @@ describe("a data folder is refused in a sentence, and left as it is", () => {
     const text = temporaryDirectory();
     writeFileSync(join(text, DATABASE_FILE), "These are not the bytes of a database.".repeat(100));
     expect(await refusal(text)).toMatch(/found an offing\.sqlite that is no database of this program \(SQLITE_NOTADB\)\.$/);
+
+    const { store, dataDirectory } = await temporaryStore();
+    await store.saveEvent(inventedEvent("gale"));
+    await store.close();
+    const path = join(dataDirectory, DATABASE_FILE);
+    const bytes = readFileSync(path);
+    bytes.fill(0xff, 100, 1000); // behind the file's header, where the list of tables begins
+    writeFileSync(path, bytes);
+    expect(await refusal(dataDirectory)).toMatch(/found a damaged database; wanted a whole one.* \(SQLITE_CORRUPT\)\.$/);
+    expect(readFileSync(path).equals(bytes)).toBe(true);
   });
 
   test("where the database is of a newer version", async () => {
