@@ -51,7 +51,7 @@ async function cover(recipe: RecipeName, seed: number, storms: number, targets: 
 async function nameClocks(recipe: RecipeName, seed: number, storms: number): Promise<void> {
   const tally = tallyClocks(await judgeInParallel(recipe, seed, storms));
   report(`named ${recipe}`, seed, storms, tally.named / tally.storms, "of wrong clocks", { from: 0.9 });
-  report(`offset within two sigmas ${recipe}`, seed, storms, tally.withinTwoSigmas / tally.accused, "of those named", { from: 0.95 });
+  report(`offset within two sigmas ${recipe}`, seed, storms, tally.withinTwoSigmas / tally.named, "of those named", { from: 0.95 });
   report(`right clocks accused ${recipe}`, seed, storms, tally.rightAccused / tally.rightClocks, "of right clocks", { to: 0.01 });
 }
 

@@ -7,7 +7,7 @@ import type { StationTerms } from "./site.ts";
 /** How far apart in origin time two arrivals may be and still have been brought in for one event. */
 export const PLAUSIBLE_ORIGIN_SECONDS = 10 * 86_400;
 /** Distances that an arrival may tell of when it is not of this storm: 500 to 20,000 km. */
-export const PLAUSIBLE_DISTANCE_METRES = 19_500_000;
+const PLAUSIBLE_DISTANCE_METRES = 19_500_000;
 /** Standard deviation given to the time of a station whose clock is set aside: three years. */
 const CLOCK_SET_ASIDE_SECONDS = 1e8;
 

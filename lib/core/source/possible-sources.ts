@@ -8,7 +8,7 @@ import { heldAt, type Posterior, type SearchInput, type WeighedCell } from "./se
 import { shareInSight } from "./site.ts";
 
 /** A mode that holds less than this is not a possible source. */
-export const LEAST_PROBABILITY = 0.01;
+const LEAST_PROBABILITY = 0.01;
 /** A best point on land still stands where it lies within this chi-square of two of the best point in water. */
 const SAME_PEAK_CHI_SQUARE = 9.21;
 /** Free maxima nearer than this to a possible source are that source. */

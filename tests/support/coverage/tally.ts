@@ -2,22 +2,20 @@ import type { Judgement } from "./judge.ts";
 
 export interface ClockTally {
   readonly storms: number;
-  /** Wrong clocks called wrong with an offset within 12 h of theirs. */
+  /** Wrong clocks called wrong. */
   readonly named: number;
-  /** Of those called wrong: stated offset within two of its standard deviations. */
-  readonly accused: number;
+  /** Of those: stated offset within two of its standard deviations of the true one. */
   readonly withinTwoSigmas: number;
   readonly rightClocks: number;
   readonly rightAccused: number;
 }
 
 export function tallyClocks(judgements: readonly Judgement[]): ClockTally {
-  const accused = judgements.flatMap(({ clock }) => clock.named ?? []);
+  const named = judgements.flatMap(({ clock }) => clock.named ?? []);
   return {
     storms: judgements.length,
-    named: accused.filter(({ offSeconds }) => Math.abs(offSeconds) < 12 * 3600).length,
-    accused: accused.length,
-    withinTwoSigmas: accused.filter(({ offSeconds, sigmaSeconds }) => Math.abs(offSeconds) <= 2 * sigmaSeconds).length,
+    named: named.length,
+    withinTwoSigmas: named.filter(({ offSeconds, sigmaSeconds }) => Math.abs(offSeconds) <= 2 * sigmaSeconds).length,
     rightClocks: judgements.reduce((sum, { clock }) => sum + clock.rightClocks, 0),
     rightAccused: judgements.reduce((sum, { clock }) => sum + clock.rightAccused, 0),
   };
