@@ -135,7 +135,6 @@ describe("round the South Pole", () => {
     const out = page.getByRole("button", { name: "Zoom out" });
     for (let press = 0; press < 8 && (await out.getAttribute("aria-disabled")) !== "true"; press++) {
       await out.press("Enter");
-      await page.waitForTimeout(300);
     }
     const chart = await readChart(page, ["pal", "col"].map((id) => asDrawn(id, eastward)));
     const ring = (await expectRing(page, chart, "tar")).flat();

@@ -41,6 +41,19 @@ describe("leaving a station out", () => {
     expect(await rings(page)).toBe(6);
   });
 
+  test("marks the figures as being worked out until the new ones are there", async () => {
+    const page = await openEvent("albatross");
+    await redrawn(page, async () => {
+      const busy = await status(page).evaluate(async (element) => {
+        document.querySelector<HTMLInputElement>("tbody input[type=checkbox]")?.click();
+        await Promise.resolve();
+        return element.getAttribute("aria-busy");
+      });
+      expect(busy).toBe("true");
+    });
+    expect(await status(page).getAttribute("aria-busy")).toBe("false");
+  });
+
   test("by keyboard alone", async () => {
     const page = await openEvent("gannet");
     const before = await headline(page);

@@ -41,7 +41,7 @@ export function demoBrowser(): DemoBrowser {
   const address = (path: string): string => `${running.demo?.address ?? ""}${path}`;
   const open: DemoBrowser["open"] = async (path, options = {}) => {
     if (running.browser === null) throw new Error("The browser is not running.");
-    const page = await running.browser.newPage({ viewport: DESK, ...options });
+    const page = await running.browser.newPage({ viewport: DESK, reducedMotion: "reduce", ...options });
     pages.push(page);
     page.on("console", (message) => {
       if (message.type() === "error") faults.push(message.text());

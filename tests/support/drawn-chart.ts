@@ -28,8 +28,6 @@ interface Pixel {
  * manual, equations 7-1 and 7-2, from memory.
  */
 export async function readChart(page: Page, known: readonly { name: string; position: Position }[]): Promise<DrawnChart> {
-  // The map glides to its place.
-  await page.waitForFunction(() => document.querySelector(".leaflet-zoom-anim, .leaflet-pan-anim") === null);
   const [first, second] = await Promise.all(known.map(async ({ name, position }) => ({ position, pixel: await middle(page, name) })));
   if (first === undefined || second === undefined) throw new Error("Two stations are needed to find the scale.");
   const pixelsPerDegree = (second.pixel.x - first.pixel.x) / (second.position.longitudeDegrees - first.position.longitudeDegrees);

@@ -14,6 +14,7 @@ import { BaseMapLayers } from "./base-map-layers.tsx";
 import { ExactLines } from "./exact-lines.tsx";
 import { RingLayers } from "./ring-layers.tsx";
 import { ScaleBar } from "./scale-bar.tsx";
+import { SmallestScale } from "./smallest-scale.tsx";
 import { SourceLayers } from "./source-layers.tsx";
 import { StationMarks } from "./station-marks.tsx";
 import type { EventView } from "./view.ts";
@@ -41,6 +42,7 @@ function DrawnChart(props: ChartProps & { layers: EventLayers }) {
   // Where the chart opens. Later answers leave it where the reader has put it.
   const opensOn = useMemo(() => extent(window, stations, layers), [window, stations]); // eslint-disable-line react-hooks/exhaustive-deps
   const middle = window.centreLongitudeDegrees;
+  const glides = !globalThis.matchMedia("(prefers-reduced-motion: reduce)").matches;
   return (
     <MapContainer
       ref={nameTheChart}
@@ -49,13 +51,17 @@ function DrawnChart(props: ChartProps & { layers: EventLayers }) {
       boundsOptions={{ paddingTopLeft: [28, 28], paddingBottomRight: [28, SCALE_BAR_PIXELS] }}
       maxBounds={[[-86, middle - 200], [86, middle + 200]]}
       maxBoundsViscosity={1}
-      minZoom={1}
+      minZoom={0}
       maxZoom={8}
       zoomSnap={0.25}
+      zoomAnimation={glides}
+      fadeAnimation={glides}
+      inertia={glides}
       zoomControl={false}
       attributionControl={false}
     >
       <ExactLines />
+      <SmallestScale />
       <BaseMapLayers baseMap={props.baseMap} middle={middle} />
       <RingLayers layers={layers} overlap={props.overlap} view={view} />
       <SourceLayers layers={layers} showsSight={view.showsSight} />

@@ -33,7 +33,7 @@ export function StationTable(props: {
           <th scope="col">ring, <abbr title={unitName}>{unit}</abbr></th>
           <th scope="col">residual, <abbr title={unitName}>{unit}</abbr></th>
           <th scope="col"><span className="for-screen-readers">residual, </span><abbr title="hours">h</abbr></th>
-          <th scope="col">belongs</th>
+          <th scope="col"><abbr title="probability that the station saw this storm">belongs</abbr></th>
         </tr>
       </thead>
       <tbody>
