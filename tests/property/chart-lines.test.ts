@@ -6,10 +6,12 @@ import { baseMap } from "#lib/chart/base-map.ts";
 import type { ChartLine, ChartPoint } from "#lib/chart/chart-point.ts";
 import { areaCopies, lineCopies } from "#lib/chart/copies.ts";
 import { cutAtEdges, EDGE_LATITUDE_DEGREES } from "#lib/chart/cut-at-edges.ts";
+import { eventLayers } from "#lib/chart/event-layers.ts";
 import { regionShape } from "#lib/chart/region-shape.ts";
 import { sightLine } from "#lib/chart/sight-line.ts";
 import { smoothClosedLine, smoothOpenLine } from "#lib/chart/smooth-line.ts";
 import { buildSightTable } from "#lib/core/geodesy/build-sight-table.ts";
+import { DEFAULT_SETTINGS } from "#lib/core/source/settings.ts";
 import { regionGeometry } from "#lib/core/source/region-geometry.ts";
 import type { Position } from "#lib/core/units/position.ts";
 import { areaHolds, areaSquareMetres } from "#tests/support/chart-shapes.ts";
@@ -114,6 +116,69 @@ describe("a region on the chart", () => {
     expect(onSeam).toHaveLength(4);
     for (const [latitude] of onSeam) expect(onSeam.filter(([other]) => Math.abs(other - latitude) < 1e-4)).toHaveLength(2);
     expect(areaCopies(area)).toHaveLength(3 * area.length);
+  });
+});
+
+describe("an event's layers", () => {
+  const window = { centreLongitudeDegrees: 170 };
+  const station = at(-17, 178);
+  const estimate = {
+    distanceMetres: 4e6,
+    originEpochSeconds: 0,
+    covariance: { distanceVariance: 0, originVariance: 0, distanceOriginCovariance: 0 },
+    sharedShifts: [],
+    bearing: null,
+  };
+  const geometry = regionGeometry(gridDisk(latLngToCell(-50, -170, 3), 3));
+  const layers = eventLayers({
+    window,
+    spread: DEFAULT_SETTINGS.spread,
+    sightTables: new Map(),
+    solution: {
+      stations: [
+        { id: "a", name: "A", position: station, outcome: { kind: "sent-in", estimate } },
+        { id: "b", name: "B", position: station, outcome: { kind: "refused", code: "too-few-readings", message: "" } },
+      ],
+      answer: {
+        outcome: "several",
+        source: { position: at(-50, -170), originEpochSeconds: 0, originSigmaSeconds: 1, onLand: false, bestInWater: null },
+        regions: [0.5, 0.95, 0.9].map((probability) => ({ probability, areaSquareMetres: 1, geometry })),
+        modes: [{ probability: 1, position: at(-50, -170), originEpochSeconds: 0 }],
+        ruledOut: [{ position: at(10, -179), reason: "land" }],
+        stations: [],
+        crossings: [{ stations: ["a", "b"], points: [at(0, -20)] }],
+        fit: null,
+        drift: null,
+        spreadRaisedBy: 2,
+        warnings: [],
+      },
+      warnings: [],
+    },
+  });
+
+  it("are drawn three times where they may run over the window's edge", () => {
+    const shapes = [...layers.rings.flatMap(({ line, band }) => [line, band.flat()]), ...layers.regions.flatMap(({ area, outline }) => [area.flat(), outline]), ...layers.sightLines.map(({ open }) => open)];
+    expect(shapes).toHaveLength(2 + 6 + 1);
+    for (const lines of shapes) {
+      const third = lines.length / 3;
+      for (const [west, east] of [[0, third], [third, 2 * third]] as const) {
+        const apart = (lines[west] ?? []).map(([, longitude], i) => Math.abs((lines[east]?.[i]?.[1] ?? NaN) - longitude - 360));
+        expectWithin(Math.max(...apart), 0, { absolute: 1e-9, unit: "degrees", because: "rounding" });
+      }
+    }
+  });
+
+  it("hold one ring for each station that has one, its band by the spread that the misfit raised", () => {
+    expect(layers.rings.map(({ stationId }) => stationId)).toStrictEqual(["a"]);
+    const latitudes = (lines: ChartLine[]): number => Math.max(...lines.flat().map(([latitude]) => latitude));
+    const [ring] = layers.rings;
+    const widthMetres = legBetween(at(latitudes(ring?.line ?? []), 178), at(latitudes(ring?.band.flat() ?? []), 178)).distanceMetres;
+    expectWithin(widthMetres, 2 * Math.hypot(150_000, 0.02 * 4e6), { relative: 0.01, unit: "m", because: "vertices a degree of azimuth apart" });
+  });
+
+  it("put the surest region on top, and every point in the window", () => {
+    expect(layers.regions.map(({ probability }) => probability)).toStrictEqual([0.95, 0.9, 0.5]);
+    expect([layers.source, layers.possibleSources[0]?.point, layers.ruledOut[0]?.point, layers.crossings[0]?.points[0]]).toStrictEqual([[-50, 190], [-50, 190], [10, 181], [0, 340]]);
   });
 });
 
