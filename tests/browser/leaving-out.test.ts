@@ -96,7 +96,10 @@ describe("leaving a station out", () => {
     await page.getByRole("alert").filter({ hasText: "The chart could not be drawn" }).waitFor();
     await included(page, "6 Wickerstrand").click();
     await page.waitForURL("**/petrel?without=wic");
-    expect(await headline(page)).toContain("Left out: 6 Wickerstrand.");
+    await page.getByRole("alert").filter({ hasText: "The chart could not be drawn" }).waitFor();
+    const said = await headline(page);
+    expect(said).toContain("All five stations agree");
+    expect(said).toContain("Left out: 6 Wickerstrand.");
   });
 });
 
