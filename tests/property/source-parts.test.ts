@@ -29,6 +29,7 @@ describe("which stations may have seen the storm", () => {
     expect(sets.flat().every((i) => i >= 0 && i < size)).toBe(true);
   });
   it("of many stations is all but two at most, about everyone and about what a search found", () => {
+    expect(straySets(7)).toHaveLength(1 + 7 + 21);
     const strayCounts = straySets(9).map((strays) => strays.length);
     expect([0, 1, 2, 3].map((count) => strayCounts.filter((one) => one === count).length)).toEqual([1, 9, 36, 0]);
     const around = straySets(9, [[0, 1, 2]]).map((set) => set.join());

@@ -117,13 +117,14 @@ function weighed(arrivals: readonly StatedArrival[], model: DenseModel, position
     ...arrivals.map(({ distanceMetres }, i) => (legs[i]?.distanceMetres ?? NaN) - distanceMetres),
     ...arrivals.map(({ originEpochSeconds }) => originEpochSeconds - first),
   ];
+  const directions = arrivals.map((arrival) => logDirection(arrival, position));
   const belongs = arrivals.map(() => 0);
   let [sum, mean, square] = [0, 0, 0];
   for (const stations of subsetsOfTwoAndMore(arrivals.length)) {
     const weight =
       model.prior ** stations.length *
       ((1 - model.prior) * STRAY_DENSITY) ** (arrivals.length - stations.length) *
-      Math.exp(logGaussian(stations, misses, covariance));
+      Math.exp(logGaussian(stations, misses, covariance) + stations.reduce((total, i) => total + (directions[i] ?? NaN), 0));
     const origin = originGiven(stations, misses, covariance);
     sum += weight;
     mean += weight * origin.mean;
@@ -136,6 +137,13 @@ function weighed(arrivals: readonly StatedArrival[], model: DenseModel, position
     originMean: mean / sum,
     originVariance: square / sum - (mean / sum) ** 2,
   };
+}
+
+/** Log density of the direction that a station measured, over that of any direction; nothing where it measured none. */
+function logDirection({ position: station, bearing }: StatedArrival, position: Position): number {
+  if (!bearing) return 0;
+  const off = ((legTo(station, position).headsTowardDegrees - bearing.comesFromDegrees + 540) % 360) - 180;
+  return Math.log(360 / (Math.sqrt(2 * Math.PI) * bearing.sigmaDegrees)) - (off / bearing.sigmaDegrees) ** 2 / 2;
 }
 
 /** Where Vincenty's iteration fails, near the antipode, a point is as good as nowhere: half the girth away. */

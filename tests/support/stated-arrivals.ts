@@ -1,4 +1,5 @@
 import type { EventObservations } from "#lib/core/arrival/observations.ts";
+import type { Bearing } from "#lib/core/arrival/reading.ts";
 import type { Position } from "#lib/core/units/position.ts";
 import { legBetween } from "./simulator/ellipsoid.ts";
 import { deploymentOf, type NetworkStation } from "./simulator/simulated-event.ts";
@@ -12,6 +13,7 @@ export interface StatedArrival {
   readonly distanceSigmaMetres: number;
   readonly originSigmaSeconds: number;
   readonly correlation: number;
+  readonly bearing?: Bearing;
 }
 
 export const STORM_EPOCH_SECONDS = 1_077_580_800;
@@ -47,7 +49,7 @@ export function statedObservations(arrivals: readonly StatedArrival[]): EventObs
           distanceOriginCovariance: arrival.correlation * arrival.distanceSigmaMetres * arrival.originSigmaSeconds,
         },
         sharedShifts: [],
-        bearing: null,
+        bearing: arrival.bearing ?? null,
       },
     })),
   };
