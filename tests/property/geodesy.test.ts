@@ -210,6 +210,14 @@ describe("crossings of rings", () => {
     );
   });
 
+  it("have no radius beyond half the way round a sphere", () => {
+    const ring = (radiusDegrees: number) => ({ centre: { latitudeDegrees: 0, longitudeDegrees: 0 }, radiusDegrees });
+    const far = { ...ring(100), centre: { latitudeDegrees: 0, longitudeDegrees: 30 } };
+    expect(() => sphericalCrossings({ first: ring(181), second: far })).toThrow("A ring's radius must lie between 0 and 180");
+    expect(() => sphericalCrossings({ first: far, second: ring(181) })).toThrow("A ring's radius must lie between 0 and 180");
+    expect(sphericalCrossings({ first: ring(180), second: far }).kind).toBe("apart");
+  });
+
   it("lie on both circles of a sphere", () => {
     const arc = (a: Position, b: Position) => {
       const vector = ({ latitudeDegrees, longitudeDegrees }: Position) => {

@@ -227,3 +227,35 @@ describe("the visible fraction of a disc", () => {
     expect(seen(89.9)).toBe(0);
   });
 });
+
+describe("a disc cut by a straight coast", () => {
+  const quarter = inventedLand([block(0, 60, 0, 60)]); // land to the north-east of where the meridian meets the equator
+  /** Mean over four discs about a place, since a disc's middle row of points lies on one side of a coast or the other. */
+  const shareAt = ({ latitudeDegrees, longitudeDegrees }: Position) =>
+    [[-1, -1], [-1, 1], [1, -1], [1, 1]].reduce((sum, [north = NaN, east = NaN]) => {
+      const position = at(latitudeDegrees + 0.06 * north, longitudeDegrees + 0.06 * east);
+      return sum + (1 - oceanFraction({ mask: quarter, position, radiusMetres: 150_000 })) / 4;
+    }, 0);
+
+  it.each([
+    ["to the west", at(20, 0), 0.5],
+    ["to the south", at(0, 20), 0.5],
+    ["to the east", at(20, 60), 0.5],
+    ["at its corner", at(0, 0), 0.25],
+    ["far inland", at(30, 30), 1],
+    ["far off", at(-30, -30), 0],
+  ])("is land by its share: %s", (_, position, share) => {
+    expectWithin(shareAt(position), share, fraction(0.03, "nineteen points, each for an equal area"));
+  });
+});
+
+describe("a disc too small for any bearing of the table", () => {
+  const tableAt = (metres: number): SightTable => ({ stepDegrees: 0.5, firstBlockMetres: new Float64Array(720).fill(metres) });
+  const seen = (bearingDegrees: number, blockMetres: number) =>
+    visibleFraction({ table: tableAt(blockMetres), bearingDegrees, distanceMetres: 5_000_000, discRadiusMetres: 1000 });
+
+  it.each([100.2, 0.2, 359.8, -0.2, -120.3])("is seen whole or not at all by its middle, on bearing %d", (bearingDegrees) => {
+    expect(seen(bearingDegrees, 5_000_500)).toBe(1);
+    expect(seen(bearingDegrees, 4_999_500)).toBe(0);
+  });
+});

@@ -3,13 +3,14 @@ import { describe, expect, it } from "vitest";
 import { fitDispersionLine } from "#lib/core/arrival/dispersion-line.ts";
 import type { ArrivalEstimate } from "#lib/core/arrival/estimate.ts";
 import { straySets } from "#lib/core/source/belonging.ts";
-import { areaOf, centreOf } from "#lib/core/source/grid.ts";
+import { areaOf, centreOf, spacingMetres } from "#lib/core/source/grid.ts";
 import { steadyCovariance } from "#lib/core/source/joint-covariance.ts";
 import { modesOf, type Mode } from "#lib/core/source/modes.ts";
 import { neighbourFinder } from "#lib/core/source/neighbours.ts";
+import { networkOf } from "#lib/core/source/network.ts";
 import { cellsHolding, logTotal } from "#lib/core/source/regions.ts";
-import { ringSigmaMetres } from "#lib/core/source/ring-sigma.ts";
-import type { WeighedCell } from "#lib/core/source/search.ts";
+import { ringSigmas } from "#lib/core/source/ring-sigma.ts";
+import { searchOcean, type WeighedCell } from "#lib/core/source/search.ts";
 import { DEFAULT_SETTINGS } from "#lib/core/source/settings.ts";
 import { widenedForScatter } from "#lib/core/source/widened.ts";
 import type { Position } from "#lib/core/units/position.ts";
@@ -107,16 +108,40 @@ describe("separate sources", () => {
   });
 });
 
+describe("the cells of a search", () => {
+  const stations = [at(37.9, -122.2), at(-9.4, 147.2), at(2, -157.5)].map((position, i) => ({ id: `s${i}`, position }));
+  const searched = (narrower: number) => {
+    const { spread } = DEFAULT_SETTINGS;
+    const narrow = { ...spread, distanceMetres: spread.distanceMetres / narrower, scaleFraction: spread.scaleFraction / narrower, tiltSecondsPerHz: spread.tiltSecondsPerHz / narrower };
+    const sent = statedObservations(exactArrivals({ stations, storm: at(42, 160), distanceFraction: 0.03 / narrower })).estimates;
+    const arrivals = sent.map(({ stationId, estimate: stated }, i) => ({ id: stationId, position: stations[i]?.position ?? at(0, 0), estimate: stated, readings: [], exposure: null, sight: null }));
+    const network = networkOf(arrivals, { settings: { ...DEFAULT_SETTINGS, spread: narrow } });
+    return searchOcean({ network, sets: straySets(3), land: null });
+  };
+
+  it.each([[1, 3], [2, 4], [4, 5], [8, 5]])("are a hundred and more in the 95 %% region, and fine beside its axes: %d times narrower", (narrower, least) => {
+    const { level, cells, peaks } = searched(narrower);
+    expect(level).toBeGreaterThanOrEqual(least);
+    expect(cellsHolding(cells, 0.95).length).toBeGreaterThanOrEqual(100);
+    const { eastEast = NaN, eastNorth = NaN, northNorth = NaN } = peaks[0]?.information ?? {};
+    const smallestAxis = 1 / Math.sqrt((eastEast + northNorth) / 2 + Math.hypot((eastEast - northNorth) / 2, eastNorth));
+    expect(spacingMetres(level)).toBeLessThanOrEqual(smallestAxis / 2);
+    const coarser = spacingMetres(level - 1) <= smallestAxis / 2;
+    if (coarser) expect(cellsHolding(cells, 0.95).length).toBeLessThan(7 * 130); // a level less would not have been enough
+  });
+});
+
 const estimate: ArrivalEstimate = {
   ...{ distanceMetres: 6e6, originEpochSeconds: 0, sharedShifts: [], bearing: null },
   covariance: { distanceVariance: 2e5 ** 2, originVariance: 2e4 ** 2, distanceOriginCovariance: -0.9 * 2e5 * 2e4 },
 };
 
 describe("the spread between stations", () => {
-  it("widens a ring by the spread of distance and of scale, raised where the misfit asked for it", () => {
-    const { spread } = DEFAULT_SETTINGS;
-    expectWithin(ringSigmaMetres({ estimate, spread, spreadRaisedBy: 1 }), Math.hypot(2e5, 1.5e5, 1.2e5), rounding);
-    expectWithin(ringSigmaMetres({ estimate, spread, spreadRaisedBy: 2 }), Math.hypot(2e5, 3e5, 2.4e5), rounding);
+  it("widens a ring by the spreads of distance, scale and tilt, raised where the misfit asked for it", () => {
+    const widthOf = (spreadRaisedBy: number) => ringSigmas({ estimate, settings: DEFAULT_SETTINGS, spreadRaisedBy }).distanceSigmaMetres;
+    const tilt = ((4 * 3600) / 0.03) * (9.80665 / (4 * Math.PI)); // the default: 4 h per 0.03 Hz
+    expectWithin(widthOf(1), Math.hypot(2e5, 1.5e5, 1.2e5, tilt), rounding);
+    expectWithin(widthOf(2), Math.hypot(2e5, 3e5, 2.4e5, 2 * tilt), rounding);
   });
 
   it("ties stations together by the shifts of one cause, and by no other", () => {
