@@ -1,6 +1,6 @@
 import { outcomeEstimate } from "#lib/core/arrival/outcome-estimate.ts";
-import { ringSigmaMetres } from "#lib/core/source/ring-sigma.ts";
-import type { SpreadSettings } from "#lib/core/source/settings.ts";
+import { ringSigmas } from "#lib/core/source/ring-sigma.ts";
+import type { EstimationSettings } from "#lib/core/source/settings.ts";
 import type { EventSolution } from "#lib/core/source/solution.ts";
 import { bandInWindow } from "./event-layers.ts";
 import { bandOverlap } from "./band-overlap.ts";
@@ -15,15 +15,15 @@ import { areaCopies } from "./copies.ts";
 export function bandOverlaps(drawing: {
   window: ChartWindow;
   solution: EventSolution;
-  spread: SpreadSettings;
+  settings: EstimationSettings;
   focus: string | null;
 }): ChartArea[] {
-  const { window, solution, spread, focus } = drawing;
+  const { window, solution, settings, focus } = drawing;
   const spreadRaisedBy = solution.answer?.spreadRaisedBy ?? 1;
   const bands = solution.stations.flatMap((station) => {
     const estimate = outcomeEstimate(station.outcome);
     if (estimate === null) return [];
-    const sigmaMetres = ringSigmaMetres({ estimate, spread, spreadRaisedBy });
+    const { distanceSigmaMetres: sigmaMetres } = ringSigmas({ estimate, settings, spreadRaisedBy });
     return [{ id: station.id, area: bandInWindow(window, { station, radiusMetres: estimate.distanceMetres, sigmaMetres }) }];
   });
   return bands.flatMap((first, index) =>

@@ -1,8 +1,8 @@
 import { outcomeEstimate } from "#lib/core/arrival/outcome-estimate.ts";
 import type { SightTable } from "#lib/core/geodesy/sight-table.ts";
 import type { SourceAnswer } from "#lib/core/source/answer.ts";
-import { ringSigmaMetres } from "#lib/core/source/ring-sigma.ts";
-import type { SpreadSettings } from "#lib/core/source/settings.ts";
+import { ringSigmas } from "#lib/core/source/ring-sigma.ts";
+import type { EstimationSettings } from "#lib/core/source/settings.ts";
 import type { EventSolution, StationSolution } from "#lib/core/source/solution.ts";
 import type { ChartArea, ChartLine, ChartPoint } from "./chart-point.ts";
 import { pointInWindow, type ChartWindow } from "./chart-window.ts";
@@ -48,7 +48,7 @@ export interface EventLayers {
 export function eventLayers(drawing: {
   window: ChartWindow;
   solution: EventSolution;
-  spread: SpreadSettings;
+  settings: EstimationSettings;
   /** How far each station sees, by its id; a station without an entry sees everything. */
   sightTables: ReadonlyMap<string, SightTable>;
 }): EventLayers {
@@ -70,13 +70,13 @@ export function eventLayers(drawing: {
   };
 }
 
-function ringLayers(drawing: { window: ChartWindow; solution: EventSolution; spread: SpreadSettings }): RingLayer[] {
-  const { window, solution, spread } = drawing;
+function ringLayers(drawing: { window: ChartWindow; solution: EventSolution; settings: EstimationSettings }): RingLayer[] {
+  const { window, solution, settings } = drawing;
   const spreadRaisedBy = solution.answer?.spreadRaisedBy ?? 1;
   return solution.stations.flatMap((station): RingLayer[] => {
     const estimate = outcomeEstimate(station.outcome);
     if (estimate === null) return [];
-    const sigmaMetres = ringSigmaMetres({ estimate, spread, spreadRaisedBy });
+    const { distanceSigmaMetres: sigmaMetres } = ringSigmas({ estimate, settings, spreadRaisedBy });
     return [
       {
         stationId: station.id,

@@ -1,11 +1,11 @@
 import type { NumberedStation } from "#lib/core/arrival/numbered-stations.ts";
 import { outcomeEstimate } from "#lib/core/arrival/outcome-estimate.ts";
 import type { SourceAnswer } from "#lib/core/source/answer.ts";
+import { ringSigmas } from "#lib/core/source/ring-sigma.ts";
 import type { EstimationSettings } from "#lib/core/source/settings.ts";
 import type { EventSolution } from "#lib/core/source/solution.ts";
 import { areaWords, distanceWords, uncertainDistanceWords, type DistanceUnit } from "./distances.ts";
 import { percentWords, pValueWords } from "./figures.ts";
-import { loneRingSigmas } from "./lone-ring.ts";
 import { countWord, listWords, startingSentence } from "./numbers-in-words.ts";
 import { positionParts, positionWords } from "./positions.ts";
 import { plusMinusHours, uncertainMomentWords } from "./times.ts";
@@ -96,7 +96,7 @@ function ringOnly(said: Said): AnswerWords {
   const [first] = heard;
   if (first === undefined) return tooFew(said.solution);
   const { station, estimate } = first;
-  const { distanceSigmaMetres, originSigmaSeconds } = loneRingSigmas({ estimate, settings: said.settings });
+  const { distanceSigmaMetres, originSigmaSeconds } = ringSigmas({ estimate, settings: said.settings, spreadRaisedBy: 1 });
   const number = said.stations.find(({ id }) => id === station.id)?.number ?? "";
   const where = `the storm stood somewhere on the ring about ${number}\u00a0${station.name}`;
   return {

@@ -1,7 +1,7 @@
 import type { NumberedStation } from "#lib/core/arrival/numbered-stations.ts";
 import { outcomeEstimate } from "#lib/core/arrival/outcome-estimate.ts";
-import { ringSigmaMetres } from "#lib/core/source/ring-sigma.ts";
-import type { SpreadSettings } from "#lib/core/source/settings.ts";
+import { ringSigmas } from "#lib/core/source/ring-sigma.ts";
+import type { EstimationSettings } from "#lib/core/source/settings.ts";
 import type { EventSolution, StationSolution } from "#lib/core/source/solution.ts";
 import { distanceFigure, signedDistanceFigure, type DistanceUnit } from "./distances.ts";
 import { NO_FIGURE, probabilityFigure } from "./figures.ts";
@@ -27,7 +27,7 @@ export function stationRows(table: {
   stations: readonly NumberedStation[];
   excludedIds: readonly string[];
   solution: EventSolution;
-  spread: SpreadSettings;
+  settings: EstimationSettings;
   unit: DistanceUnit;
 }): StationRow[] {
   return table.stations.map((station) => {
@@ -53,7 +53,7 @@ const EMPTY: Figures = {
 
 function figures(
   solved: StationSolution,
-  table: { solution: EventSolution; spread: SpreadSettings; unit: DistanceUnit },
+  table: { solution: EventSolution; settings: EstimationSettings; unit: DistanceUnit },
 ): Figures {
   if (solved.outcome.kind === "refused") return { ...EMPTY, refusal: solved.outcome.message };
   const estimate = outcomeEstimate(solved.outcome);
@@ -62,15 +62,15 @@ function figures(
   const verdict = answer?.stations.find(({ id }) => id === solved.id);
   const residual = verdict?.residual ?? null;
   const belongs = verdict?.belongs ?? null;
-  const sigmaMetres = ringSigmaMetres({ estimate, spread: table.spread, spreadRaisedBy: answer?.spreadRaisedBy ?? 1 });
+  const { distanceSigmaMetres } = ringSigmas({ estimate, settings: table.settings, spreadRaisedBy: answer?.spreadRaisedBy ?? 1 });
   return {
     refusal: null,
     sentIn: solved.outcome.kind === "sent-in",
     ring: distanceFigure(estimate.distanceMetres, table.unit),
-    ringSigma: `±\u00a0${distanceFigure(sigmaMetres, table.unit)}`,
+    ringSigma: `±\u00a0${distanceFigure(distanceSigmaMetres, table.unit)}`,
     residualDistance: residual ? signedDistanceFigure(residual.distanceMetres, table.unit) : NO_FIGURE,
     residualHours: residual ? signedHoursFigure(residual.originSeconds) : NO_FIGURE,
-    residualInSigmas: residual ? residual.distanceMetres / sigmaMetres : null,
+    residualInSigmas: residual ? residual.distanceMetres / distanceSigmaMetres : null,
     belongs: belongs === null ? NO_FIGURE : probabilityFigure(belongs),
   };
 }

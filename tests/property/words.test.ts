@@ -9,7 +9,7 @@ import { answerWords } from "#lib/presentation/answer-words.ts";
 import { checkWords } from "#lib/presentation/check-words.ts";
 import { areaWords, distanceWords, uncertainDistanceWords } from "#lib/presentation/distances.ts";
 import { figure, percentWords, probabilityFigure, pValueWords, roundedToError, signedFigure, twoLeadingDigits } from "#lib/presentation/figures.ts";
-import { loneRingSigmas } from "#lib/presentation/lone-ring.ts";
+import { ringSigmas } from "#lib/core/source/ring-sigma.ts";
 import { counted, listWords } from "#lib/presentation/numbers-in-words.ts";
 import { positionWords } from "#lib/presentation/positions.ts";
 import { stationRows } from "#lib/presentation/station-rows.ts";
@@ -169,7 +169,7 @@ describe("the answer in words", () => {
   it("gives one station's distance with the whole error, the storm's growth included", () => {
     const alone = solution({ ...ANSWER, outcome: "ring-only", source: null, modes: [], fit: null, stations: [verdict("s1", { residual: null, belongs: null })] }, [sentIn(1_780_400)]);
     expect(words(alone)).toContain("1 780 ± 410 km | 9 Feb 2031 12:00 UTC ± 12 h | Distance only. | One station gives a ring and a time, not a place");
-    const { distanceSigmaMetres, originSigmaSeconds } = loneRingSigmas({ estimate: estimate(1_780_400), settings: DEFAULT_SETTINGS });
+    const { distanceSigmaMetres, originSigmaSeconds } = ringSigmas({ estimate: estimate(1_780_400), settings: DEFAULT_SETTINGS, spreadRaisedBy: 1 });
     // method: own error, 150 km, 4 h per 0.03 Hz by g / 4 pi, 2 % of the distance; and 1 h, 6 h, 4 h per 0.03 Hz at 0.075 Hz.
     expectWithin(distanceSigmaMetres, 1000 * Math.hypot(30, 150, ((4 * HOUR) / 0.03) * (9.80665 / (4 * Math.PI)) * 1e-3, 0.02 * 1780.4), { relative: 1e-9, unit: "m", because: "rounding" });
     expectWithin(originSigmaSeconds, HOUR * Math.hypot(1, 6, (4 / 0.03) * 0.075), { relative: 1e-9, unit: "s", because: "rounding" });
@@ -201,18 +201,18 @@ describe("the checks in words", () => {
 
 describe("the table of stations", () => {
   it("has a row for every station, with figures only where there are any", () => {
-    const rows = stationRows({ stations, excludedIds: ["s3"], solution: solution({ ...ANSWER, stations: [verdict("s1")] }, [sentIn(5_204_000), refused]), spread: DEFAULT_SETTINGS.spread, unit: "km" });
+    const rows = stationRows({ stations, excludedIds: ["s3"], solution: solution({ ...ANSWER, stations: [verdict("s1")] }, [sentIn(5_204_000), refused]), settings: DEFAULT_SETTINGS, unit: "km" });
     expect(rows.map((row) => [row.included, row.refusal !== null, plain(row.ring), plain(row.residualDistance), row.residualHours, row.belongs])).toStrictEqual([
       [true, false, "5 204", "-61", "+1.1", "0.97"],
       [true, true, "–", "–", "–", "–"],
       [false, false, "–", "–", "–", "–"],
     ]);
     // A station just left out, of which the answer before still speaks.
-    const early = stationRows({ stations, excludedIds: ["s1"], solution: solution(ANSWER), spread: DEFAULT_SETTINGS.spread, unit: "km" });
+    const early = stationRows({ stations, excludedIds: ["s1"], solution: solution(ANSWER), settings: DEFAULT_SETTINGS, unit: "km" });
     expect(early.map(({ included, ring }) => [included, plain(ring)])).toStrictEqual([[false, "–"], [true, "5 985"], [true, "3 862"]]);
     const [first] = rows;
-    // The band: own error, 150 km and 2 % of the distance.
-    const sigmaKm = Math.hypot(30, 150, 0.02 * 5204);
+    // The band: own error, 150 km, 2 % of the distance, and a tilt of 4 h per 0.03 Hz.
+    const sigmaKm = Math.hypot(30, 150, 0.02 * 5204, (((4 * 3600) / 0.03) * 9.80665) / (4 * Math.PI) / 1000);
     expect(plain(first?.ringSigma ?? "")).toBe(`± ${sigmaKm.toFixed(0)}`);
     expectWithin(first?.residualInSigmas ?? NaN, -61 / sigmaKm, { relative: 1e-9, unit: "sigma", because: "rounding" });
   });

@@ -40,7 +40,7 @@ async function openEvent(opening: Opening): Promise<(question: Question) => void
   report({ kind: "base-map", baseMap: baseMap(opening.window, topology) });
   const land = buildLandMask(topology);
   const sightTables = opening.settings.sight ? sightOfStations(opening.observations, land) : new Map<string, SightTable>();
-  const drawing = { window: opening.window, spread: opening.settings.spread, sightTables };
+  const drawing = { window: opening.window, settings: opening.settings, sightTables };
   let shown = opening.solution;
 
   const show = (ask: number, solution: EventSolution): void => {

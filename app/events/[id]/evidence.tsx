@@ -24,7 +24,7 @@ export function Evidence(props: {
   const warnings = warningsToSay(props.solution);
   return (
     <section className={styles.evidence} aria-label="Evidence">
-      <StationTable {...props} spread={props.settings.spread} />
+      <StationTable {...props} />
       {answer !== null && <Checks {...props} answer={answer} />}
       {answer !== null && <Places answer={answer} />}
       {warnings.length > 0 && (

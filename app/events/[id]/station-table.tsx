@@ -1,5 +1,5 @@
 import type { NumberedStation } from "#lib/core/arrival/numbered-stations.ts";
-import type { SpreadSettings } from "#lib/core/source/settings.ts";
+import type { EstimationSettings } from "#lib/core/source/settings.ts";
 import type { EventSolution } from "#lib/core/source/solution.ts";
 import { distanceUnitName, type DistanceUnit } from "#lib/presentation/distances.ts";
 import { stationRows, type StationRow } from "#lib/presentation/station-rows.ts";
@@ -12,7 +12,7 @@ export function StationTable(props: {
   stations: readonly NumberedStation[];
   unit: DistanceUnit;
   view: EventView;
-  spread: SpreadSettings;
+  settings: EstimationSettings;
   onInclude: (id: string, included: boolean) => void;
   onFocus: (id: string) => void;
 }) {

@@ -1,5 +1,4 @@
 import { fitDispersionLine, type LineSettings } from "../arrival/dispersion-line.ts";
-import type { DispersionLine } from "../arrival/line.ts";
 import type { Reading } from "../arrival/reading.ts";
 import { geodesicInverse } from "../geodesy/geodesic.ts";
 import { factorise, invertFactored } from "../statistics/cholesky.ts";
@@ -20,7 +19,8 @@ const SIGNIFICANT_BELOW = 0.01;
  * Did low and high frequencies come from one place? The event is solved from the lower half of every station's
  * readings and from the upper half; where the two places and times differ by more than the readings' own errors
  * explain (chi-square of three, p < 0.01), the storm moved or lived long. The model spread is common to both halves
- * and drops out of their difference, save where the halves weigh the stations differently.
+ * and drops out of their difference, save where the halves weigh the stations differently. Periods timed at a moment
+ * are left out: their line is corrected as a whole, about the swell's peak, and its halves would part by that alone.
  * Null where fewer than two stations have readings enough.
  */
 export function driftBetweenHalves(arrivals: readonly StationArrival[], options: NetworkOptions, peak: Peak): SourceAnswer["drift"] {
@@ -43,8 +43,9 @@ export function driftBetweenHalves(arrivals: readonly StationArrival[], options:
 }
 
 function halvesOf(arrival: StationArrival, settings: LineSettings): { low: StationArrival; high: StationArrival } | null {
-  if (arrival.readings.length < LEAST_READINGS) return null;
-  const ordered = [...arrival.readings].sort((a, b) => a.frequencyHz - b.frequencyHz || a.row - b.row);
+  const ridge = arrival.readings.filter((reading) => reading.kind === "ridge");
+  if (ridge.length < LEAST_READINGS) return null;
+  const ordered = ridge.sort((a, b) => a.frequencyHz - b.frequencyHz || a.row - b.row);
   const middle = Math.ceil(ordered.length / 2);
   const low = withReadings(arrival, ordered.slice(0, middle), settings);
   const high = withReadings(arrival, ordered.slice(ordered.length - middle), settings);
@@ -53,18 +54,7 @@ function halvesOf(arrival: StationArrival, settings: LineSettings): { low: Stati
 
 function withReadings(arrival: StationArrival, readings: readonly Reading[], settings: LineSettings): StationArrival | null {
   const outcome = fitDispersionLine(readings, settings);
-  return outcome.kind === "fitted" ? { ...arrival, readings, estimate: withoutShared(widenedForScatter(outcome.line)) } : null;
-}
-
-/** What both halves share cannot tell them apart. */
-function withoutShared(line: DispersionLine): DispersionLine {
-  let { distanceVariance, originVariance, distanceOriginCovariance } = line.covariance;
-  for (const shift of line.sharedShifts) {
-    distanceVariance -= shift.distanceMetres ** 2;
-    originVariance -= shift.originSeconds ** 2;
-    distanceOriginCovariance -= shift.distanceMetres * shift.originSeconds;
-  }
-  return { ...line, sharedShifts: [], bearing: null, covariance: { distanceVariance, originVariance, distanceOriginCovariance } };
+  return outcome.kind === "fitted" ? { ...arrival, readings, estimate: { ...widenedForScatter(outcome.line), bearing: null } } : null;
 }
 
 interface HalfSolution {

@@ -1,18 +1,22 @@
 import type { ArrivalEstimate } from "../arrival/estimate.ts";
-import type { SpreadSettings } from "./settings.ts";
+import { addOwnSpread, steadyCovariance } from "./joint-covariance.ts";
+import type { EstimationSettings } from "./settings.ts";
 
 /**
- * Half the width of a station's band (m, 1 sigma): its own error of distance, and how far the storm's size and life
- * let one station's ring lie from the storm's middle,
- *   (1)  sigma^2 = var(L) + a^2 (d^2 + (k L)^2)
- * with d the spread of distance, k the spread of scale and a the factor by which the misfit raised them.
+ * The errors (1 sigma) of one station's distance and time where no other station bears them out: those of its readings
+ * with the whole model spread, raised as the misfit raised it. Half the width of a band is the distance's. The part
+ * that stations share, which drops out of a comparison between them, is in it: a storm that grows or fades shifts one
+ * station's ring by as much as it shifts all.
  */
-export function ringSigmaMetres(ring: {
-  estimate: ArrivalEstimate;
-  spread: SpreadSettings;
-  spreadRaisedBy: number;
-}): number {
-  const { estimate, spread, spreadRaisedBy } = ring;
-  const model = Math.hypot(spread.distanceMetres, spread.scaleFraction * estimate.distanceMetres) * spreadRaisedBy;
-  return Math.hypot(Math.sqrt(estimate.covariance.distanceVariance), model); // (1)
+export function ringSigmas({ estimate, settings, spreadRaisedBy }: {
+  readonly estimate: ArrivalEstimate;
+  readonly settings: EstimationSettings;
+  readonly spreadRaisedBy: number;
+}): { distanceSigmaMetres: number; originSigmaSeconds: number } {
+  const position = { latitudeDegrees: 0, longitudeDegrees: 0 };
+  const alone = { id: "", position, estimate, readings: [], exposure: null, sight: null };
+  const spreadVarianceFactor = spreadRaisedBy ** 2;
+  const covariance = steadyCovariance([alone], settings, spreadVarianceFactor);
+  addOwnSpread(covariance, null, { size: 1, settings, spreadVarianceFactor });
+  return { distanceSigmaMetres: Math.sqrt(covariance[0] ?? NaN), originSigmaSeconds: Math.sqrt(covariance[3] ?? NaN) };
 }
