@@ -1,19 +1,14 @@
 import { readdirSync, readFileSync } from "node:fs";
-import { join } from "node:path";
 import { expect, test } from "vitest";
 import { DEFAULT_PUBLIC_SETTINGS } from "#lib/contracts/settings.ts";
-import { runOffing } from "#tests/support/run-offing.ts";
+import { workedCalls } from "#tests/support/readme-calls.ts";
 
 const README = readFileSync("README.md", "utf8");
-const CALL = /```sh\nnpm run --silent offing -- (.+)\n```\n\n```text\n([^`]*)```/g;
 
-test("the worked calls of README.md print what it says they print", () => {
-  const calls = [...README.matchAll(CALL)].map(([, args = "", printed]) => ({ args: args.split(" "), printed }));
+test("the worked calls of README.md print what it says they print; npm run readme:calls writes them anew", () => {
+  const calls = workedCalls(README);
   expect(calls.map(({ args }) => args[0])).toStrictEqual(["fit", "locate"]);
-  for (const { args, printed } of calls) {
-    const run = runOffing({ args: args.map((word) => (word.startsWith("fixtures/") ? join(process.cwd(), word) : word)) });
-    expect(run.out).toBe(printed);
-  }
+  for (const { said, printed } of calls) expect(said).toBe(printed);
 });
 
 test("README.md names every script that a reader is sent to, and every setting", () => {
