@@ -232,6 +232,17 @@ describe("what can be said", () => {
     }
   });
 
+  it("of two clocks a day apart is not whose is wrong, and of one that is a day slow that it is slow", () => {
+    const dayOut = (count: number, days: number) =>
+      placed(exactArrivals({ stations: [...stations, { id: "d", position: at(58.3, -134.4) }, { id: "e", position: at(-9.4, 147.2) }].slice(0, count), storm, distanceFraction: 0.02, originSigmaSeconds: 7200 }).map((arrival, i) =>
+        i === 1 ? { ...arrival, originEpochSeconds: arrival.originEpochSeconds + days * 86_400 } : arrival,
+      )).stations.map(({ clockOffset }) => clockOffset?.offsetSeconds ?? null);
+    expect(dayOut(2, 1)).toEqual([null, null]);
+    const [first, second = null, ...others] = dayOut(5, -1);
+    expect([first, ...others]).toEqual([null, null, null, null]);
+    expectWithin(second ?? NaN, -86_400, seconds(60, "the other four are exact"));
+  });
+
   it("of a clock that is a day fast names it, sets its time aside and keeps its distance", () => {
     const wide = [...stations, { id: "d", position: at(58.3, -134.4) }, { id: "e", position: at(-9.4, 147.2) }];
     const exact = exactArrivals({ stations: wide, storm, distanceFraction: 0.02, originSigmaSeconds: 7200 });
@@ -262,15 +273,16 @@ describe("what can be said", () => {
   it("of a storm that moved between low and high frequencies is that it moved, and of one that stood that it did not", () => {
     const [low, high] = [storm, pointAlong(storm, { distanceMetres: 700_000, headsTowardDegrees: 70 })];
     const frequencies = Array.from({ length: 16 }, (_, i) => 0.045 + 0.0025 * i);
-    const eventOf = (later: Position, hours: number) => {
+    const eventOf = (later: Position, hours: number, told: { readonly kind?: "timed"; readonly backward?: boolean } = {}) => {
       const readings = stations.flatMap(({ id, position }) =>
         frequencies.map((frequencyHz, i) => {
           const distanceMetres = missOf(i < 8 ? low : later, position);
           const arrivalEpochSeconds = STORM_EPOCH_SECONDS + (i < 8 ? 0 : 3600 * hours) + travelSeconds({ frequencyHz, distanceMetres });
-          return ridgeReading({ stationId: id, frequencyHz, arrivalEpochSeconds });
+          const { stationId, reading } = ridgeReading({ stationId: id, frequencyHz, arrivalEpochSeconds });
+          return { stationId, reading: { ...reading, kind: told.kind ?? reading.kind } };
         }),
       );
-      return answerOf(observationsOf(stations, readings), DEFAULT_SETTINGS, true).drift;
+      return answerOf(observationsOf(stations, told.backward ? readings.reverse() : readings), DEFAULT_SETTINGS, true).drift;
     };
     expect(eventOf(low, 0)).toMatchObject({ significant: false });
     expectWithin(eventOf(low, 0)?.shiftMetres ?? NaN, 0, metres(50, "exact readings"));
@@ -278,6 +290,8 @@ describe("what can be said", () => {
     expect(drift?.significant).toBe(true);
     expectWithin(drift?.shiftMetres ?? NaN, 700_000, metres(1000, "each half is exact"));
     expectWithin(drift?.shiftSeconds ?? NaN, 30 * 3600, seconds(60, "each half is exact"));
+    expectWithin(eventOf(high, 30, { backward: true })?.shiftMetres ?? NaN, drift?.shiftMetres ?? NaN, metres(1, "halves go by frequency, not by row"));
+    expect(eventOf(high, 30, { kind: "timed" })).toBeNull(); // their line is corrected as a whole
     expect(answerOf(statedObservations(exactArrivals({ stations, storm })), DEFAULT_SETTINGS, true).drift).toBeNull();
   });
 });

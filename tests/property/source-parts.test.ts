@@ -3,6 +3,8 @@ import { describe, expect, it } from "vitest";
 import { fitDispersionLine } from "#lib/core/arrival/dispersion-line.ts";
 import type { ArrivalEstimate } from "#lib/core/arrival/estimate.ts";
 import { straySets } from "#lib/core/source/belonging.ts";
+import { planSubsets } from "#lib/core/source/conditioned.ts";
+import { findPeaks } from "#lib/core/source/find-peaks.ts";
 import { areaOf, centreOf, spacingMetres } from "#lib/core/source/grid.ts";
 import { steadyCovariance } from "#lib/core/source/joint-covariance.ts";
 import { modesOf, type Mode } from "#lib/core/source/modes.ts";
@@ -116,7 +118,8 @@ describe("the cells of a search", () => {
     const sent = statedObservations(exactArrivals({ stations, storm: at(42, 160), distanceFraction: 0.03 / narrower })).estimates;
     const arrivals = sent.map(({ stationId, estimate: stated }, i) => ({ id: stationId, position: stations[i]?.position ?? at(0, 0), estimate: stated, readings: [], exposure: null, sight: null }));
     const network = networkOf(arrivals, { settings: { ...DEFAULT_SETTINGS, spread: narrow } });
-    return searchOcean({ network, sets: straySets(3), land: null });
+    const sets = straySets(3);
+    return searchOcean({ network, sets, land: null }, findPeaks(network, planSubsets(network, sets)));
   };
 
   it.each([[1, 3], [2, 4], [4, 5], [8, 5]])("are a hundred and more in the 95 %% region, and fine beside its axes: %d times narrower", (narrower, least) => {
