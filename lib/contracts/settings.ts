@@ -2,11 +2,8 @@ import * as z from "zod/mini";
 import { InputError } from "#lib/core/failures/input-error.ts";
 import type { InputIssue } from "#lib/core/failures/input-error.ts";
 
-const number = (range: { above?: number; from?: number; to?: number; below?: number }) =>
-  z.number().check(
-    range.above === undefined ? z.gte(range.from ?? 0) : z.gt(range.above),
-    range.below === undefined ? z.lte(range.to ?? Infinity) : z.lt(range.below),
-  );
+const number = (range: { above?: number; from?: number; to: number }) =>
+  z.number().check(range.above === undefined ? z.gte(range.from ?? 0) : z.gt(range.above), z.lte(range.to));
 
 /**
  * What a person may set, in the units of files and screens. `tiltHours` is the standard deviation of the time by
@@ -23,8 +20,7 @@ const settingsShape = z.strictObject({
     tiltHours: number({ from: 0, to: 240 }),
     scaleFraction: number({ from: 0, to: 0.5 }),
   }),
-  // Nobody is certain before looking: at 1 one stray station would leave no answer at all.
-  belongPrior: number({ above: 0, below: 1 }),
+  belongPrior: number({ above: 0, to: 1 }),
   sight: z.boolean(),
   timed: z.strictObject({
     durationHours: number({ from: 0, to: 240 }),

@@ -32,7 +32,6 @@ describe("settings", () => {
     ["null", { gravity: null }, /^S\.json, gravity: found null; wanted a number\.$/],
     ["a list", [], /^S\.json: found \[\]; wanted an object of settings\.$/],
     ["a negative spread", { spread: { distanceKm: -1 } }, /^S\.json, spread\.distanceKm: found -1; wanted a number of at least 0\.$/],
-    ["certainty before looking", { belongPrior: 1 }, /^S\.json, belongPrior: found 1; wanted a number below 1\.$/],
     ["a correlation above one", { spread: { sharedCorrelation: 1.5 } }, /^S\.json, spread\.sharedCorrelation: found 1\.5; wanted a number of at most 1\.$/],
     ["a scale of zero", { spread: { azimuthScaleDegrees: 0 } }, /azimuthScaleDegrees: found 0; wanted a number above 0\.$/],
     ["a band the wrong way round", { band: { lowHz: 0.2 } }, /^S\.json, band: found 0\.2 to 0\.12 Hz; wanted lowHz below highHz\.$/],

@@ -42,6 +42,45 @@ function arrivalsAbout(storm: Position, factor = 1): StatedArrival[] {
 const moved = (arrivals: readonly StatedArrival[], move: (position: Position) => Position) => arrivals.map((arrival) => ({ ...arrival, position: move(arrival.position) }));
 const plain = placed(arrivalsAbout(at(20, -150)));
 
+/** Two dozen stations all round a storm, every sixth of which heard another, days later and elsewhere. */
+function manyArrivals(strays: (i: number) => boolean): StatedArrival[] {
+  const storm = at(-40, -150);
+  const stations = Array.from({ length: 24 }, (_, i) => ({ id: `s${String(i).padStart(2, "0")}`, position: pointAlong(storm, { headsTowardDegrees: 15 * i, distanceMetres: 3e6 + 3e5 * i }) }));
+  return exactArrivals({ stations, storm }).map((arrival, i) =>
+    strays(i) ? { ...arrival, distanceMetres: 14e6 - 2e5 * i, originEpochSeconds: arrival.originEpochSeconds + 86_400 * (4 + i / 6) } : arrival,
+  );
+}
+
+describe("many stations", () => {
+  it("are told apart from the strays among them, none of which then moves the answer", () => {
+    const arrivals = manyArrivals((i) => i % 6 === 0);
+    const answer = answerOf(statedObservations(arrivals), DEFAULT_SETTINGS, true);
+    expect(answer.outcome).toBe("located");
+    expect(answer.stations.flatMap(({ id, belongs }) => ((belongs ?? NaN) < 0.5 ? [id] : []))).toEqual(["s00", "s06", "s12", "s18"]);
+    for (const { leaveOneOutShiftMetres } of answer.stations) expect(leaveOneOutShiftMetres).toBeLessThan(20_000);
+  });
+
+  it("that tell of as many storms do not agree", () => {
+    const scattered = manyArrivals(() => false).map((arrival, i) => ({ ...arrival, originEpochSeconds: arrival.originEpochSeconds + 4e5 * ((7 * i) % 24) }));
+    expect(placed(scattered).outcome).toBe("no-agreement");
+  });
+
+  it("all belong where that is certain beforehand", () => {
+    const answer = answerOf(statedObservations(arrivalsAbout(at(20, -150))), { ...DEFAULT_SETTINGS, belongPrior: 1 });
+    expect(answer.outcome).toBe("located");
+    for (const { belongs } of answer.stations) expect(belongs).toBeGreaterThan(1 - 1e-9);
+  });
+
+  it("keep the p-value of the spread as set where their misfit raised it", () => {
+    const out = manyArrivals(() => false)
+      .filter((_, i) => i % 4 === 0)
+      .map((arrival, i) => ({ ...arrival, originEpochSeconds: arrival.originEpochSeconds + 3600 * (i % 2 === 0 ? -16 : 16) }));
+    const answer = placed(out);
+    expect(answer.spreadRaisedBy).toBeGreaterThan(1);
+    expect(answer.fit?.pValue).toBeLessThan(0.05);
+  });
+});
+
 describe("a source", () => {
   it.each([30, 90.5, 150, 211, -29.7])("goes round the Earth with its stations, by %d degrees", (turn) => {
     const turned = (position: Position) => ({ ...position, longitudeDegrees: wrapLongitudeDegrees(position.longitudeDegrees + turn) });

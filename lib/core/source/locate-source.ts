@@ -2,8 +2,8 @@ import { geodesicInverse } from "../geodesy/geodesic.ts";
 import { HALF_GIRTH_METRES } from "../geodesy/earth.ts";
 import type { LandMask } from "../geodesy/land-mask.ts";
 import { ringCrossings } from "../geodesy/ring-crossings.ts";
-import { agreementProbability } from "./agreement.ts";
-import type { ConfidenceRegion, SourceAnswer, SourceOutcome, StationArrival, StationVerdict } from "./answer.ts";
+import { agreementAtPeaks, agreementProbability } from "./agreement.ts";
+import type { ConfidenceRegion, PossibleSource, SourceAnswer, SourceOutcome, StationArrival, StationVerdict } from "./answer.ts";
 import { driftBetweenHalves } from "./drift-check.ts";
 import { fitAtPeak, type FitAtPeak } from "./fit-at-peak.ts";
 import { leaveOneOutShifts } from "./leave-one-out.ts";
@@ -27,6 +27,8 @@ export interface LocateOptions {
 const REGION_PROBABILITIES = [0.5, 0.9, 0.95] as const;
 /** The best source stands alone where it holds this much of the probability. */
 const ALONE_PROBABILITY = 0.95;
+/** Where no peak comes near to agreeing, the ocean is not searched for more. */
+const HOPELESS_AGREEMENT = 1e-4;
 /** Stations nearer to one another, or to one another's antipode, than this tell one ring between them. */
 const ONE_PLACE_METRES = 50_000;
 
@@ -42,17 +44,18 @@ export function locateSource(arrivals: readonly StationArrival[], options: Locat
   const sorted = [...arrivals].sort((a, b) => (a.id < b.id ? -1 : 1));
   const prepared = prepareNetwork(sorted, options);
   const input: SearchInput = { network: prepared.network, sets: prepared.sets, land: options.land };
-  const posterior = searchOcean(input, prepared.peaks);
   const crossings = pairwiseCrossings(arrivals);
+  if (sorted.length > 1 && agreementAtPeaks(prepared.network, prepared.peaks) < HOPELESS_AGREEMENT) {
+    return unplaced({ outcome: standAtOnePlace(sorted) ? "too-few" : "no-agreement", arrivals, regions: [], crossings });
+  }
+  const posterior = searchOcean(input, prepared.peaks);
   const regions = REGION_PROBABILITIES.map((probability) => regionHolding(posterior, probability));
   const placed = sorted.length > 1 ? placePossibleSources(input, posterior) : [];
-  const main = placed[0];
+  const [main] = placed;
   const outcome = outcomeOf(prepared.network, posterior, placed);
-  if (!main || (outcome !== "located" && outcome !== "several")) {
-    return unplaced({ outcome, arrivals, regions, crossings });
-  }
+  if (!main || (outcome !== "located" && outcome !== "several")) return unplaced({ outcome, arrivals, regions, crossings });
 
-  const fit = fitAtPeak(input, main, belongingOver(posterior, sorted.length));
+  const fit = fitAtPeak(input, main, belongingOver(posterior, sorted.length), prepared.clocksSetAside);
   const verdicts = verdictsOf({ input, main, fit, prepared, checks: options.checks !== false });
   const answer: Omit<SourceAnswer, "warnings"> = {
     outcome,
@@ -64,11 +67,7 @@ export function locateSource(arrivals: readonly StationArrival[], options: Locat
       bestInWater: main.bestInWater,
     },
     regions,
-    modes: placed.map(({ mode, position, originSeconds }) => ({
-      probability: mode.probability,
-      position,
-      originEpochSeconds: input.network.zeroEpochSeconds + originSeconds,
-    })),
+    modes: placed.map((source) => possibleSource(input.network, source)),
     ruledOut: whatIsRuledOut(input, posterior, placed),
     stations: arrivals.flatMap((arrival) => verdicts.get(arrival.id) ?? []),
     crossings,
@@ -77,6 +76,10 @@ export function locateSource(arrivals: readonly StationArrival[], options: Locat
     spreadRaisedBy: Math.sqrt(prepared.network.spreadVarianceFactor),
   };
   return { ...answer, warnings: answerWarnings(answer, arrivals) };
+}
+
+function possibleSource({ zeroEpochSeconds }: Network, { mode, position, originSeconds }: PlacedMode): PossibleSource {
+  return { probability: mode.probability, position, originEpochSeconds: zeroEpochSeconds + originSeconds };
 }
 
 function regionHolding(posterior: Posterior, probability: number): ConfidenceRegion {

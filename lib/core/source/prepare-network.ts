@@ -13,6 +13,7 @@ const ASKS_BELOW = 0.05;
 const LEAST_STATIONS = 4;
 const MOST_VARIANCE_FACTOR = 16;
 const BISECTIONS = 24;
+const MOST_ROUNDS = 6;
 
 export interface Prepared {
   readonly network: Network;
@@ -20,8 +21,8 @@ export interface Prepared {
   readonly options: NetworkOptions;
   readonly clock: ClockOffset | null;
   readonly clocksSetAside: ReadonlySet<string>;
-  /** The free peaks, where the network they were found for is still the one to be searched. */
-  readonly peaks: readonly Peak[] | undefined;
+  /** The free peaks of the network. */
+  readonly peaks: readonly Peak[];
 }
 
 /**
@@ -31,15 +32,8 @@ export interface Prepared {
 export function prepareNetwork(arrivals: readonly StationArrival[], { settings }: { settings: EstimationSettings }): Prepared {
   const plain: NetworkOptions = { settings };
   let network = networkOf(arrivals, plain);
-  let sets: readonly StraySet[] = straySets(network.size);
-  let peaks = network.size < 2 ? [] : findPeaks(network, planSubsets(network, sets));
-  let peak = peaks[0] ?? null;
-  const around = straySets(network.size, peak ? [strayAt(peak)] : []);
-  if (around.length > sets.length) {
-    sets = around;
-    peaks = findPeaks(network, planSubsets(network, sets));
-    peak = peaks[0] ?? null;
-  }
+  const { sets, peaks } = searchedSubsets(network);
+  let peak = network.size < 2 ? null : (peaks[0] ?? null);
   let clock = peak ? suspectClock(network, peak) : null;
   let options = plain;
   if (peak && clock) {
@@ -55,7 +49,29 @@ export function prepareNetwork(arrivals: readonly StationArrival[], { settings }
     options = { ...options, spreadVarianceFactor: raised };
     network = networkOf(arrivals, options);
   }
-  return { network, sets, options, clock, clocksSetAside: options.clocksSetAside ?? new Set(), peaks: options === plain && network.size > 1 ? peaks : undefined };
+  const found = options === plain ? peaks : findPeaks(network, planSubsets(network, sets));
+  return { network, sets, options, clock, clocksSetAside: options.clocksSetAside ?? new Set(), peaks: found };
+}
+
+/**
+ * The subsets about everyone and about the best one found, searched again until that is the one they were laid about;
+ * at most so often as a few bad stations among many need. Stations of which most do not belong have no best one.
+ */
+function searchedSubsets(network: Network): { sets: readonly StraySet[]; peaks: readonly Peak[] } {
+  let sets = straySets(network.size);
+  let peaks = findPeaks(network, planSubsets(network, sets));
+  for (let round = 0; round < MOST_ROUNDS; round++) {
+    const best = peaks[0] ? strayAt(peaks[0]) : [];
+    const around = straySets(network.size, [best]);
+    if (2 * best.length > network.size || around.every((set) => sets.some((known) => isDeepEqual(known, set)))) break;
+    sets = around;
+    peaks = findPeaks(network, planSubsets(network, sets));
+  }
+  return { sets, peaks };
+}
+
+function isDeepEqual(first: StraySet, second: StraySet): boolean {
+  return first.length === second.length && first.every((station, i) => station === second[i]);
 }
 
 function strayAt(peak: Peak): StraySet {

@@ -4,7 +4,6 @@ import { assess, blankAssessment, type Assessment } from "./assess.ts";
 import type { StraySet } from "./belonging.ts";
 import { boundAbove, type Floors } from "./bound.ts";
 import { conditionAt, narrowed, planSubsets, type Conditioned, type SubsetPlan } from "./conditioned.ts";
-import { findPeaks } from "./find-peaks.ts";
 import { areaOf, centreOf, childrenOf, firstCells, FIRST_LEVEL, LAST_LEVEL, reachMetres, spacingMetres } from "./grid.ts";
 import { neighbourFinder, type NeighboursOf } from "./neighbours.ts";
 import type { Network } from "./network.ts";
@@ -72,10 +71,9 @@ interface Quest {
 /**
  * The posterior over the ocean on H3 cells: from 842 cells down, keeping every cell in which a bound leaves room for
  * density, until the spacing is at most half the smallest 1-sigma axis and 100 cells lie in the 95 % region.
- * `known`: the network's free peaks, where they have been found already. [source: tarantola-valette-1982, h3]
+ * `peaks`: the network's free peaks, best first. [source: tarantola-valette-1982, h3]
  */
-export function searchOcean({ network, sets, land }: SearchInput, known?: readonly Peak[]): Posterior {
-  const peaks = known ?? findPeaks(network, planSubsets(network, sets));
+export function searchOcean({ network, sets, land }: SearchInput, peaks: readonly Peak[]): Posterior {
   const heldFloor = Math.max(-Infinity, ...peaks.map((peak) => heldAt(peak, land)));
   const freeFloor = Math.max(-Infinity, ...peaks.map((peak) => peak.logFree));
   const start = planSubsets(network, weighty(peaks, sets, heldFloor));
