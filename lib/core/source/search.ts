@@ -21,7 +21,7 @@ const FAINT_SUBSET = 10;
 /** Level from which cells share one covariance with all their descendants: within 250 km azimuths turn little. */
 const COVARIANCE_LEVEL = 2;
 /** No answer stops coarser than this. */
-const LEAST_LEVEL = 3;
+const LEAST_LEVEL = 4;
 /** Peaks this far below the best do not ask for finer cells. */
 const FAINT_PEAK = 6;
 const LEAST_CELLS_IN_REGION = 100;
