@@ -100,11 +100,9 @@ describe("the bound of the density about a place", () => {
         return Array.from({ length: 6 }, (___, place) => {
           const distanceMetres = reachMetres(level) * (place < 3 ? 1 : Math.sqrt(random.uniform()));
           const position = pointAlong(centre, { distanceMetres, headsTowardDegrees: random.between(0, 360) });
-          const own = weightAt(network, conditioned(network, exactSite(network, position).azimuths, plan), position);
-          const shared = apart ? own : weightAt(network, used, position);
-          const most = Math.max(own.logFree, shared.logFree);
-          const bySubset = Math.min(...own.logs.map((log, s) => (bound.bySubsetFree[s] ?? NaN) - log));
-          return { level, apart, free: bound.logFree - most, held: bound.logHeld - Math.max(own.logHeld, shared.logHeld), bySubset };
+          const weight = weightAt(network, apart ? conditioned(network, exactSite(network, position).azimuths, plan) : used, position);
+          const bySubset = Math.min(...weight.logs.map((log, s) => (bound.bySubsetFree[s] ?? NaN) - log));
+          return { level, apart, free: bound.logFree - weight.logFree, held: bound.logHeld - weight.logHeld, bySubset };
         });
       });
     }).flat(2);

@@ -143,7 +143,7 @@ describe("an event's layers", () => {
       ],
       answer: {
         outcome: "several",
-        source: { position: at(-50, -170), originEpochSeconds: 0, originSigmaSeconds: 1, onLand: false, bestInWater: null },
+        source: { position: at(-50, -170), originEpochSeconds: 0, originSigmaSeconds: 1, atPeak: true, onLand: false, bestInWater: null },
         regions: [0.5, 0.95, 0.9].map((probability) => ({ probability, areaSquareMetres: 1, geometry })),
         modes: [{ probability: 1, position: at(-50, -170), originEpochSeconds: 0 }],
         ruledOut: [{ position: at(10, -179), reason: "land" }],

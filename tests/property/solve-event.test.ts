@@ -81,6 +81,30 @@ describe("many stations", () => {
   });
 });
 
+describe("stations that measure directions", () => {
+  /** Exact distances and times, and the true directions off by so much. */
+  const directed = (count: number, offDegrees: number): StatedArrival[] => {
+    const storm = at(-45, -165);
+    const stations = Array.from({ length: count }, (_, i) => ({ id: `s${i}`, position: pointAlong(storm, { headsTowardDegrees: 100 + 12 * i, distanceMetres: 6e6 + 4e5 * i }) }));
+    return exactArrivals({ stations, storm }).map((arrival) => ({
+      ...arrival,
+      bearing: { comesFromDegrees: legBetween(arrival.position, storm).headsTowardDegrees + offDegrees, sigmaDegrees: 15 },
+    }));
+  };
+  it.each([2, 3, 4, 6, 8, 14])("agree with their distances: %d of them", (count) => {
+    const answer = placed(directed(count, 0));
+    expect(answer.outcome).toBe("located");
+    expectWithin(missOf(answer.source?.position, at(-45, -165)), 0, metres(1000, "directions on the mean sphere"));
+  });
+
+  it("draw the best point to where the whole density is highest, from wherever the climb starts", () => {
+    const answer = answerOf(statedObservations(directed(5, 8)), DEFAULT_SETTINGS, true);
+    const shifts = answer.stations.map(({ leaveOneOutShiftMetres }) => leaveOneOutShiftMetres ?? NaN);
+    expect(missOf(answer.source?.position, at(-45, -165))).toBeGreaterThan(20_000);
+    for (const shift of shifts) expect(shift).toBeGreaterThan(1000); // each station draws
+  });
+});
+
 describe("a source", () => {
   it.each([30, 90.5, 150, 211, -29.7])("goes round the Earth with its stations, by %d degrees", (turn) => {
     const turned = (position: Position) => ({ ...position, longitudeDegrees: wrapLongitudeDegrees(position.longitudeDegrees + turn) });

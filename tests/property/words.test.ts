@@ -121,7 +121,7 @@ const verdict = (id: string, more: Partial<StationVerdict> = {}): StationVerdict
 });
 const ANSWER: SourceAnswer = {
   outcome: "located",
-  source: { position, originEpochSeconds: NOON + 900, originSigmaSeconds: 4 * HOUR, onLand: false, bestInWater: null },
+  source: { position, originEpochSeconds: NOON + 900, originSigmaSeconds: 4 * HOUR, atPeak: true, onLand: false, bestInWater: null },
   regions: [0.5, 0.9, 0.95].map((probability) => ({ probability, areaSquareMetres: probability * 4e11, geometry: { type: "MultiPolygon", coordinates: [] } })),
   modes: [{ probability: 1, position, originEpochSeconds: NOON }],
   ruledOut: [],
@@ -157,7 +157,7 @@ describe("the answer in words", () => {
   });
 
   it("says where the best point in water is when the best point lies on land", () => {
-    const ashore: SourceAnswer = { ...ANSWER, source: { position, originEpochSeconds: NOON, originSigmaSeconds: HOUR, onLand: true, bestInWater: { latitudeDegrees: 42, longitudeDegrees: 170 } } };
+    const ashore: SourceAnswer = { ...ANSWER, source: { position, originEpochSeconds: NOON, originSigmaSeconds: HOUR, atPeak: true, onLand: true, bestInWater: { latitudeDegrees: 42, longitudeDegrees: 170 } } };
     expect(words(solution(ashore))).toContain("The most probable point lies on land; the best one in water is 42.0° N 170.0° E.");
   });
 

@@ -21,6 +21,9 @@ function outcomeWarnings({ outcome, modes }: Omit<SourceAnswer, "warnings">): An
 }
 
 function landWarnings({ source }: Omit<SourceAnswer, "warnings">): AnswerWarning[] {
+  if (source && !source.atPeak) {
+    return [{ code: "source-displaced", message: "Land, sight or exposure keeps the source from where the rings meet best. It stands at the densest place that is left, to the nearest cell of the search; leaving stations out and drift were not tried there." }];
+  }
   if (!source?.onLand) return [];
   return [{ code: "source-on-land", message: "The best point lies on land; it is given as it was found, with the best point in the water beside it." }];
 }

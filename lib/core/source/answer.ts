@@ -57,6 +57,8 @@ export interface SourceAnswer {
     readonly position: Position;
     readonly originEpochSeconds: number;
     readonly originSigmaSeconds: number;
+    /** False where land, sight or exposure keeps the best point from where rings and directions would put it. */
+    readonly atPeak: boolean;
     readonly onLand: boolean;
     /** The best point in water, where the best point of all lies on land. */
     readonly bestInWater: Position | null;

@@ -2,7 +2,7 @@ import { MEAN_RADIUS_METRES } from "../geodesy/earth.ts";
 import type { Assessment } from "./assess.ts";
 import type { Conditioned } from "./conditioned.ts";
 import { visibleFraction } from "../geodesy/sight-table.ts";
-import { DISC_RADIUS_METRES, SIGHT_FLOOR, termsOf, type Site, type StationTerms } from "./site.ts";
+import { DISC_RADIUS_METRES, mostFromBearings, SIGHT_FLOOR, termsOf, type Site, type StationTerms } from "./site.ts";
 import { belongingTerm, logSum } from "./weigh.ts";
 
 /** Bounds of the log density, and of each subset's part in it, land disregarded and held against it. */
@@ -19,7 +19,10 @@ export interface Surroundings {
   readonly site: Site;
   readonly assessment: Assessment;
   readonly reachMetres: number;
-  /** True where `conditioned` takes the stations as seeing different parts of the storm, false where it is the site's own. */
+  /**
+   * True where `conditioned` takes the stations as seeing different parts of the storm and every place has a covariance
+   * of its own, false where `conditioned` serves all places within the reach.
+   */
   readonly apart: boolean;
 }
 
@@ -36,8 +39,8 @@ export interface Floors {
  * Every subset's misfit is a squared norm of the residuals, so within the reach it is at least
  *   (1)  (|u| - r sqrt(lambda) - k)^2 / (1 + turn)
  * lambda: largest eigenvalue of the whole network's information on the position (a subset knows no more);
- * k: what the circles' curvature adds to the straight-line change of the distances, against the spread's
- * uncorrelated share; turn: how much the covariance can grow from the one used, as azimuths turn.
+ * k: what the circles' curvature adds to the straight-line change of the distances, against what the stations do not
+ * share; turn: how much the covariance can grow from the one used, as azimuths turn.
  * A disc that a station sees nothing of holds no smaller disc that it sees, so sight is bounded as well.
  * The determinant of a subset of b stations falls to no less than `least`^(2b) of its own.
  */
@@ -58,11 +61,9 @@ export function boundAbove(floors: Floors, surroundings: Surroundings): Bound | 
 function freeBounds(surroundings: Surroundings): Float64Array {
   const { conditioned, site, assessment, reachMetres } = surroundings;
   const { network, plan } = conditioned;
-  const { distanceMetres, sharedCorrelation } = network.settings.spread;
-  const uncorrelated = distanceMetres * Math.sqrt(network.spreadVarianceFactor * (1 - sharedCorrelation));
-  const { turn, least } = turnOf(surroundings);
-  const slack = reachMetres * Math.sqrt(largestInformation(conditioned, site)) + curvatureMetres(site, reachMetres) / uncorrelated;
-  const room = bearingGain(conditioned);
+  const { turn, least } = surroundings.apart ? turnOf(surroundings) : { turn: 0, least: 1 };
+  const slack = reachMetres * Math.sqrt(largestInformation(conditioned, site)) + curvatureMetres(site, reachMetres) / network.firmness.distanceMetres;
+  const room = mostFromBearings(network);
   const logs = new Float64Array(plan.sets.length);
   for (let s = 0; s < logs.length; s++) {
     const norm = Math.max(0, Math.sqrt(Math.max(0, assessment.chiSquares[s] ?? NaN)) - slack);
@@ -112,12 +113,13 @@ function curvatureMetres(site: Site, reachMetres: number): number {
 }
 
 /**
- * How far the covariance within the reach can stand from the one used: S <= (1 + turn) S_used, and its uncorrelated
- * share alone gives S >= least S_used. Row sums (Gershgorin) of the shared correlations that azimuths can give.
+ * How far a covariance within the reach can stand from one with no station's spread shared: S <= (1 + turn) S_apart and
+ * S >= least S_apart. Row sums (Gershgorin) of the shared correlations that azimuths can give; the spread is only a
+ * part of S beside the readings' own errors, which makes its correlation count for less (`Firmness`).
  */
-function turnOf({ conditioned: { network }, site, reachMetres, apart }: Surroundings): { turn: number; least: number } {
-  const { sharedCorrelation, azimuthScaleDegrees } = network.settings.spread;
-  const perRadian = 180 / Math.PI / azimuthScaleDegrees;
+function turnOf({ conditioned: { network }, site, reachMetres }: Surroundings): { turn: number; least: number } {
+  const { correlation } = network.firmness;
+  const perRadian = 180 / Math.PI / network.settings.spread.azimuthScaleDegrees;
   const swings = site.distances.map((distance) => swing(distance, reachMetres));
   let most = 0;
   for (let i = 0; i < network.size; i++) {
@@ -126,27 +128,15 @@ function turnOf({ conditioned: { network }, site, reachMetres, apart }: Surround
       if (i === j) continue;
       const between = Math.abs((site.azimuths[i] ?? NaN) - (site.azimuths[j] ?? NaN));
       const angle = Math.min(between, 2 * Math.PI - between);
-      const room = (swings[i] ?? NaN) + (swings[j] ?? NaN);
-      const now = Math.exp(-angle * perRadian);
-      const nearest = Math.exp(-Math.max(0, angle - room) * perRadian);
-      row += apart ? nearest : Math.max(nearest - now, now * (1 - Math.exp(-room * perRadian)));
+      row += Math.exp(-Math.max(0, angle - (swings[i] ?? NaN) - (swings[j] ?? NaN)) * perRadian);
     }
     most = Math.max(most, row);
   }
-  if (apart) return { turn: sharedCorrelation * most, least: 1 - sharedCorrelation };
-  const turn = (sharedCorrelation * most) / (1 - sharedCorrelation);
-  return { turn, least: Math.max(1 - turn, (1 - sharedCorrelation) / (1 + sharedCorrelation * (network.size - 1))) };
+  return { turn: correlation * most, least: 1 - correlation };
 }
 
 /** How far (radians) the azimuth of a station can turn within the reach. */
 function swing(distanceMetres: number, reachMetres: number): number {
   const across = MEAN_RADIUS_METRES * Math.abs(Math.sin(distanceMetres / MEAN_RADIUS_METRES));
   return across > reachMetres ? Math.asin(reachMetres / across) : Math.PI;
-}
-
-/** The most that measured directions can add. */
-function bearingGain({ network }: Conditioned): number {
-  return network.arrivals.reduce((sum, { estimate: { bearing } }) => {
-    return sum + (bearing ? Math.max(0, Math.log(360 / (bearing.sigmaDegrees * Math.sqrt(2 * Math.PI)))) : 0);
-  }, 0);
 }

@@ -63,6 +63,7 @@ export function locateSource(arrivals: readonly StationArrival[], options: Locat
       position: main.position,
       originEpochSeconds: input.network.zeroEpochSeconds + main.originSeconds,
       originSigmaSeconds: originSigma(main),
+      atPeak: main.peak !== null,
       onLand: main.onLand,
       bestInWater: main.bestInWater,
     },

@@ -1,5 +1,6 @@
 import { frameAt, type Frame } from "../geodesy/quick-inverse.ts";
 import type { StationArrival } from "./answer.ts";
+import { firmnessOf, type Firmness } from "./firmness.ts";
 import { steadyCovariance } from "./joint-covariance.ts";
 import type { EstimationSettings } from "./settings.ts";
 import type { StationTerms } from "./site.ts";
@@ -30,6 +31,7 @@ export interface Network {
   readonly steady: Float64Array;
   /** Log density (per metre and second) of an arrival that is of anything but this storm. */
   readonly logStrayDensity: Float64Array;
+  readonly firmness: Firmness;
   /** What measured directions say anywhere, where no station has one: nothing. Null where one has. */
   readonly noBearings: StationTerms | null;
 }
@@ -65,6 +67,7 @@ export function networkOf(arrivals: readonly StationArrival[], options: NetworkO
       aside,
       (sigma) => -Math.log(PLAUSIBLE_DISTANCE_METRES) - Math.log(sigma > 0 ? sigma * Math.sqrt(2 * Math.PI) : PLAUSIBLE_ORIGIN_SECONDS),
     ),
+    firmness: firmnessOf(arrivals.map((arrival) => arrival.estimate), settings, spreadVarianceFactor),
     noBearings: arrivals.some((arrival) => arrival.estimate.bearing) ? null : { byStation: new Float64Array(size), sum: 0, none: true },
   };
 }

@@ -1,9 +1,10 @@
+import { MEAN_RADIUS_METRES } from "../geodesy/earth.ts";
 import type { Position } from "../units/position.ts";
 import { assess, type Assessment } from "./assess.ts";
 import { conditionAt, type Conditioned, type SubsetPlan } from "./conditioned.ts";
 import { exactSite, stepped } from "./exact-site.ts";
 import type { Network } from "./network.ts";
-import type { Site } from "./site.ts";
+import { turnFrom, type Site } from "./site.ts";
 import { applyPrecision, dot } from "./subset-precision.ts";
 import { logSum, subsetLogs } from "./weigh.ts";
 
@@ -83,7 +84,7 @@ function look(network: Network, position: Position, plan: SubsetPlan): Look | nu
   logs.forEach((log, s) => {
     if (log > (logs[best] ?? -Infinity)) best = s;
     const share = Math.exp(log - logFree);
-    if (share > LEAST_SHARE) accumulate(sum, share, subsetSlope(conditioned, s, assessment, site));
+    if (share > LEAST_SHARE) accumulate(sum, share, withBearings(subsetSlope(conditioned, s, assessment, site), network, conditioned.plan.sets[s] ?? [], site));
   });
   return {
     position,
@@ -143,6 +144,30 @@ function subsetSlope(conditioned: Conditioned, s: number, assessment: Assessment
     north: -dot(byNorth, residual),
     origin,
   };
+}
+
+/**
+ * The slope with what the measured directions of the stations that belong add. A point's bearing b from a station at
+ * distance D and azimuth a (seen from the point) turns with the point by
+ *   (3)  db = (-cos a, sin a) / (R sin(D / R))      east, north, on the mean sphere
+ */
+function withBearings(slope: Slope, network: Network, strays: readonly number[], site: Site): Slope {
+  if (network.noBearings) return slope;
+  const sum = { ...slope };
+  network.arrivals.forEach(({ estimate: { bearing } }, i) => {
+    if (!bearing || strays.includes(i)) return;
+    const across = MEAN_RADIUS_METRES * Math.max(0.01, Math.abs(Math.sin((site.distances[i] ?? NaN) / MEAN_RADIUS_METRES)));
+    const perDegree = 180 / Math.PI / across / bearing.sigmaDegrees; // sigmas per metre
+    const east = -Math.cos(site.azimuths[i] ?? NaN) * perDegree; // (3)
+    const north = Math.sin(site.azimuths[i] ?? NaN) * perDegree;
+    const off = turnFrom(bearing.comesFromDegrees, site.bearings[i] ?? NaN) / bearing.sigmaDegrees;
+    sum.east -= off * east;
+    sum.north -= off * north;
+    sum.eastEast += east * east;
+    sum.eastNorth += east * north;
+    sum.northNorth += north * north;
+  });
+  return sum;
 }
 
 function newtonStep({ gradient, information }: Look): { east: number; north: number } {

@@ -13,7 +13,6 @@ const ASKS_BELOW = 0.05;
 const LEAST_STATIONS = 4;
 const MOST_VARIANCE_FACTOR = 16;
 const BISECTIONS = 24;
-const MOST_ROUNDS = 6;
 
 export interface Prepared {
   readonly network: Network;
@@ -60,7 +59,7 @@ export function prepareNetwork(arrivals: readonly StationArrival[], { settings }
 function searchedSubsets(network: Network): { sets: readonly StraySet[]; peaks: readonly Peak[] } {
   let sets = straySets(network.size);
   let peaks = findPeaks(network, planSubsets(network, sets));
-  for (let round = 0; round < MOST_ROUNDS; round++) {
+  for (let round = 0; 2 * round < network.size; round++) {
     const best = peaks[0] ? strayAt(peaks[0]) : [];
     const around = straySets(network.size, [best]);
     if (2 * best.length > network.size || around.every((set) => sets.some((known) => isDeepEqual(known, set)))) break;

@@ -9,7 +9,7 @@ import { neighbourFinder, type NeighboursOf } from "./neighbours.ts";
 import type { Network } from "./network.ts";
 import type { Peak } from "./peak.ts";
 import { cellsHolding } from "./regions.ts";
-import { blankSite, outlookFrom, quickSite, type Site, type SiteColumns } from "./site.ts";
+import { blankSite, mostFromBearings, outlookFrom, quickSite, type Site, type SiteColumns } from "./site.ts";
 import { logSum, subsetLogs, weigh, type Weight } from "./weigh.ts";
 
 /** Cells whose best possible density lies this far (natural log) below the best found are left: e^-7.5. */
@@ -20,6 +20,8 @@ const FREE_DEPTH = 6;
 const FAINT_SUBSET = 10;
 /** Level from which cells share one covariance with all their descendants: within 250 km azimuths turn little. */
 const COVARIANCE_LEVEL = 2;
+/** More stations than this fix the place so well that the covariance at the best peak serves everywhere. */
+const ONE_COVARIANCE_FROM = 13;
 /** No answer stops coarser than this. */
 const LEAST_LEVEL = 4;
 /** Peaks this far below the best do not ask for finer cells. */
@@ -63,6 +65,8 @@ interface Quest {
   /** Log density of the best peak, land held against it and land disregarded. */
   readonly heldFloor: number;
   readonly freeFloor: number;
+  /** The peak whose covariance serves everywhere, where one does. */
+  readonly one: Peak | null;
   /** Room for one look at a cell. */
   readonly columns: SiteColumns;
   readonly blank: Assessment;
@@ -76,11 +80,12 @@ interface Quest {
 export function searchOcean({ network, sets, land }: SearchInput, peaks: readonly Peak[]): Posterior {
   const heldFloor = Math.max(-Infinity, ...peaks.map((peak) => heldAt(peak, land)));
   const freeFloor = Math.max(-Infinity, ...peaks.map((peak) => peak.logFree));
-  const start = planSubsets(network, weighty(peaks, sets, heldFloor));
-  let quest: Quest = { network, land, plan: start, heldFloor, freeFloor, columns: blankSite(network), blank: blankAssessment(network, start) };
+  const start = planSubsets(network, weighty(peaks, sets, heldFloor - mostFromBearings(network)));
+  const one = network.size < ONE_COVARIANCE_FROM ? null : (peaks[0] ?? null);
+  let quest: Quest = { network, land, plan: start, heldFloor, freeFloor, columns: blankSite(network), blank: blankAssessment(network, start), one };
   const wanted = wantedLevel(peaks);
-  const apart = conditionAt(network, null, quest.plan);
-  let prospects: Prospect[] = firstCells().map((cell) => ({ cell, conditioned: apart }));
+  const rough = conditionAt(network, quest.one?.site.azimuths ?? null, quest.plan);
+  let prospects: Prospect[] = firstCells().map((cell) => ({ cell, conditioned: rough }));
   for (let level = FIRST_LEVEL; ; level++) {
     if (level >= wanted || prospects.length > MOST_CELLS) {
       const cells = weighCells(quest, prospects);
@@ -96,18 +101,19 @@ export function searchOcean({ network, sets, land }: SearchInput, peaks: readonl
 /** The cells with room for density within them, and the subsets that weigh anything in any of them. */
 function pruned(quest: Quest, prospects: readonly Prospect[], level: number): { kept: Prospect[]; plan: SubsetPlan } {
   const { network, plan, heldFloor, freeFloor } = quest;
+  const apart = level < COVARIANCE_LEVEL && !quest.one;
   const floors: Floors = { held: heldFloor - PRUNE_DEPTH, free: freeFloor - FREE_DEPTH };
   const best = new Float64Array(plan.sets.length).fill(-Infinity);
   const kept = prospects.flatMap(({ cell, conditioned: shared }) => {
     const look = lookAt(quest, centreOf(cell), shared);
-    const bound = look && boundAbove(floors, { ...look, reachMetres: reachMetres(level), apart: level < COVARIANCE_LEVEL });
+    const bound = look && boundAbove(floors, { ...look, reachMetres: reachMetres(level), apart });
     if (!bound) return [];
     for (let s = 0; s < best.length; s++) {
       best[s] = Math.max(best[s] ?? NaN, (bound.bySubsetHeld[s] ?? NaN) - heldFloor, (bound.bySubsetFree[s] ?? NaN) - freeFloor);
     }
     return [{ cell, conditioned: look.conditioned }];
   });
-  if (level < COVARIANCE_LEVEL) return { plan, kept: kept.map(({ cell }) => ({ cell, conditioned: null })) };
+  if (apart) return { plan, kept: kept.map(({ cell }) => ({ cell, conditioned: null })) };
   const left = plan.sets.flatMap((_, s) => ((best[s] ?? NaN) > -FAINT_SUBSET ? [s] : []));
   if (left.length === plan.sets.length) return { plan, kept };
   const fewer = planSubsets(network, left.map((s) => plan.sets[s] ?? []));

@@ -87,11 +87,20 @@ function exposedShare({ exposure }: StationArrival, bearingDegrees: number, dist
   return opening >= 360 ? 1 : Math.min(1, Math.max(0, 0.5 + toEdge / (2 * halfWidth)));
 }
 
+/** The most (natural log) that the measured directions can add anywhere. */
+export function mostFromBearings(network: Network): number {
+  return network.arrivals.reduce((sum, { estimate: { bearing } }) => sum + (bearing ? Math.max(0, logPeak(bearing.sigmaDegrees)) : 0), 0);
+}
+
+function logPeak(sigmaDegrees: number): number {
+  return Math.log(360 / (sigmaDegrees * Math.sqrt(2 * Math.PI)));
+}
+
 /** Log density of the measured direction if the storm is on this bearing, over that of any direction. */
 function bearingTerm({ estimate: { bearing } }: StationArrival, bearingDegrees: number): number {
   if (!bearing) return 0;
-  const apart = positive(bearingDegrees - bearing.comesFromDegrees + 180) - 180;
-  return Math.log(360 / (bearing.sigmaDegrees * Math.sqrt(2 * Math.PI))) - 0.5 * (apart / bearing.sigmaDegrees) ** 2;
+  const apart = turnFrom(bearing.comesFromDegrees, bearingDegrees);
+  return logPeak(bearing.sigmaDegrees) - 0.5 * (apart / bearing.sigmaDegrees) ** 2;
 }
 
 export function termsOf(network: Network, term: (arrival: StationArrival, i: number) => number): StationTerms {
@@ -105,6 +114,11 @@ export function termsOf(network: Network, term: (arrival: StationArrival, i: num
     if (log !== 0) none = false;
   });
   return { byStation, sum, none };
+}
+
+/** Clockwise from the first bearing to the second, -180 to 180 degrees. */
+export function turnFrom(firstDegrees: number, secondDegrees: number): number {
+  return positive(secondDegrees - firstDegrees + 180) - 180;
 }
 
 function positive(degrees: number): number {
