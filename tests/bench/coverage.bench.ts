@@ -42,6 +42,10 @@ async function cover(recipe: RecipeName, seed: number, storms: number, targets: 
   report(`coverage ${recipe} 50 %`, seed, storms, held("half"), "of storms", targets.half);
   report(`coverage ${recipe} 90 %`, seed, storms, held("ninety"), "of storms");
   report(`coverage ${recipe} 95 %`, seed, storms, held("ninetyFive"), "of storms", targets.ninetyFive);
+  if (recipe === "matched") {
+    const { rightAccused, rightClocks } = tallyClocks(judgements);
+    report("right clocks accused matched", seed, storms, rightAccused / rightClocks, "of right clocks", { to: 0.01 });
+  }
   report(`placed ${recipe}`, seed, storms, placed.length / storms, "of storms");
   report(`median error ${recipe}`, seed, storms, median(placed) / 1000, "km");
   report(`median time error ${recipe}`, seed, storms, median(timed) / 3600, "h");
