@@ -1,7 +1,6 @@
 import { feature } from "topojson-client";
 import type { Feature, FeatureCollection, Position as Coordinates } from "geojson";
 import type { Topology } from "topojson-specification";
-import { InputError } from "../failures/input-error.ts";
 
 /**
  * For each latitude row, the longitudes (degrees, rising) at which one passes between water and land when going east
@@ -9,7 +8,7 @@ import { InputError } from "../failures/input-error.ts";
  * the fourth, and from a last one without a partner to 180 E. A row that starts on land begins with -180. Outlines may
  * run either way round, be holes, cross the 180th meridian and hold the south pole; the north pole lies in water.
  *
- * @throws InputError `no-land` where `topology.objects.land` holds no polygons.
+ * @throws Error where `topology.objects.land` holds no polygons.
  */
 export function rowCrossings(grid: { topology: Topology; rows: number; rowsPerDegree: number }): Float64Array[] {
   const crossings: number[][] = Array.from({ length: grid.rows }, () => []);
@@ -57,7 +56,5 @@ function landOutlines(topology: Topology): Coordinates[][] {
     return geometry.type === "MultiPolygon" ? geometry.coordinates.flat() : [];
   });
   if (outlines.length > 0) return outlines;
-  throw new InputError([
-    { code: "no-land", path: "topology.objects.land", message: "The land outlines hold no polygons under the name land." },
-  ]);
+  throw new Error("The land outlines hold no polygons under the name land.");
 }

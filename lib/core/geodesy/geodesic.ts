@@ -17,7 +17,7 @@ const { WGS84 } = geographiclib.Geodesic;
  * [source: karney-2013] Between antipodes and between the poles several ways are equally short, and one is given;
  * between coincident points the headings mean nothing.
  *
- * @throws InputError `out-of-range` at `from.latitudeDegrees` or `to.latitudeDegrees` beyond 90 degrees.
+ * @throws RangeError at `from.latitudeDegrees` or `to.latitudeDegrees` beyond 90 degrees.
  */
 export function geodesicInverse({ from, to }: { from: Position; to: Position }): Geodesic {
   requireLatitude(from, "from.latitudeDegrees");
@@ -35,7 +35,7 @@ export function geodesicInverse({ from, to }: { from: Position; to: Position }):
  * Where one arrives by keeping to the geodesic that leaves `from` on a heading, and the heading there; right also
  * beyond half the girth, where the geodesic is no longer the shortest way. [source: karney-2013]
  *
- * @throws InputError `out-of-range` at `from.latitudeDegrees` beyond 90 degrees.
+ * @throws RangeError at `from.latitudeDegrees` beyond 90 degrees.
  */
 export function geodesicDirect(leg: { from: Position; headsTowardDegrees: number; distanceMetres: number }): {
   position: Position;

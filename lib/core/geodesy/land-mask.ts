@@ -23,7 +23,7 @@ const OPEN_PACIFIC: Position = { latitudeDegrees: 0, longitudeDegrees: -160 };
  * together with the Pacific, corners included; the Caspian and the lakes are land. Straits narrower than a cell may be closed and islands smaller than one may be lost: a coast is right to about
  * 0.1 degree, 11 km. [source: natural-earth]
  *
- * @throws InputError `no-land` where the topology holds no polygons under that name.
+ * @throws Error where the topology holds no polygons under that name.
  */
 export function buildLandMask(topology: Topology): LandMask {
   const oceanBits = new Uint32Array(MASK_ROWS * WORDS_PER_ROW);

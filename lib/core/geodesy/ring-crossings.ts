@@ -33,7 +33,7 @@ interface OnFirst {
  * that differ nowhere by more than the flattening makes of one circle (70 km) are the same circle: their crossings
  * would say nothing.
  *
- * @throws InputError `out-of-range` at `first.radiusMetres` or `second.radiusMetres` beyond half the girth.
+ * @throws RangeError at `first.radiusMetres` or `second.radiusMetres` beyond half the girth.
  */
 export function ringCrossings({ first, second }: { first: Ring; second: Ring }): RingCrossings {
   requireWithin(first.radiusMetres, 0, HALF_GIRTH_METRES, "first.radiusMetres", "A ring's radius", "metres");

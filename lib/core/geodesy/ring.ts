@@ -13,7 +13,7 @@ export interface Ring {
  * Vertices of a geodesic circle, by the direct problem at evenly spaced headings clockwise from north; the first is
  * not repeated at the end. Longitudes are in [-180, 180]: neighbours may lie on either side of the 180th meridian.
  *
- * @throws InputError `out-of-range` at `radiusMetres` beyond half the girth, `not-positive` at `vertices`.
+ * @throws RangeError at `radiusMetres` beyond half the girth, or at `vertices`.
  */
 export function geodesicRing({ centre, radiusMetres, vertices }: Ring & { readonly vertices: number }): Position[] {
   requireWithin(radiusMetres, 0, HALF_GIRTH_METRES, "radiusMetres", "A ring's radius", "metres");

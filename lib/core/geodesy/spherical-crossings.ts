@@ -21,7 +21,7 @@ const TOUCH_DEGREES = 1e-9;
  * |r - q| < d < min(r + q, 360 - r - q). Of two points the first lies right of the way from centre to centre.
  * Plane spherical trigonometry, no source needed: the half-angle formula, see `sphericalTriangleAngle`.
  *
- * @throws InputError `out-of-range` at `first.radiusDegrees` or `second.radiusDegrees` outside [0, 180].
+ * @throws RangeError at `first.radiusDegrees` or `second.radiusDegrees` outside [0, 180].
  */
 export function sphericalCrossings({ first, second }: { first: SphericalRing; second: SphericalRing }): SphericalCrossings {
   requireWithin(first.radiusDegrees, 0, 180, "first.radiusDegrees", "A ring's radius", "degrees");

@@ -5,7 +5,7 @@ import { requirePositive, requireWithin } from "../failures/require.ts";
 /**
  * The value that a chi-square variable of `degreesOfFreedom` stays below with this probability.
  *
- * @throws InputError `out-of-range` at `probability` outside [0, 1], `not-positive` at `degreesOfFreedom`.
+ * @throws RangeError at `probability` outside [0, 1], or at `degreesOfFreedom`.
  */
 export function chiSquareQuantile(probability: number, degreesOfFreedom: number): number {
   requireWithin(probability, 0, 1, "probability", "Probability", "(a fraction)");
@@ -17,7 +17,7 @@ export function chiSquareQuantile(probability: number, degreesOfFreedom: number)
  * Probability that a chi-square variable of `degreesOfFreedom` exceeds `value`: the p-value of a misfit. Taken as one
  * less the distribution function, so below about 1e-15 it is zero.
  *
- * @throws InputError `out-of-range` at `value` below 0 or no number, `not-positive` at `degreesOfFreedom`.
+ * @throws RangeError at `value` below 0 or no number, or at `degreesOfFreedom`.
  */
 export function chiSquareSurvival(value: number, degreesOfFreedom: number): number {
   requireWithin(value, 0, Infinity, "value", "Chi-square", "(no unit)");

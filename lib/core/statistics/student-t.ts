@@ -5,7 +5,7 @@ import { requirePositive, requireWithin } from "../failures/require.ts";
  * The value that Student's t of `degreesOfFreedom` (any number above zero, not only whole ones) stays below with this
  * probability.
  *
- * @throws InputError `out-of-range` at `probability` outside [0, 1], `not-positive` at `degreesOfFreedom`.
+ * @throws RangeError at `probability` outside [0, 1], or at `degreesOfFreedom`.
  */
 export function studentTQuantile(probability: number, degreesOfFreedom: number): number {
   requireWithin(probability, 0, 1, "probability", "Probability", "(a fraction)");

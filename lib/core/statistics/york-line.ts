@@ -38,8 +38,8 @@ const MOST_ITERATIONS = 200;
  *   (7)  var a = 1 / sum W + (X + beta)^2 var b,  cov(a, b) = -(X + beta) var b
  * Units: those of x and y. A point of weight 0 takes no part.
  *
- * @throws InputError `too-few-points` (fewer than two points of weight above zero), `uneven-lengths`, `no-sigma` (a
- * point without a standard deviation above zero in either coordinate, or with one that is no number).
+ * @throws RangeError where there are fewer than two points of weight above zero, columns of uneven lengths, or a point
+ * without a standard deviation above zero in either coordinate, or with one that is no number.
  */
 export function yorkLine(points: YorkPoints): YorkLine {
   requireYorkPoints(points);

@@ -1,5 +1,3 @@
-import { InputError } from "../failures/input-error.ts";
-
 type Numbers = Float64Array | readonly number[];
 
 /** Points with a standard deviation (1 sigma) for each coordinate, independent of each other and of the other points. */
@@ -54,15 +52,13 @@ export function mean(values: Numbers): number {
 }
 
 /**
- * @throws InputError `too-few-points` (fewer than two points of weight above zero), `uneven-lengths`, `no-sigma` (a
- * point without a standard deviation above zero in either coordinate, or with one that is no number).
+ * @throws RangeError where there are fewer than two points of weight above zero, columns of uneven lengths, or a point
+ * without a standard deviation above zero in either coordinate, or with one that is no number.
  */
 export function requireYorkPoints({ x, y, xSigma, ySigma, weights }: YorkPoints): void {
   const count = x.length;
   if ([y, xSigma, ySigma, weights ?? x].some((values) => values.length !== count)) {
-    throw new InputError([
-      { code: "uneven-lengths", path: "points", message: "A line needs as many standard deviations and weights as points." },
-    ]);
+    throw new RangeError("A line needs as many standard deviations and weights as points.");
   }
   let weighted = 0;
   for (let i = 0; i < count; i += 1) {
@@ -71,9 +67,8 @@ export function requireYorkPoints({ x, y, xSigma, ySigma, weights }: YorkPoints)
     const sx = xSigma[i] ?? NaN;
     const sy = ySigma[i] ?? NaN;
     if (sx >= 0 && sy >= 0 && sx + sy > 0 && sx + sy < Infinity) continue;
-    const message = `Point ${i + 1} needs a standard deviation above zero in one of its coordinates; found ${sx} and ${sy}.`;
-    throw new InputError([{ code: "no-sigma", path: `points[${i}]`, message }]);
+    throw new RangeError(`Point ${i + 1} needs a standard deviation above zero in one of its coordinates; found ${sx} and ${sy}.`);
   }
   if (weighted >= 2) return;
-  throw new InputError([{ code: "too-few-points", path: "points", message: `A line needs two points; found ${weighted}.` }]);
+  throw new RangeError(`A line needs two points; found ${weighted}.`);
 }

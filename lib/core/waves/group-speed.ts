@@ -10,7 +10,7 @@ import { requireWave, requireWaveOverDepth, type WaveOverDepth } from "./wave.ts
  *   (2)  n = 1/2 (1 + 2kh / sinh 2kh)     group speed over phase speed
  *   (3)  c = n omega / k                  group speed
  *
- * @throws InputError `not-positive` at `frequencyHz`, `depthMetres` or `gravity`.
+ * @throws RangeError at `frequencyHz`, `depthMetres` or `gravity`.
  */
 export function groupSpeed(wave: WaveOverDepth): number {
   requireWaveOverDepth(wave);
@@ -24,7 +24,7 @@ export function groupSpeed(wave: WaveOverDepth): number {
  * How fast the energy of a swell travels (m/s) over water deeper than half its length: c = g / (4 pi f).
  * [source: munk-1963] At 0.05 Hz and 100 m the true speed is a fifth higher.
  *
- * @throws InputError `not-positive` at `frequencyHz` or `gravity`.
+ * @throws RangeError at `frequencyHz` or `gravity`.
  */
 export function deepWaterGroupSpeed(wave: { readonly frequencyHz: number; readonly gravity: number }): number {
   requireWave(wave);

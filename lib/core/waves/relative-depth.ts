@@ -7,7 +7,7 @@ import { requirePositive } from "../failures/require.ts";
  * Starts from Y / sqrt(tanh Y), which is within 5 % of the root at any depth (measured over Y from 1e-9 to 1e3); each
  * step squares the error, so that five reach the last digit. No units.
  *
- * @throws InputError `not-positive` at `deepWaterRelativeDepth`.
+ * @throws RangeError at `deepWaterRelativeDepth`.
  */
 export function relativeDepth(deepWaterRelativeDepth: number): number {
   requirePositive(deepWaterRelativeDepth, "deepWaterRelativeDepth", "Relative depth", "radians");

@@ -13,7 +13,7 @@ export interface ShelfLeg {
  * bends no ray; period is conserved. [source: munk-1963]
  *   (1)  delay = sum over legs of length (1 / c(f, h) - 4 pi f / g)
  *
- * @throws InputError `not-positive` at `frequencyHz`, `gravity`, `legs[i].lengthMetres` or `legs[i].depthMetres`.
+ * @throws RangeError at `frequencyHz`, `gravity`, `legs[i].lengthMetres` or `legs[i].depthMetres`.
  */
 export function shelfDelaySeconds(way: {
   readonly frequencyHz: number;

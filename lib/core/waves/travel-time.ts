@@ -4,7 +4,7 @@ import { deepWaterGroupSpeed } from "./group-speed.ts";
 /**
  * How long the energy of a frequency is on its way over deep water (s): 4 pi f D / g. [source: munk-1963]
  *
- * @throws InputError `not-positive` at `frequencyHz` or `gravity`, `out-of-range` at `distanceMetres` below zero.
+ * @throws RangeError at `frequencyHz`, `gravity`, or `distanceMetres` below zero.
  */
 export function deepWaterTravelSeconds(way: {
   readonly frequencyHz: number;

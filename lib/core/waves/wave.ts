@@ -7,13 +7,13 @@ export interface WaveOverDepth {
   readonly gravity: number;
 }
 
-/** @throws InputError `not-positive` at `frequencyHz` or `gravity`. */
+/** @throws RangeError at `frequencyHz` or `gravity`. */
 export function requireWave(wave: { readonly frequencyHz: number; readonly gravity: number }): void {
   requirePositive(wave.frequencyHz, "frequencyHz", "Wave frequency", "hertz");
   requirePositive(wave.gravity, "gravity", "Gravity", "metres per second squared");
 }
 
-/** @throws InputError `not-positive` at `frequencyHz`, `gravity` or `depthMetres`. */
+/** @throws RangeError at `frequencyHz`, `gravity` or `depthMetres`. */
 export function requireWaveOverDepth(wave: WaveOverDepth): void {
   requireWave(wave);
   requirePositive(wave.depthMetres, "depthMetres", "Water depth", "metres");

@@ -6,7 +6,7 @@ import { requireWaveOverDepth, type WaveOverDepth } from "./wave.ts";
  * [source: ardhuin-owg]
  *   (1)  omega^2 = g k tanh kh
  *
- * @throws InputError `not-positive` at `frequencyHz`, `depthMetres` or `gravity`.
+ * @throws RangeError at `frequencyHz`, `depthMetres` or `gravity`.
  */
 export function wavenumber(wave: WaveOverDepth): number {
   requireWaveOverDepth(wave);
