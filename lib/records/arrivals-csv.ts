@@ -2,7 +2,7 @@ import type { StationEstimate } from "#lib/core/arrival/observations.ts";
 import type { ArrivalEstimate } from "#lib/core/arrival/estimate.ts";
 import { HALF_GIRTH_METRES } from "#lib/core/geodesy/earth.ts";
 import { SECONDS_PER_HOUR } from "#lib/core/units/time.ts";
-import { readNumber, readText, readTime } from "./cells.ts";
+import { inRange, readNumber, readText, readTime } from "./cells.ts";
 import type { CellPlace } from "./cells.ts";
 import { readCsvTable } from "./csv-table.ts";
 import { distinctRows } from "./distinct-rows.ts";
@@ -11,6 +11,12 @@ import type { Note, ReadResult } from "./note.ts";
 const REQUIRED_COLUMNS = ["station", "distance_km", "origin_time"];
 const SIGMA_COLUMNS = ["distance_sigma_km", "origin_time_sigma_h", "correlation"] as const;
 const METRES_PER_KM = 1000;
+
+/** No storm is farther than half the Earth's girth, and no error of a distance need be larger. */
+const LENGTH = inRange("kilometres", { least: 0.001, most: Math.floor(HALF_GIRTH_METRES / METRES_PER_KM) });
+const DISTANCE = { ...LENGTH, wanted: `${LENGTH.wanted}, half the Earth's girth` };
+/** From seconds to thirty days: what lies outside is no error of a time. */
+const ORIGIN_SIGMA = inRange("hours", { least: 0.001, most: 30 * 24 });
 
 /** Common practice, no source: what estimates published without errors turn out to be good to. */
 const DISTANCE_SIGMA_FRACTION = 0.08;
@@ -43,14 +49,10 @@ export function readArrivalsCsv(text: string, fileName: string): ReadResult<Stat
 type DefaultCounts = Record<(typeof SIGMA_COLUMNS)[number], number>;
 
 function readEstimate({ cell, defaults }: { cell: (column: string, required?: boolean) => CellPlace; defaults: DefaultCounts }): ArrivalEstimate | null {
-  const positive = (unit: string) => ({ wanted: `a number of ${unit} above zero`, accepts: (value: number) => value > 0 });
-  const distanceKm = readNumber(cell("distance_km", true), {
-    wanted: `a number of kilometres above zero and up to half the Earth's girth (${Math.floor(HALF_GIRTH_METRES / METRES_PER_KM)})`,
-    accepts: (value) => value > 0 && value * METRES_PER_KM <= HALF_GIRTH_METRES,
-  });
+  const distanceKm = readNumber(cell("distance_km", true), DISTANCE);
   const originEpochSeconds = readTime(cell("origin_time", true));
-  const sigmaKm = readNumber(cell("distance_sigma_km"), positive("kilometres"));
-  const sigmaHours = readNumber(cell("origin_time_sigma_h"), positive("hours"));
+  const sigmaKm = readNumber(cell("distance_sigma_km"), LENGTH);
+  const sigmaHours = readNumber(cell("origin_time_sigma_h"), ORIGIN_SIGMA);
   const given = readNumber(cell("correlation"), { wanted: "a number above -1 and below 1", accepts: (value) => value > -1 && value < 1 });
   if (distanceKm === null || originEpochSeconds === null) return null;
   if (sigmaKm === null) defaults.distance_sigma_km += 1;
