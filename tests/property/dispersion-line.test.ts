@@ -118,6 +118,18 @@ describe("the line of one station's readings", () => {
     );
   });
 
+  it("does not depend on which of two readings alike states the larger error, and carries that one", () => {
+    const readings = readingsOf(6e6, even(8).map((frequencyHz) => ({ frequencyHz, sigmaSeconds: 900 })));
+    const [first] = readings;
+    if (!first) throw new Error("there are eight");
+    const surer = { ...first, arrivalSigmaSeconds: 60, row: 40 };
+    const wider = { ...first, arrivalSigmaSeconds: 7200, frequencySigmaHz: 0.001, row: 41 };
+    const both = fitted([surer, ...readings.slice(1), wider]);
+    expect(fitted([wider, ...readings.slice(1), surer])).toEqual(both);
+    expect({ ...both, notes: [] }).toEqual(fitted([wider, ...readings.slice(1)]));
+    expect(both.notes).toEqual([{ code: "readings-alike", message: expect.stringContaining("rows 40 and 41.") as string }]);
+  });
+
   it("goes through two readings with the errors that these state", () => {
     fc.assert(
       fc.property(distances, evenly(60, 3600), evenly(60, 3600), evenly(0.005, 0.04), (distanceMetres, firstSigma, secondSigma, run) => {
@@ -348,8 +360,22 @@ describe("readings that make no line", () => {
     const same = one.flatMap((reading) => [reading, { ...reading, arrivalEpochSeconds: reading.arrivalEpochSeconds + 9000 }]);
     expect(fit(same)).toMatchObject({ code: "slope-undetermined", message: expect.stringContaining("one frequency") as string });
   });
+  it("are refused where frequencies differ by rounding alone, and where no distance from the line can be told", () => {
+    const rounding = [0.05, 0.05000000000000001, 0.05].map((frequencyHz, i) => ({ frequencyHz, offSeconds: 3600 * i }));
+    expect(codeOf(fit(readingsOf(5e6, rounding)))).toBe("slope-undetermined");
+    const atOnce = even(4).map((frequencyHz) => ({ frequencyHz, frequencySigmaHz: 0.001, sigmaSeconds: 0, kind: "timed" as const }));
+    expect(codeOf(fit(readingsOf(0, atOnce)))).toBe("slope-undetermined");
+  });
+  it("are none that only seem to have no start: most of one frequency, evenly chosen", () => {
+    const samples = Array.from({ length: 120 }, (_, i) => ({ frequencyHz: i < 119 ? 0.05 : 0.06, offSeconds: i < 119 ? i - 59 : 0 }));
+    expectWithin(fitted(readingsOf(8e6, samples)).distanceMetres, 8e6, ratio(1e-3, "a minute over a lever of a day"));
+  });
   it("are refused where the period rises with time", () => {
     expect(codeOf(fit(readingsOf(-5e6, even(6).map((frequencyHz) => ({ frequencyHz })))))).toBe("period-rises");
+    const timed = readingsOf(-5e6, even(6).map((frequencyHz) => ({ frequencyHz, sigmaSeconds: 300, kind: "timed" as const })));
+    for (const durationSeconds of [0, 21_600]) {
+      expect(codeOf(fitDispersionLine(timed, { ...DEFAULT_SETTINGS, timed: { durationSeconds, spectrumWidthHz: 0.012 } }))).toBe("period-rises");
+    }
   });
   it("are refused where they lie too close together for a slope", () => {
     const close = [0.06, 0.0601].map((frequencyHz) => ({ frequencyHz, sigmaSeconds: 7200 }));

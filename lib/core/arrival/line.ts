@@ -13,7 +13,13 @@ export interface DispersionLine extends ArrivalEstimate {
   readonly degreesOfFreedom: number;
   readonly meanFrequencyHz: number;
   readonly shelfCorrected: boolean;
-  readonly notes: readonly { readonly code: string; readonly message: string }[];
+  readonly notes: readonly LineNote[];
+}
+
+/** Something about a station's readings that people should know; the host puts the station's id before it. */
+export interface LineNote {
+  readonly code: string;
+  readonly message: string;
 }
 
 /** A line, or why there is none: an outcome, never an exception. */

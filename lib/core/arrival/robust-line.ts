@@ -24,30 +24,42 @@ export interface RobustLine {
 /**
  * The line t = t0 + s f through readings of which a few may be wrong: York's fit, reweighted after Huber from a
  * start (median of pairwise slopes, Sen 1968) that a wrong reading cannot drag along.
- * [source: york-2004, huber-1964, sen-1968]
+ * [source: york-2004, huber-1964, sen-1968] Null where no line is determined: frequencies alike to rounding, a search
+ * that does not settle, a reading whose distance from the line cannot be told.
  */
-export function robustLine(columns: LineColumns): RobustLine {
+export function robustLine(columns: LineColumns): RobustLine | null {
   const n = columns.time.length;
   let weights = new Float64Array(n).fill(1);
   let york = fit(columns, weights);
-  if (n < 4) return { york, weights, residuals: residualsFrom(columns, york) };
-
-  weights = weightsFrom(residualsFrom(columns, medianLine(columns)));
-  for (let pass = 0; pass < REWEIGHTINGS; pass++) {
-    york = fit(columns, weights);
-    weights = weightsFrom(residualsFrom(columns, york));
+  if (york !== null && n >= 4) {
+    const start = weightsFrom(residualsFrom(columns, medianLine(columns)));
+    // No start where the readings that it is drawn from have one frequency, or no error in time and a slope of zero.
+    weights = start.every(isAboveZero) ? start : weightsFrom(residualsFrom(columns, york));
+    for (let pass = 0; pass < REWEIGHTINGS && york !== null; pass++) {
+      york = fit(columns, weights);
+      if (york !== null) weights = weightsFrom(residualsFrom(columns, york));
+    }
   }
-  return { york, weights, residuals: residualsFrom(columns, york) };
+  if (york === null) return null;
+  const residuals = residualsFrom(columns, york);
+  return residuals.every(Number.isFinite) && weights.every(isAboveZero) ? { york, weights, residuals } : null;
 }
 
-function fit(columns: LineColumns, weights: Float64Array): YorkLine {
-  return yorkLine({
+/** Null where no line is determined, or where a weight is no number. */
+function fit(columns: LineColumns, weights: Float64Array): YorkLine | null {
+  if (!weights.every(isAboveZero)) return null;
+  const york = yorkLine({
     x: columns.frequency,
     y: columns.time,
     xSigma: columns.frequencySigma,
     ySigma: columns.timeSigma,
     weights,
   });
+  return york.converged ? york : null;
+}
+
+function isAboveZero(value: number): boolean {
+  return value > 0;
 }
 
 function residualsFrom(columns: LineColumns, line: { intercept: number; slope: number }): Float64Array {

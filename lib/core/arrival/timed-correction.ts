@@ -40,8 +40,9 @@ export function timedExcess(apparentMetres: number, window: TimedWindow): TimedE
 }
 
 function excessFor(apparentMetres: number, rootK: number): number {
+  // Also for a period that rises with time, whose distance is below zero: no factor makes sense of that one.
+  if (apparentMetres <= 2 * rootK) return 1;
   const discriminant = apparentMetres ** 2 - 4 * rootK ** 2;
-  if (discriminant <= 0) return 1;
   const distance = (apparentMetres + Math.sqrt(discriminant)) / 2; // (3)
   return apparentMetres / distance - 1;
 }
