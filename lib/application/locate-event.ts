@@ -1,3 +1,4 @@
+import { heardStations } from "#lib/core/arrival/heard-stations.ts";
 import type { EventObservations } from "#lib/core/arrival/observations.ts";
 import type { SightTable } from "#lib/core/geodesy/sight-table.ts";
 import type { AnswerWarning } from "#lib/core/source/answer.ts";
@@ -40,12 +41,7 @@ export function locateEvent({ observations, settings, notes = [], host }: EventT
   return { solution, answer: locateJson({ provenance, solution, answer: solution.answer, warnings }) };
 }
 
-/** By station; only for those that heard something. */
-function sightTables({ deployments, readings, estimates }: EventObservations, land: Land): Map<string, SightTable> {
-  const heard = new Set([...readings, ...estimates].map(({ stationId }) => stationId));
-  const tables = new Map<string, SightTable>();
-  for (const { stationId, position } of deployments) {
-    if (heard.has(stationId) && !tables.has(stationId)) tables.set(stationId, land.sightFrom(position));
-  }
-  return tables;
+/** By station, from where it stood when it heard this event; only for those that heard something. */
+function sightTables(observations: EventObservations, land: Land): Map<string, SightTable> {
+  return new Map(heardStations(observations).map(({ id, deployment }) => [id, land.sightFrom(deployment.position)]));
 }

@@ -39,8 +39,12 @@ describe("the deployment that a station's readings belong to", () => {
   it("gives its place, also by the time of an estimate", () => {
     const [sent] = statedObservations(exactArrivals({ stations: [{ id: "buoy", position: at(40) }], storm: at(-40) })).estimates;
     if (!sent) throw new Error("one was sent in");
-    const estimates = [{ ...sent, estimate: { ...sent.estimate, originEpochSeconds: 350 * DAY } }];
-    expect(fitted({ deployments: spells, readings: [], estimates })[0]?.position).toEqual(at(45));
+    const placeAt = (days: number, distanceMetres = sent.estimate.distanceMetres) =>
+      fitted({ deployments: spells, readings: [], estimates: [{ ...sent, estimate: { ...sent.estimate, distanceMetres, originEpochSeconds: days * DAY } }] })[0]?.position;
+    expect(placeAt(350)).toEqual(at(45));
+    // Swell of 14 s travels 10.9 m/s (deep water, g T / 4 pi): ten days and a half for 9900 km.
+    expect(placeAt(90, 9.9e6)).toEqual(at(40));
+    expect(placeAt(89, 9.9e6)).toEqual(at(35));
   });
 });
 

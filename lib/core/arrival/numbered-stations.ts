@@ -1,3 +1,4 @@
+import { heardStations } from "./heard-stations.ts";
 import type { EventObservations } from "./observations.ts";
 import type { Position } from "../units/position.ts";
 
@@ -11,13 +12,8 @@ export interface NumberedStation {
 
 /**
  * The stations that have readings or an estimate in this event, in the order of the deployments. The numbers do not
- * change when a station is left out. Where a station has several deployments its first one gives the name and place.
+ * change when a station is left out. A station that was moved has the name and place at which it heard this event.
  */
 export function numberedStations(observations: EventObservations): NumberedStation[] {
-  const heard = new Set([...observations.readings, ...observations.estimates].map(({ stationId }) => stationId));
-  const first = new Map<string, Omit<NumberedStation, "number">>();
-  for (const { stationId, name, position } of observations.deployments) {
-    if (heard.has(stationId) && !first.has(stationId)) first.set(stationId, { id: stationId, name, position });
-  }
-  return [...first.values()].map((station, index) => ({ number: index + 1, ...station }));
+  return heardStations(observations).map(({ id, deployment: { name, position } }, index) => ({ number: index + 1, id, name, position }));
 }
