@@ -1,5 +1,6 @@
 import { fitDispersionLine } from "#lib/core/arrival/dispersion-line.ts";
 import type { LineOutcome } from "#lib/core/arrival/line.ts";
+import { noShelfNotes } from "#lib/core/arrival/no-shelf.ts";
 import type { EventObservations } from "#lib/core/arrival/observations.ts";
 import type { Reading } from "#lib/core/arrival/reading.ts";
 import type { AnswerWarning } from "#lib/core/source/answer.ts";
@@ -32,7 +33,7 @@ export function fitEachStation({ observations, settings, notes = [], host }: Sta
   const core = toEstimationSettings(settings);
   const placeless = observations.deployments.length === 0;
   const stations = placeless ? fitWithoutDeployments(observations, core) : fitDeployed(observations, core);
-  const warnings = distinctWarnings([...notes, ...(placeless ? [NO_STATIONS] : []), ...stations.flatMap(stationWarnings)]);
+  const warnings = distinctWarnings([...notes, ...(placeless ? [NO_STATIONS] : []), ...stations.flatMap(stationWarnings), ...(placeless ? [] : noShelfNotes(stations))]);
   const provenance = { program: host.program, inputDigest: inputDigest(observations), settings };
   return fitJson({ provenance, stations, warnings });
 }

@@ -16,6 +16,8 @@ export interface StationJson {
   readonly correlation: number | null;
   readonly reducedChiSquare: number | null;
   readonly pValue: number | null;
+  /** Whether the shelf's delay was taken off the readings' times; null where nothing was fitted here. */
+  readonly shelfCorrected: boolean | null;
   /** Why the station could not be fitted. */
   readonly error?: string;
   readonly errorCode?: string;
@@ -33,6 +35,7 @@ export function stationJson({ id, outcome }: { readonly id: string; readonly out
       readingsDownweighted: outcome.line.downweightedRows,
       reducedChiSquare: outcome.line.reducedChiSquare,
       pValue: outcome.line.pValue,
+      shelfCorrected: outcome.line.shelfCorrected,
     }),
     distanceKm: estimate.distanceMetres / METRES_PER_KM,
     originTime: isoTime(estimate.originEpochSeconds),
@@ -42,7 +45,7 @@ export function stationJson({ id, outcome }: { readonly id: string; readonly out
 
 function unfitted(id: string): StationJson {
   const fit = { distanceKm: null, distanceSigmaKm: null, originTime: null, originTimeSigmaHours: null, correlation: null };
-  return { id, readingsUsed: 0, readingsDownweighted: [], ...fit, reducedChiSquare: null, pValue: null };
+  return { id, readingsUsed: 0, readingsDownweighted: [], ...fit, reducedChiSquare: null, pValue: null, shelfCorrected: null };
 }
 
 function sigmas({ distanceVariance, originVariance, distanceOriginCovariance }: EstimateCovariance) {

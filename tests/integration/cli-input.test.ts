@@ -44,7 +44,19 @@ describe("wrong input ends with status 2, nothing on standard output, and a line
     const arrivals = "station,distance_km,origin_time\nWEST,25000,2031-02-09T00:00Z\nEAST,5000,2031-02-09T00:00Z\n";
     const run = runOffing({ args: ["locate", "--stations", "s.csv", "--arrivals", "a.csv", "--json"], files: { "s.csv": STATIONS, "a.csv": arrivals } });
     expect(run).toMatchObject({ status: 2, out: "" });
-    expect(run.messages).toEqual(["a.csv, row 2, column distance_km: found \"25000\"; wanted a number of kilometres above zero and up to half the Earth's girth (20003)."]);
+    expect(run.messages).toEqual(["a.csv, row 2, column distance_km: found \"25000\"; wanted a number of kilometres from 0.001 to 20003, half the Earth's girth."]);
+  });
+
+  it.each([
+    ["1e160", "12", /^a\.csv, row 2, column distance_sigma_km: found "1e160"; wanted a number of kilometres from 0\.001 to 20003\.$/],
+    ["100", "1e160", /^a\.csv, row 2, column origin_time_sigma_h: found "1e160"; wanted a number of hours from 0\.001 to 720\.$/],
+    ["1e-160", "12", /^a\.csv, row 2, column distance_sigma_km: found "1e-160"/],
+  ])("errors of an estimate beyond reason: %s km and %s h", (sigmaKm, sigmaHours, line) => {
+    const arrivals = `station,distance_km,origin_time,distance_sigma_km,origin_time_sigma_h\nWEST,5000,${START},${sigmaKm},${sigmaHours}\nEAST,6000,${START},100,12\n`;
+    const run = runOffing({ args: ["locate", "--stations", "s.csv", "--arrivals", "a.csv", "--json"], files: { "s.csv": STATIONS, "a.csv": arrivals } });
+    expect(run).toMatchObject({ status: 2, out: "" });
+    expect(run.messages).toHaveLength(1);
+    expect(run.messages[0]).toMatch(line);
   });
 
   it("latitude 95, beside a problem in another file", () => {
@@ -104,6 +116,51 @@ describe("odd input that has an answer ends with status 0", () => {
     expect(stations[2]).toMatchObject({ readingsUsed: 0, distanceKm: null, originTime: null, ringKm: null, belongs: null, clockOffset: null });
     expect(warnings.some(({ code, message }) => code === "period-rises" && message.startsWith("MID: "))).toBe(true);
     expect(source).not.toBeNull();
+  });
+
+  const MOMENT = "2031-02-11T00:00Z";
+  it.each([
+    ["frequencies that differ by rounding", `${HEADER},kind,time_sigma_s`, [0.05, 0.05000000000000001, 0.05].map((hz, hour) => `MID,2031-02-11T0${hour}:00Z,${hz},ridge,1800`)],
+    ["four timed at one moment without an error of time", `${HEADER},kind,time_sigma_s`, [0.05, 0.055, 0.06, 0.065].map((hz) => `MID,${MOMENT},${hz},timed,0`)],
+    ["three of four at one moment without an error of time", `${HEADER},kind,time_sigma_s`, [0.05, 0.055, 0.06].map((hz) => `MID,${MOMENT},${hz},timed,0`).concat("MID,2031-02-11T00:01Z,0.0600001,timed,0")],
+  ])("one station of %s is the only one that is not fitted", (_, header, rows) => {
+    const good = [...ridge("WEST", 5000), ...ridge("EAST", 6000)].map((row) => `${row},ridge,1800`);
+    const run = locate({ readings: csv(header, [...good, ...rows]) });
+    expect(run.status, run.messages.join("\n")).toBe(0);
+    const { stations, source } = JSON.parse(run.out) as LocateJson;
+    expect(stations.map(({ id, errorCode }) => [id, errorCode])).toEqual([["WEST", undefined], ["EAST", undefined], ["MID", "slope-undetermined"]]);
+    expect(source).not.toBeNull();
+    const alone = JSON.parse(fit(csv(header, [...good, ...rows])).out) as FitJson;
+    expect(alone.stations[2]?.error).toMatch(/^[A-Z].*\.$/);
+  });
+
+  it("names once the stations without a shelf, and says of each whether its delay was taken off", () => {
+    const stations = STATIONS.replace("longitude\n", "longitude,shelf\n").replace("35,140", "35,140,").replace("37,-122", "37,-122,20:60").replace("21,-158", "21,-158,");
+    const files = { "s.csv": stations, "r.csv": csv(HEADER, [...ridge("WEST", 5000), ...ridge("EAST", 6000)]), "a.csv": `station,distance_km,origin_time\nMID,4000,${START}\n` };
+    const args = ["--stations", "s.csv", "--readings", "r.csv", "--json"];
+    for (const run of [runOffing({ args: ["locate", ...args, "--arrivals", "a.csv"], files }), runOffing({ args: ["fit", ...args], files })]) {
+      const answer = JSON.parse(run.out) as FitJson;
+      const said = answer.warnings.filter(({ code }) => code === "no-shelf").map(({ message }) => message);
+      expect(said).toEqual(["No shelf profile is known, and so no delay over the shelf was taken off: WEST."]);
+      expect(answer.stations.map(({ id, shelfCorrected }) => [id, shelfCorrected]).slice(0, 2)).toEqual([["WEST", false], ["EAST", true]]);
+      expect(answer.stations.slice(2).map(({ shelfCorrected }) => shelfCorrected)).toEqual(answer.stations.slice(2).map(() => null));
+    }
+  });
+
+  it("takes the larger error of rows alike in time and frequency, whichever stands first, and names them", () => {
+    const rows = ridge("WEST", 5000);
+    const answers = [["60", "1800"], ["1800", "60"]].map(([first = "", second = ""]) => {
+      const alike = [`${rows[0]},${first}`, ...rows.slice(1).map((row) => `${row},900`), `${rows[0]},${second}`];
+      return JSON.parse(fit(csv(`${HEADER},time_sigma_s`, alike)).out) as FitJson;
+    });
+    const alone = JSON.parse(fit(csv(`${HEADER},time_sigma_s`, rows.map((row, index) => `${row},${index === 0 ? 1800 : 900}`))).out) as FitJson;
+    for (const { stations, warnings } of answers) {
+      expect(stations).toEqual(alone.stations);
+      expect(warnings.filter(({ code }) => code === "readings-alike").map(({ message }) => message)).toEqual([
+        "WEST: Readings of one time and one frequency count once, with the largest of their errors: rows 2 and 9.",
+      ]);
+    }
+    expect(alone.warnings.map(({ code }) => code)).not.toContain("readings-alike");
   });
 
   it("rings that miss each other by 3000 km are no agreement, not a failure", () => {

@@ -205,7 +205,7 @@ describe("an event told otherwise", () => {
     const asGround = told.deployments.map((deployment) => (deployment.stationId === "line" ? { ...deployment, sensor: "ground" as const } : deployment));
     const heard = solveEvent({ observations: { ...told, deployments: asGround, readings: doubled }, settings: DEFAULT_SETTINGS, land: null, sightTables: new Map(), checks: false });
     expect(heard.answer?.source).toEqual(answer.source);
-    expect(heard.warnings.map(({ code }) => code)).toEqual(["ground-halved"]);
+    expect(heard.warnings.map(({ code }) => code)).toEqual(["ground-halved", "no-shelf"]);
     const distanceOf = (observations: EventObservations) => {
       const { outcome } = solveEvent({ observations, settings: DEFAULT_SETTINGS, land: null, sightTables: new Map(), checks: false }).stations[2] ?? {};
       return outcome?.kind === "fitted" ? outcome.line.distanceMetres : NaN;

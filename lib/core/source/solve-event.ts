@@ -1,3 +1,4 @@
+import { noShelfNotes } from "../arrival/no-shelf.ts";
 import type { EventObservations } from "../arrival/observations.ts";
 import type { LandMask } from "../geodesy/land-mask.ts";
 import type { SightTable } from "../geodesy/sight-table.ts";
@@ -27,7 +28,7 @@ export function solveEvent(problem: EventProblem): EventSolution {
   return {
     stations: fitted.map(({ id, name, position, outcome }) => ({ id, name, position, outcome })),
     answer: arrivals.length > 0 ? locateSource(arrivals, { settings, land, checks }) : null,
-    warnings: fitted.flatMap(stationWarnings),
+    warnings: [...fitted.flatMap(stationWarnings), ...noShelfNotes(fitted)],
   };
 }
 
