@@ -1,12 +1,18 @@
 import { NextResponse } from "next/server";
 import type { NextRequest } from "next/server";
+import { isOwnHost } from "#lib/http/own-host.ts";
 
 /**
  * Gives each page a content security policy with a nonce of its own, so that only scripts that this server sent can
  * run. `style-src-attr` is open because the chart places its layers by style attributes. Everything else, the base map
- * and the calculation's worker among it, comes from this server and from nowhere else.
+ * and the calculation's worker among it, comes from this server and from nowhere else. Requests for another host, and
+ * addresses that are no text, are turned away.
  */
 export function proxy(request: NextRequest): NextResponse {
+  if (!isOwnHost(request.headers.get("host"), process.env.OFFING_HOST ?? "127.0.0.1")) {
+    return refused(421, "This server answers under the name that it was started with (npm start -- --host H), and on its own machine as localhost.");
+  }
+  if (!isText(request.nextUrl.pathname)) return refused(400, "The address holds a percent sign that spells no letter.");
   const nonce = btoa(crypto.randomUUID());
   const policy = [
     "default-src 'self'",
@@ -28,6 +34,19 @@ export function proxy(request: NextRequest): NextResponse {
   const response = NextResponse.next({ request: { headers } });
   response.headers.set("content-security-policy", policy);
   return response;
+}
+
+function refused(status: number, sentence: string): NextResponse {
+  return new NextResponse(`${sentence}\n`, { status, headers: { "content-type": "text/plain; charset=utf-8" } });
+}
+
+function isText(pathname: string): boolean {
+  try {
+    decodeURIComponent(pathname);
+    return true;
+  } catch {
+    return false;
+  }
 }
 
 // The programming interface stays outside: behind a proxy, a body of more than 10 MB is cut and still answered 200.

@@ -113,7 +113,7 @@ async function serve(call: StartCall): Promise<number> {
     cwd: packageRoot,
     // Its standard output is dropped: it would greet with an address of its own.
     stdio: ["ignore", "ignore", "inherit"],
-    env: { ...process.env, NODE_ENV: "production", NEXT_TELEMETRY_DISABLED: "1", OFFING_DATA_DIRECTORY: call.dataDirectory },
+    env: { ...process.env, NODE_ENV: "production", NEXT_TELEMETRY_DISABLED: "1", OFFING_DATA_DIRECTORY: call.dataDirectory, OFFING_HOST: call.host },
   });
   const ended = new Promise<number>((answer) => {
     server.once("error", () => {

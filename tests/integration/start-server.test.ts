@@ -1,9 +1,11 @@
 import { spawn, spawnSync } from "node:child_process";
 import type { ChildProcess } from "node:child_process";
 import { writeFileSync } from "node:fs";
+import { get } from "node:http";
 import { createServer } from "node:net";
 import { join } from "node:path";
 import { describe, expect, onTestFinished, test } from "vitest";
+import { isOwnHost } from "#lib/http/own-host.ts";
 import { openStore } from "#lib/store/open-store.ts";
 import { inventedEvent } from "#tests/support/invented-event.ts";
 import { MIGRATIONS_DIRECTORY } from "#tests/support/migrations-directory.ts";
@@ -60,6 +62,57 @@ describe("the server", () => {
     const again = await openStore({ dataDirectory, migrationsDirectory: MIGRATIONS_DIRECTORY });
     expect((await again.listEvents()).map(({ id }) => id)).toStrictEqual(["gale"]);
     await again.close();
+  });
+});
+
+describe("the server turns away", () => {
+  /** The status and text for a request as it stands: `fetch` would write a Host of its own and mend the path. */
+  const ask = (address: string, path: string, host: string): Promise<{ status: number | undefined; text: string }> =>
+    new Promise((answer, fail) => {
+      const { hostname, port } = new URL(address);
+      get({ hostname, port, path, headers: { host } }, (response) => {
+        let text = "";
+        response.setEncoding("utf8").on("data", (part) => (text += String(part)));
+        response.on("end", () => {
+          answer({ status: response.statusCode, text });
+        });
+      }).on("error", fail);
+    });
+
+  test("requests for another host, whatever they ask for, and addresses that are no text", async () => {
+    const { address } = await started(temporaryDirectory());
+    const { host, port } = new URL(address);
+    for (const own of [host, "localhost", `LOCALHOST:${port}`, `[::1]:${port}`, "127.0.0.2"]) {
+      expect(await ask(address, "/", own), own).toMatchObject({ status: 200 });
+    }
+    for (const other of ["evil.example", `evil.example:${port}`, "localhost.evil.example", "127.0.0.1.evil.example", "192.0.2.7", "x@localhost"]) {
+      expect(await ask(address, "/", other), other).toEqual({ status: 421, text: expect.stringMatching(/^This server answers under .*\.\n$/) as string });
+    }
+    for (const path of ["/events/gale", "/%65vents/gale", "/?a=/api/", "/_next/../events/gale"]) {
+      expect((await ask(address, path, "evil.example")).text, path).not.toContain("<html");
+    }
+    expect(await ask(address, "/events/%E0%A4%A", host)).toEqual({ status: 400, text: "The address holds a percent sign that spells no letter.\n" });
+    expect((await ask(address, "/events/100%25", host)).status).toBe(404);
+  });
+});
+
+describe("the names of a server", () => {
+  test.each([
+    ["waves.example", "waves.example:3000", true],
+    ["waves.example", "other.example", false],
+    ["waves.example", "localhost:3000", true],
+    ["fd00::7", "[fd00:0:0::7]:3000", true],
+    ["fd00::7", "[fd00::8]:3000", false],
+    ["192.0.2.7", "192.0.2.7", true],
+    ["0.0.0.0", "192.0.2.7:3000", true],
+    ["::", "[fd00::7]", true],
+    ["0.0.0.0", "waves.example", false],
+    ["::", "7.example", false],
+    ["127.0.0.1", null, false],
+    ["127.0.0.1", "", false],
+    ["127.0.0.1", "a b", false],
+  ])("listening at %s, %s is its own: %s", (listensAt, host, own) => {
+    expect(isOwnHost(host, listensAt)).toBe(own);
   });
 });
 

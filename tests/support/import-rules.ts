@@ -26,7 +26,7 @@ const MAY_IMPORT: Readonly<Record<string, readonly string[] | undefined>> = {
   cli: [...CORE, "records", "contracts", "presentation", "application", "application/ports", "store"],
   app: [...CORE, "contracts", "chart", "presentation", "application", "application/ports", "http"],
   prisma: [...CORE, "records", "application/ports", "store"],
-  proxy: [],
+  proxy: ["http"],
   config: ["tests"],
   tests: [...CORE, "records", "contracts", "chart", "presentation", "application", "application/ports", "store", "jobs", "http", "cli", "app", "prisma"],
 };
