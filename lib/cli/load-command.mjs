@@ -1,11 +1,12 @@
 import { createHash } from "node:crypto";
-import { existsSync, mkdirSync, readdirSync, readFileSync, renameSync, rmSync, writeFileSync } from "node:fs";
+import { existsSync, mkdirSync, readdirSync, readFileSync, renameSync, rmSync, statSync, writeFileSync } from "node:fs";
 import { createRequire } from "node:module";
 import { dirname, join } from "node:path";
 import { pathToFileURL } from "node:url";
 
 const ENTRY = join("lib", "cli", "main.ts");
 const KEPT_IN = join("node_modules", ".cache", "offing");
+const MILLISECONDS_PER_DAY = 86_400_000;
 
 /**
  * What lib/cli/main.ts exports. The command's own files and those of its packages are some 800, and reading them one
@@ -58,9 +59,15 @@ async function joined({ packageRoot, file }) {
   }
 }
 
-/** Files joined from earlier sources. What another call is making at this moment is left alone. */
+/**
+ * Files joined from earlier sources, and what calls that were ended left unfinished, once they are a day old. Younger
+ * ones may be another call's, which found them and has yet to read them.
+ */
 function forgetOthers(file) {
   const folder = dirname(file);
-  const others = readdirSync(folder).filter((name) => name.endsWith(".cjs") && join(folder, name) !== file);
-  for (const name of others) rmSync(join(folder, name), { force: true });
+  const others = readdirSync(folder).map((name) => join(folder, name)).filter((path) => path !== file);
+  for (const path of others) {
+    const made = statSync(path, { throwIfNoEntry: false })?.mtimeMs ?? Infinity;
+    if (made < Date.now() - MILLISECONDS_PER_DAY) rmSync(path, { force: true });
+  }
 }
