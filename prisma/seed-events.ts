@@ -8,9 +8,10 @@ import type { InputIssue } from "#lib/core/failures/input-error.ts";
 import { Refusal } from "#lib/core/failures/refusal.ts";
 import { readEventFiles } from "#lib/records/event-files.ts";
 import type { TextFile } from "#lib/records/event-files.ts";
+import type { Note, ReadResult } from "#lib/records/note.ts";
 import { decodeText } from "#lib/records/text.ts";
 
-const EventFile = z.strictObject({ title: z.string().min(1), note: z.string() });
+const EventFile = z.strictObject({ title: z.string().min(1), note: z.string().default("") });
 
 export interface Intake {
   readonly saved: readonly string[];
@@ -20,11 +21,12 @@ export interface Intake {
 
 /**
  * The events of a folder, in the order of their names: `stations.csv`, and a folder for each event, named by its id,
- * with `event.json` (`{"title": ..., "note": ...}`) and `readings.csv`, `arrivals.csv` or both.
+ * with `event.json` (`{"title": ..., "note": ...}`, the note as you like) and `readings.csv`, `arrivals.csv` or both.
+ * Errors that the readers took for want of any stand in the event's note as well, for whoever opens it later.
  *
  * @throws InputError with the problems of all their files.
  */
-export function readEventFolder(directory: string): StoredEvent[] {
+export function readEventFolder(directory: string): ReadResult<StoredEvent[]> {
   const issues: InputIssue[] = [];
   const stations = textFile(directory, "stations.csv");
   if (stations === null) throw problem(directory, "found no stations.csv; wanted one, and a folder for each event beside it");
@@ -43,7 +45,8 @@ export function readEventFolder(directory: string): StoredEvent[] {
   });
   if (issues.length > 0) throw new InputError(issues);
   if (events.length === 0) throw problem(directory, "found no event; wanted a folder for each, with an event.json in it");
-  return events;
+  const notes = events.flatMap((event) => event.notes);
+  return { value: events.map(({ value }) => value), notes: notes.filter(({ message }, i) => notes.findIndex((note) => note.message === message) === i) };
 }
 
 /** Saves events one by one. One that is known already, or clashes with what is, does not keep the others out. */
@@ -62,20 +65,26 @@ export async function saveEvents(store: EventStore, events: readonly StoredEvent
   return { saved, refused };
 }
 
-function readEvent(id: string, folder: string, stations: TextFile): StoredEvent {
+function readEvent(id: string, folder: string, stations: TextFile): ReadResult<StoredEvent> {
   const { title, note } = readEventFile(join(folder, "event.json"), id);
-  const { value } = readEventFiles({ stations, readings: textFile(folder, "readings.csv"), arrivals: textFile(folder, "arrivals.csv") });
+  const { value, notes } = readEventFiles({ stations, readings: textFile(folder, "readings.csv"), arrivals: textFile(folder, "arrivals.csv") });
   if (value.readings.length + value.estimates.length === 0) {
     throw problem(folder, "found neither readings.csv nor arrivals.csv; wanted one of them at least");
   }
-  return { id, title, note, observations: withoutIdle(value) };
+  return { value: { id, title, note: noteWith(note, notes), observations: withoutIdle(value) }, notes };
+}
+
+/** The errors that were taken change the answer, and nothing else that is stored tells them from given ones. */
+function noteWith(note: string, notes: readonly Note[]): string {
+  const assumed = notes.filter(({ code }) => code === "default-error").map(({ message }) => `Assumed at intake: ${message}`);
+  return [note, ...assumed].filter((part) => part !== "").join(" ");
 }
 
 function readEventFile(path: string, id: string): z.infer<typeof EventFile> {
   try {
     return EventFile.parse(JSON.parse(readFileSync(path, "utf8")));
   } catch {
-    throw problem(join(id, "event.json"), 'found something else; wanted {"title": "...", "note": "..."}, the title not empty');
+    throw problem(join(id, "event.json"), 'found something else; wanted {"title": "...", "note": "..."}, the title not empty; the note may be left out');
   }
 }
 

@@ -1,4 +1,5 @@
-import { cpSync, mkdirSync, writeFileSync } from "node:fs";
+import { spawnSync } from "node:child_process";
+import { cpSync, mkdirSync, readFileSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 import { expect, test } from "vitest";
 import { InputError } from "#lib/core/failures/input-error.ts";
@@ -21,7 +22,8 @@ function problemsOf(directory: string): string[] {
 
 test("a folder of events is saved whole, and again only what is new", async () => {
   const { store } = await temporaryStore();
-  const events = readEventFolder(DEMO);
+  const { value: events, notes } = readEventFolder(DEMO);
+  expect(notes).toStrictEqual([]);
   expect(events.map(({ id }) => id)).toStrictEqual(["albatross", "fulmar", "gannet", "heron", "petrel", "tern"]);
   const first = await saveEvents(store, events.slice(1), BY);
   expect(first).toStrictEqual({ saved: ["fulmar", "gannet", "heron", "petrel", "tern"], refused: [] });
@@ -35,6 +37,31 @@ test("a folder of events is saved whole, and again only what is new", async () =
   expect(petrel?.observations.readings).toHaveLength(60);
   expect(petrel?.observations.estimates).toHaveLength(1);
   expect(new Set(petrel?.observations.deployments.map(({ stationId }) => stationId)).size).toBe(6);
+});
+
+test("an error that was taken for want of any is told at intake, and stands in the event's note", () => {
+  const directory = temporaryDirectory();
+  const from = readFileSync(join(DEMO, "heron", "readings.csv"), "utf8").trim().split("\n");
+  const withoutErrors = from.map((line) => { const [station, time, period] = line.split(","); return [station, time, period].join(","); });
+  cpSync(join(DEMO, "stations.csv"), join(directory, "stations.csv"));
+  for (const [id, file] of [["noted", '{"title": "One", "note": "From the south."}'], ["plain", '{"title": "Two"}']] as const) {
+    mkdirSync(join(directory, id));
+    writeFileSync(join(directory, id, "event.json"), file);
+    writeFileSync(join(directory, id, "readings.csv"), withoutErrors.join("\n"));
+  }
+  const { value, notes } = readEventFolder(directory);
+  const taken = (id: string): string[] => [
+    `${id}/readings.csv, 18 rows: kind ridge and no time_sigma_s; 1800 s was used.`,
+    `${id}/readings.csv, 18 rows: kind ridge and no error of the period or frequency; 0 was used.`,
+  ];
+  expect(notes.map(({ message }) => message)).toStrictEqual([...taken("noted"), ...taken("plain")]);
+  const said = (id: string): string => taken(id).map((message) => `Assumed at intake: ${message}`).join(" ");
+  expect(value.map(({ note }) => note)).toStrictEqual([`From the south. ${said("noted")}`, said("plain")]);
+
+  const data = join(directory, "data");
+  const run = spawnSync(process.execPath, ["--import", "tsx", "prisma/seed.ts", "--data", data, "--from", directory], { encoding: "utf8" });
+  expect(run).toMatchObject({ status: 0, stdout: "Saved 2 events: noted, plain.\n" });
+  expect(run.stderr.trim().split("\n")).toStrictEqual([...taken("noted"), ...taken("plain")].map((message) => `Warning: ${message}`));
 });
 
 test("what is wrong with a folder is told of all its events at once, by file, row and column", () => {
