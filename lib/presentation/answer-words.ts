@@ -5,7 +5,8 @@ import { ringSigmas } from "#lib/core/source/ring-sigma.ts";
 import type { EstimationSettings } from "#lib/core/source/settings.ts";
 import type { EventSolution } from "#lib/core/source/solution.ts";
 import { areaWords, distanceWords, uncertainDistanceWords, type DistanceUnit } from "./distances.ts";
-import { percentWords, pValueWords } from "./figures.ts";
+import { probabilityFigure, pValueWords } from "./figures.ts";
+import { sourceMark } from "./marks.ts";
 import { countWord, listWords, startingSentence } from "./numbers-in-words.ts";
 import { positionParts, positionWords } from "./positions.ts";
 import { plusMinusHours, uncertainMomentWords } from "./times.ts";
@@ -14,8 +15,18 @@ import { plusMinusHours, uncertainMomentWords } from "./times.ts";
 export interface AnswerWords {
   readonly large: readonly string[];
   readonly time: string | null;
+  /** Possible sources of which none stands out, each as large as the others. */
+  readonly sources: readonly SourceWords[];
   readonly verdict: string;
   readonly sentence: string;
+}
+
+export interface SourceWords {
+  /** Its letter, on the chart as well. */
+  readonly mark: string;
+  readonly place: string;
+  readonly probability: string;
+  readonly time: string;
 }
 
 interface Said {
@@ -32,7 +43,7 @@ export function answerWords(said: Said): AnswerWords {
     case "located":
       return { ...placed(answer), verdict: "Located.", sentence: locatedSentence(answer, said) };
     case "several":
-      return { ...placed(answer), ...severalWords(answer) };
+      return answer.modes.length > 1 ? severalWords(answer) : unsureWords(answer);
     case "ring-only":
     case "too-few":
       return ringOnly(said);
@@ -41,12 +52,12 @@ export function answerWords(said: Said): AnswerWords {
   }
 }
 
-function placed(answer: SourceAnswer): { large: string[]; time: string | null } {
+function placed(answer: SourceAnswer): Pick<AnswerWords, "large" | "time" | "sources"> {
   const { source } = answer;
-  if (source === null) return { large: ["No place yet"], time: null };
+  if (source === null) return { large: ["No place yet"], time: null, sources: [] };
   const { latitude, longitude } = positionParts(source.position);
   const moment = uncertainMomentWords(source.originEpochSeconds, source.originSigmaSeconds);
-  return { large: [latitude, longitude], time: `${moment} ${plusMinusHours(source.originSigmaSeconds)}` };
+  return { large: [latitude, longitude], time: `${moment} ${plusMinusHours(source.originSigmaSeconds)}`, sources: [] };
 }
 
 function locatedSentence(answer: SourceAnswer, said: Said): string {
@@ -58,7 +69,12 @@ function locatedSentence(answer: SourceAnswer, said: Said): string {
   const stations = `${who} agree${clockSentence(answer, said)}${p}.`;
   const widest = answer.regions.find(({ probability }) => probability === 0.95);
   const region = widest ? ` The 95\u202f% region covers ${areaWords(widest.areaSquareMetres, said.unit)}.` : "";
-  return stations + region + landSentence(answer);
+  return stations + tooGoodSentence(answer) + region + landSentence(answer);
+}
+
+/** Scatter that is hardly ever so small where the errors are as large as allowed. */
+function tooGoodSentence({ fit }: SourceAnswer): string {
+  return fit !== null && fit.pValue > 0.99 ? " They agree better than the allowed errors expect: the region is probably cautious." : "";
 }
 
 /** A station whose clock was set aside agrees in its distance alone. */
@@ -68,16 +84,29 @@ function clockSentence(answer: SourceAnswer, said: Said): string {
   return numbers.length === 0 ? "" : `, but for the clock of ${listWords(numbers)}`;
 }
 
-function severalWords(answer: SourceAnswer): { verdict: string; sentence: string } {
-  const [first, second] = answer.modes;
-  const share = first === undefined ? "too little" : percentWords(first.probability);
-  const land = landSentence(answer);
-  if (second === undefined) {
-    return { verdict: "Not surely placed.", sentence: `The best source holds ${share} of the probability; no other stands out.${land}` };
-  }
-  const next = `${positionWords(second.position)} with ${percentWords(second.probability)}`;
-  const sentence = `The most probable of ${countWord(answer.modes.length)} has ${share}; the next is ${next}.${land}`;
-  return { verdict: "Several possible sources.", sentence };
+function severalWords(answer: SourceAnswer): AnswerWords {
+  const { modes, source } = answer;
+  const sigmaSeconds = source?.originSigmaSeconds ?? 0;
+  const sources = modes.map(({ position, probability, originEpochSeconds }, index) => ({
+    mark: sourceMark(index),
+    place: positionWords(position),
+    probability: probabilityFigure(probability),
+    time: uncertainMomentWords(originEpochSeconds, sigmaSeconds),
+  }));
+  return {
+    large: [`${startingSentence(countWord(modes.length))} possible sources`],
+    time: null,
+    sources,
+    verdict: "Not one place.",
+    sentence: `The arrivals fit each of these places with the probability beside it. Residuals, checks and sight lines are for ${sourceMark(0)}; its time is known to ${plusMinusHours(sigmaSeconds)}.${landSentence(answer)}`,
+  };
+}
+
+function unsureWords(answer: SourceAnswer): AnswerWords {
+  const [first] = answer.modes;
+  const share = first === undefined ? "too little" : probabilityFigure(first.probability);
+  const sentence = `The best source holds ${share} of the probability; no other stands out.${landSentence(answer)}`;
+  return { ...placed(answer), verdict: "Not surely placed.", sentence };
 }
 
 function landSentence(answer: SourceAnswer): string {
@@ -102,10 +131,11 @@ function ringOnly(said: Said): AnswerWords {
   return {
     large: [uncertainDistanceWords(estimate.distanceMetres, distanceSigmaMetres, said.unit)],
     time: `${uncertainMomentWords(estimate.originEpochSeconds, originSigmaSeconds)} ${plusMinusHours(originSigmaSeconds)}`,
+    sources: [],
     verdict: "Distance only.",
     sentence:
       heard.length === 1
-        ? `One station gives a ring and a time, not a place: ${where}, in the part that it sees. The error is wider than the band: one station cannot tell a growing storm from a far one.`
+        ? `One station gives a ring and a time, not a place: ${where}, in the part that it sees. The error is more than the readings’ own ${distanceWords(Math.sqrt(estimate.covariance.distanceVariance), said.unit)}: one station cannot tell a growing storm from a far one.`
         : `The stations stand at one place, or at one another’s antipodes, so their rings are one circle: ${where}.`,
   };
 }
@@ -117,7 +147,13 @@ function tooFew(solution: EventSolution): AnswerWords {
     solution.stations.length === 0
       ? "No station is included. Include one to see its ring, two or more to see a place."
       : `No ring could be drawn from ${names || "these stations"}; the table says why.`;
-  return { large: ["No place yet"], time: null, verdict: "Too few readings.", sentence };
+  return { large: ["No place yet"], time: null, sources: [], verdict: nothingVerdict(solution), sentence };
+}
+
+function nothingVerdict({ stations }: EventSolution): string {
+  if (stations.length === 0) return "Too few stations.";
+  const short = stations.every(({ outcome }) => outcome.kind === "refused" && outcome.code === "too-few-readings");
+  return short ? "Too few readings." : "No ring.";
 }
 
 function noAgreement(answer: SourceAnswer, unit: DistanceUnit): AnswerWords {
@@ -125,6 +161,7 @@ function noAgreement(answer: SourceAnswer, unit: DistanceUnit): AnswerWords {
   return {
     large: ["No common source"],
     time: null,
+    sources: [],
     verdict: "No agreement.",
     sentence: `These arrivals do not fit one storm.${miss} Leave stations out, or look for two storms.`,
   };

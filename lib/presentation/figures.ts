@@ -26,19 +26,16 @@ export function pValueWords(pValue: number): string {
   return /^[<>]/.test(said) ? `p\u00a0${said.charAt(0)}\u00a0${said.slice(1)}` : `p\u00a0=\u00a0${said}`;
 }
 
-/** A probability with two digits; what is not quite certain never reads as 0 or 1. */
+/** A probability with two digits. None that was worked out is certain, so none reads as 0 or 1. */
 export function probabilityFigure(probability: number): string {
-  if (probability > 0 && probability < 0.005) return "<0.01";
-  if (probability < 1 && probability >= 0.995) return ">0.99";
+  if (probability < 0.005) return "<0.01";
+  if (probability >= 0.995) return ">0.99";
   return figure(probability, 2);
 }
 
-/** A probability in per cent, for a sentence. */
+/** The probability by which a region is named, in per cent. */
 export function percentWords(probability: number): string {
-  const percent = probability * 100;
-  if (percent > 0 && percent < 1) return `under 1${THIN_SPACE}%`;
-  if (percent < 100 && percent > 99) return `over 99${THIN_SPACE}%`;
-  return `${figure(percent)}${THIN_SPACE}%`;
+  return `${figure(probability * 100)}${THIN_SPACE}%`;
 }
 
 /** A value above 1 without the digits that its error leaves open: both end at the error's second digit, or at the unit. */

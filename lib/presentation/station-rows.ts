@@ -15,12 +15,15 @@ export interface StationRow {
   readonly refusal: string | null;
   readonly sentIn: boolean;
   readonly ring: string;
+  /** The readings' own error. */
   readonly ringSigma: string;
   readonly residualDistance: string;
   readonly residualHours: string;
   /** The residual of distance in parts of the band's half width, for the bar beside it. */
   readonly residualInSigmas: number | null;
   readonly belongs: string;
+  /** How far the answer moves when the station is left out. */
+  readonly withoutIt: string;
 }
 
 export function stationRows(table: {
@@ -49,6 +52,7 @@ const EMPTY: Figures = {
   residualHours: NO_FIGURE,
   residualInSigmas: null,
   belongs: NO_FIGURE,
+  withoutIt: NO_FIGURE,
 };
 
 function figures(
@@ -62,15 +66,17 @@ function figures(
   const verdict = answer?.stations.find(({ id }) => id === solved.id);
   const residual = verdict?.residual ?? null;
   const belongs = verdict?.belongs ?? null;
+  const shift = verdict?.leaveOneOutShiftMetres ?? null;
   const { distanceSigmaMetres } = ringSigmas({ estimate, settings: table.settings, spreadRaisedBy: answer?.spreadRaisedBy ?? 1 });
   return {
     refusal: null,
     sentIn: solved.outcome.kind === "sent-in",
     ring: distanceFigure(estimate.distanceMetres, table.unit),
-    ringSigma: `±\u00a0${distanceFigure(distanceSigmaMetres, table.unit)}`,
+    ringSigma: `±\u00a0${distanceFigure(Math.sqrt(estimate.covariance.distanceVariance), table.unit)}`,
     residualDistance: residual ? signedDistanceFigure(residual.distanceMetres, table.unit) : NO_FIGURE,
     residualHours: residual ? signedHoursFigure(residual.originSeconds) : NO_FIGURE,
     residualInSigmas: residual ? residual.distanceMetres / distanceSigmaMetres : null,
     belongs: belongs === null ? NO_FIGURE : probabilityFigure(belongs),
+    withoutIt: shift === null ? NO_FIGURE : distanceFigure(shift, table.unit),
   };
 }

@@ -17,26 +17,32 @@ export function Evidence(props: {
   unit: DistanceUnit;
   view: EventView;
   settings: EstimationSettings;
+  /** Whether the figures still answer another choice of stations, */
+  isBehind: boolean;
+  /** and those of this one are being worked out. */
+  isWorking: boolean;
   onInclude: (id: string, included: boolean) => void;
   onFocus: (id: string) => void;
 }) {
   const { answer } = props.solution;
   const warnings = warningsToSay(props.solution);
   return (
-    <section className={styles.evidence} aria-label="Evidence">
-      <StationTable {...props} />
-      {answer !== null && <Checks {...props} answer={answer} />}
-      {answer !== null && <Places answer={answer} />}
-      {warnings.length > 0 && (
-        <>
-          <h2 className={styles.heading}>Warnings</h2>
-          <ul className={styles.warnings}>
-            {warnings.map(({ code, message }) => (
-              <li key={code + message}>{message}</li>
-            ))}
-          </ul>
-        </>
-      )}
+    <section className={styles.evidence} aria-label="Evidence" aria-busy={props.isWorking}>
+      <div className={props.isBehind ? styles.behind : ""}>
+        <StationTable {...props} />
+        {answer !== null && <Checks {...props} answer={answer} />}
+        {answer !== null && <Places answer={answer} />}
+        {warnings.length > 0 && (
+          <>
+            <h2 className={styles.heading}>Warnings</h2>
+            <ul className={styles.warnings}>
+              {warnings.map(({ code, message }) => (
+                <li key={code + message}>{message}</li>
+              ))}
+            </ul>
+          </>
+        )}
+      </div>
       <p className={styles.caution}>
         Timing only, not height. Not for navigation and not a warning service; official warnings and licensed judgement
         come first.
@@ -63,6 +69,8 @@ function warningsToSay({ stations, answer, warnings }: EventSolution): AnswerWar
 
 function Checks(props: {
   answer: NonNullable<EventSolution["answer"]>;
+  solution: EventSolution;
+  settings: EstimationSettings;
   stations: readonly NumberedStation[];
   unit: DistanceUnit;
 }) {

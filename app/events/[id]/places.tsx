@@ -1,17 +1,20 @@
 import type { SourceAnswer } from "#lib/core/source/answer.ts";
-import { percentWords } from "#lib/presentation/figures.ts";
+import { probabilityFigure } from "#lib/presentation/figures.ts";
+import { ruledOutMark, sourceMark } from "#lib/presentation/marks.ts";
 import { positionWords } from "#lib/presentation/positions.ts";
 import { momentWords } from "#lib/presentation/times.ts";
-import { ruledOutMark, sourceMark } from "./marks.ts";
 import styles from "./places.module.css";
 
 const SHOWN_AT_FIRST = 4;
 
-/** Where else the storm may have been, and where not and why, under the letters that stand on the chart. */
+/**
+ * Where else the storm may have been, and where not and why, under the letters that stand on the chart. Sources of
+ * which none stands out are the headline already.
+ */
 export function Places({ answer }: { answer: SourceAnswer }) {
   return (
     <>
-      {answer.modes.length > 1 && (
+      {answer.modes.length > 1 && answer.outcome !== "several" && (
         <>
           <h2 className={styles.heading}>Possible sources</h2>
           <ol className={styles.places}>
@@ -20,7 +23,7 @@ export function Places({ answer }: { answer: SourceAnswer }) {
                 <b>{sourceMark(index)}</b>
                 <span>{positionWords(mode.position)}</span>
                 <span>{momentWords(Math.round(mode.originEpochSeconds / 3600) * 3600)}</span>
-                <span className={styles.figure}>{percentWords(mode.probability)}</span>
+                <span className={styles.figure}>{probabilityFigure(mode.probability)}</span>
               </li>
             ))}
           </ol>

@@ -2,9 +2,9 @@ import { divIcon } from "leaflet";
 import { CircleMarker, Marker, Pane, Polygon, Polyline } from "react-leaflet";
 import type { ChartPoint } from "#lib/chart/chart-point.ts";
 import type { EventLayers } from "#lib/chart/event-layers.ts";
-import { percentWords } from "#lib/presentation/figures.ts";
+import { probabilityFigure } from "#lib/presentation/figures.ts";
+import { ruledOutMark, sourceMark } from "#lib/presentation/marks.ts";
 import styles from "./chart.module.css";
-import { ruledOutMark, sourceMark } from "./marks.ts";
 import { PANES } from "./panes.ts";
 
 /** Where the storm may have been: regions, possible sources, crossings, and the places that were ruled out. */
@@ -37,7 +37,7 @@ export function SourceLayers({ layers, showsSight }: { layers: EventLayers; show
         )}
         {several &&
           layers.possibleSources.map(({ probability, point }, index) => (
-            <PossibleSource key={sourceMark(index)} at={point} text={`${sourceMark(index)} ${percentWords(probability)}`} />
+            <PossibleSource key={sourceMark(index)} at={point} text={`${sourceMark(index)} ${probabilityFigure(probability)}`} />
           ))}
         {showsSight && layers.sightLines.map(({ stationId, blockedAt }) =>
           blockedAt === null ? null : <Letter key={`block ${stationId}`} at={blockedAt} text="|" className={styles.block} />,

@@ -22,18 +22,19 @@ export function StationTable(props: {
   return (
     <table className={styles.table}>
       <caption className="for-screen-readers">
-        Stations: ring and residuals (ring minus answer) in {unitName} and hours, and the probability that the station
-        saw this storm
+        Stations: ring with the readings’ own error, and residuals (ring minus answer), in {unitName} and hours; the
+        probability that the station saw this storm; and how far the answer moves without the station
       </caption>
       <thead>
         <tr>
           <th scope="col"><span className="for-screen-readers">Included</span></th>
           <th scope="col" className={styles.number}><span className="for-screen-readers">Number</span></th>
           <th scope="col" className={styles.name}>station</th>
-          <th scope="col">ring, <abbr title={unitName}>{unit}</abbr></th>
+          <th scope="col">ring <abbr title="1 sigma, the readings’ own error">±</abbr>, <abbr title={unitName}>{unit}</abbr></th>
           <th scope="col">residual, <abbr title={unitName}>{unit}</abbr></th>
           <th scope="col"><span className="for-screen-readers">residual, </span><abbr title="hours">h</abbr></th>
           <th scope="col"><abbr title="probability that the station saw this storm">belongs</abbr></th>
+          <th scope="col"><abbr title="how far the answer moves when the station is left out">without it</abbr>, <abbr title={unitName}>{unit}</abbr></th>
         </tr>
       </thead>
       <tbody>
@@ -70,8 +71,8 @@ function Row(props: {
           {name} <span className={styles.id}>{id}{row.sentIn && ", estimate"}</span>
         </button>
       </th>
-      {row.refusal !== null && <td colSpan={4} className={styles.words}>{row.refusal}</td>}
-      {!row.included && <td colSpan={4} className={styles.words}>left out</td>}
+      {row.refusal !== null && <td colSpan={5} className={styles.words}>{row.refusal}</td>}
+      {!row.included && <td colSpan={5} className={styles.words}>left out</td>}
       {row.included && row.refusal === null && <Figures row={row} />}
     </tr>
   );
@@ -84,14 +85,18 @@ function Figures({ row }: { row: StationRow }) {
         {row.ring} <span className={styles.sigma}>{row.ringSigma}</span>
       </td>
       <td>
-        {row.residualInSigmas !== null && <ResidualBar inSigmas={row.residualInSigmas} />}
+        {row.residualInSigmas !== null && Math.abs(row.residualInSigmas) >= LEAST_READ && <ResidualBar inSigmas={row.residualInSigmas} />}
         <span className={styles.figure}>{row.residualDistance}</span>
       </td>
       <td>{row.residualHours}</td>
       <td>{row.belongs}</td>
+      <td>{row.withoutIt}</td>
     </>
   );
 }
+
+/** A shorter bar is not told from none. */
+const LEAST_READ = 0.5;
 
 /** The residual of distance against two half widths of the band to either side; a figure beside it says the same. */
 function ResidualBar({ inSigmas }: { inSigmas: number }) {

@@ -6,6 +6,7 @@ import type { EventSolution } from "#lib/core/source/solution.ts";
 import { answerWords } from "#lib/presentation/answer-words.ts";
 import { checkWords } from "#lib/presentation/check-words.ts";
 import { figure, NO_FIGURE, percentWords, probabilityFigure, signedFigure, twoLeadingDigits } from "#lib/presentation/figures.ts";
+import { sourceMark } from "#lib/presentation/marks.ts";
 import { positionWords } from "#lib/presentation/positions.ts";
 import { momentWords } from "#lib/presentation/times.ts";
 import { provenanceText } from "./provenance-text.ts";
@@ -22,16 +23,18 @@ export function locateText({ observations, solution, answer }: {
   readonly answer: LocateJson;
 }): string {
   const stations = numberedStations(observations);
-  const words = answerWords({ solution, stations, settings: toEstimationSettings(answer.settings), unit: UNIT });
-  const checks = solution.answer === null ? null : checkWords({ answer: solution.answer, stations, unit: UNIT });
+  const said = { solution, stations, settings: toEstimationSettings(answer.settings), unit: UNIT } as const;
+  const words = answerWords(said);
+  const checks = solution.answer === null ? null : checkWords({ ...said, answer: solution.answer });
   const numbers = new Map(stations.map(({ id, number }) => [id, number]));
   const refused = answer.stations.filter(({ error }) => error !== undefined);
   const fitted = answer.stations.filter(({ error }) => error === undefined);
   return [
     words.large.join("  "),
     ...(words.time === null ? [] : [words.time]),
+    ...words.sources.map(({ mark, place, probability, time }) => `${mark}  ${place}  ${probability}  ${time}`),
     `${words.verdict} ${words.sentence}`,
-    ...section("Possible sources", answer.modes.map((mode) => `${percentWords(mode.probability)}  ${at(mode)}  ${momentWords(Date.parse(mode.time) / 1000)}`)),
+    ...(words.sources.length > 0 ? [] : section("Possible sources", answer.modes.map(possibleSource))),
     ...section("Ruled out", answer.ruledOut.map((point) => `${at(point)}: ${point.reason}`)),
     ...section("Regions", answer.regions.map(({ probability, areaKm2 }) => `${percentWords(probability)}  ${figure(twoLeadingDigits(areaKm2))} km²`)),
     ...section("Stations", alignedRows([HEAD, ...fitted.map((station) => cells(station, numbers.get(station.id)))])),
@@ -45,6 +48,10 @@ export function locateText({ observations, solution, answer }: {
     ...provenanceText(answer),
     CAUTION,
   ].join("\n");
+}
+
+function possibleSource(mode: LocateJson["modes"][number], index: number): string {
+  return `${sourceMark(index)}  ${at(mode)}  ${probabilityFigure(mode.probability)}  ${momentWords(Date.parse(mode.time) / 1000)}`;
 }
 
 function cells(station: LocatedStationJson, number: number | undefined): string[] {
