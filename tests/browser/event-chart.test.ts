@@ -191,7 +191,22 @@ test("two stations give two possible sources, one of them the storm", async () =
   const { storm } = truthOf("tern");
   const sources = (await chart.marks("sources")).map((mark) => legBetween(mark, storm).distanceMetres / 1000);
   expectWithin(Math.min(...sources), 0, { absolute: 400, unit: "km", because: "the 50 % region about it is 540 km in radius" });
-  await expect(page.getByText("Several possible sources.").count()).resolves.toBe(1);
-  await expect(page.getByRole("heading", { name: "Possible sources" }).count()).resolves.toBe(1);
+  const answer = page.getByRole("region", { name: "Answer" }).getByRole("status");
+  expect((await answer.innerText()).replace(/\s+/g, " ")).toMatch(/^Two possible sources A .*° N .*° E 0\.50 21 Nov .* UTC B .*° N .*° W 0\.50 21 Nov .* UTC Not one place\. .* sight lines are for A;/);
+  const sizes = await answer.getByRole("listitem").locator("span").evaluateAll((parts) => parts.filter(({ textContent }) => /°|^0\./.test(textContent)).map((part) => getComputedStyle(part).fontSize));
+  expect(sizes).toHaveLength(4);
+  expect(new Set(sizes).size).toBe(1);
+  expect(Number.parseFloat(sizes[0] ?? "")).toBeGreaterThan(18);
   expect((await chart.holding("regions", eastward(storm)))[0], "the 95 % region holds the true storm").toBe(true);
+});
+
+test("bands that overlap lie under the regions, and however many meet do not hide them", async () => {
+  const page = await openEvent("petrel?overlap=yes");
+  await page.locator(".leaflet-overlap-pane path").first().waitFor();
+  const [overlap, regions] = await page.evaluate(() => ["overlap", "regions"].map((name) => Number(getComputedStyle(document.querySelector(`.leaflet-${name}-pane`) ?? document.body).zIndex)));
+  expect(overlap).toBeLessThan(regions ?? NaN);
+  const opacities = await page.locator(".leaflet-overlap-pane path").evaluateAll((paths) => paths.map((path) => Number(getComputedStyle(path).fillOpacity)));
+  expect(opacities.length).toBeGreaterThan(5);
+  const throughAll = opacities.reduce((through, opacity) => through * (1 - opacity), 1);
+  expectWithin(1 - throughAll, 0.2, { absolute: 0.01, unit: "of full ink", because: "the darkest that leaves a region's own tint readable; common practice, no source" });
 });

@@ -1,5 +1,6 @@
 import type { Locator, Page } from "playwright-core";
 import { describe, expect, test } from "vitest";
+import { contrast } from "#tests/support/contrast.ts";
 import { demoBrowser, redrawn } from "#tests/support/demo-browser.ts";
 
 const { open, openEvent, address, expectFault } = demoBrowser();
@@ -47,11 +48,16 @@ describe("leaving a station out", () => {
       const busy = await status(page).evaluate(async (element) => {
         document.querySelector<HTMLInputElement>("tbody input[type=checkbox]")?.click();
         await Promise.resolve();
-        return element.getAttribute("aria-busy");
+        const evidence = document.querySelector("[aria-label=Evidence]");
+        const fades = [element, evidence].map((part) => Number(getComputedStyle(part?.firstElementChild ?? document.body).opacity));
+        return { busy: [element, evidence].map((part) => part?.getAttribute("aria-busy")), fades, words: element.textContent };
       });
-      expect(busy).toBe("true");
+      expect(busy.words).toContain("Left out: 1");
+      expect(busy.busy).toStrictEqual(["true", "true"]);
+      expect(Math.max(...busy.fades)).toBeLessThan(0.7);
     });
     expect(await status(page).getAttribute("aria-busy")).toBe("false");
+    expect(await status(page).locator("> div").evaluate((element) => getComputedStyle(element).opacity)).toBe("1");
   });
 
   test("by keyboard alone", async () => {
@@ -114,5 +120,26 @@ describe("the station in focus", () => {
     expect(await named.getAttribute("aria-pressed")).toBe("true");
     await named.click();
     expect(await mark.getAttribute("aria-pressed")).toBe("false");
+  });
+
+  test("is dropped by Escape", async () => {
+    const page = await openEvent("albatross?focus=tar");
+    const mark = page.getByRole("button", { name: "Station 3 Tarnmouth" });
+    expect(await mark.getAttribute("aria-pressed")).toBe("true");
+    await page.keyboard.press("Escape");
+    expect(await mark.getAttribute("aria-pressed")).toBe("false");
+    expect(new URL(page.url()).search).toBe("");
+  });
+
+  test.each(["light", "dark"] as const)("can be read where it is left out as well, in the %s", async (colorScheme) => {
+    const page = await openEvent("albatross?focus=tar&without=tar", { colorScheme });
+    const mark = page.getByRole("button", { name: "Station 3 Tarnmouth, left out" });
+    const look = await mark.evaluate((element) => {
+      const { color, backgroundColor, borderTopStyle, borderTopColor } = getComputedStyle(element);
+      return { color, backgroundColor, borderTopStyle, borderTopColor };
+    });
+    expect(look.borderTopStyle).toBe("dashed");
+    expect(contrast(look.color, look.backgroundColor)).toBeGreaterThan(7);
+    expect(contrast(look.borderTopColor, look.backgroundColor)).toBeGreaterThan(3);
   });
 });

@@ -1,6 +1,7 @@
 import axe from "axe-core";
 import type { Page } from "playwright-core";
 import { describe, expect, test } from "vitest";
+import { contrast, luminance } from "#tests/support/contrast.ts";
 import { demoBrowser, DESK, PHONE } from "#tests/support/demo-browser.ts";
 import { DEMO_EVENTS } from "#tests/support/simulator/demo-events.ts";
 
@@ -14,15 +15,6 @@ async function violations(page: Page): Promise<string[]> {
     const found = await inPage.axe.run();
     return found.violations.flatMap(({ id, nodes }) => nodes.map(({ html }) => `${id}: ${html}`));
   });
-}
-
-/** Lightness of a colour as the page paints it, from 0 to 1 (WCAG 2.2, relative luminance). */
-function luminance(colour: string): number {
-  const [red = NaN, green = NaN, blue = NaN] = (colour.match(/[\d.]+/g) ?? []).map((part) => {
-    const share = Number(part) / 255;
-    return share <= 0.04045 ? share / 12.92 : ((share + 0.055) / 1.055) ** 2.4;
-  });
-  return 0.2126 * red + 0.7152 * green + 0.0722 * blue;
 }
 
 describe("the list of events", () => {
@@ -61,6 +53,21 @@ describe("on a phone, and on the narrowest screen that WCAG asks for (1.4.10)", 
   });
 });
 
+test("on a phone the open key covers nothing, and the chart keeps its height", async () => {
+  const page = await openEvent("petrel", { viewport: PHONE });
+  const chart = page.locator(".leaflet-container");
+  const before = (await chart.boundingBox())?.height;
+  await page.getByText("Key", { exact: true }).click();
+  expect((await chart.boundingBox())?.height).toBe(before);
+  for (const name of ["Sight lines", "Overlap of bands"]) {
+    const box = page.getByRole("checkbox", { name });
+    // A click goes to whatever lies on top, and waits in vain for a covered control.
+    const was = await box.isChecked();
+    await box.click({ timeout: 5000 });
+    expect(await box.isChecked()).toBe(!was);
+  }
+});
+
 /** How far the page can be scrolled sideways, and the texts outside the chart that are cut by the screen's edge. */
 function overTheSide(page: Page): Promise<{ pixels: number; texts: (string | null)[] }> {
   return page.evaluate(() => {
@@ -81,9 +88,8 @@ describe.each(["light", "dark"] as const)("in the %s", (colorScheme) => {
       const style = (selector: string) => getComputedStyle(document.querySelector(selector) ?? document.body);
       return [style("html").backgroundColor, style("html").color, style(".leaflet-land-pane path").fill, style(".leaflet-container").backgroundColor];
     });
-    const [onPaper, inInk] = [luminance(paper), luminance(ink)];
-    expect(onPaper > inInk).toBe(colorScheme === "light");
-    expect((Math.max(onPaper, inInk) + 0.05) / (Math.min(onPaper, inInk) + 0.05)).toBeGreaterThan(7);
+    expect(luminance(paper) > luminance(ink)).toBe(colorScheme === "light");
+    expect(contrast(paper, ink)).toBeGreaterThan(7);
     expect(land).not.toBe(sea);
   });
 

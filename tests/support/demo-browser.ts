@@ -16,8 +16,8 @@ export interface DemoBrowser {
   readonly address: (path: string) => string;
 }
 
-/** One server and one Chromium for all tests of a file. Whatever a page's console calls an error fails the test. */
-export function demoBrowser(): DemoBrowser {
+/** One server (of the demo, or of events of the test's own) and one Chromium for all tests of a file. Whatever a page's console calls an error fails the test. */
+export function demoBrowser({ writeEvents }: { writeEvents?: (folder: string) => void } = {}): DemoBrowser {
   const running: { demo: ServedDemo | null; browser: Browser | null } = { demo: null, browser: null };
   const faults: string[] = [];
   const expected: RegExp[] = [];
@@ -25,7 +25,7 @@ export function demoBrowser(): DemoBrowser {
 
   beforeAll(async () => {
     const executablePath = findChromium() ?? "";
-    [running.demo, running.browser] = await Promise.all([serveDemo(), chromium.launch({ executablePath, args: CHROMIUM_FLAGS })]);
+    [running.demo, running.browser] = await Promise.all([serveDemo(writeEvents), chromium.launch({ executablePath, args: CHROMIUM_FLAGS })]);
   });
   afterAll(async () => {
     await running.browser?.close();

@@ -1,5 +1,5 @@
 import { spawn, spawnSync } from "node:child_process";
-import { mkdtempSync, rmSync } from "node:fs";
+import { mkdirSync, mkdtempSync, rmSync } from "node:fs";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
 import { fileURLToPath } from "node:url";
@@ -12,11 +12,14 @@ export interface ServedDemo {
   readonly stop: () => Promise<void>;
 }
 
-/** The built pages over a fresh folder of the demo's events, on a free port of this machine. */
-export async function serveDemo(): Promise<ServedDemo> {
+/** The built pages over the demo's events, or those that are written into a folder, on a free port of this machine. */
+export async function serveDemo(writeEvents?: (folder: string) => void): Promise<ServedDemo> {
   const folder = mkdtempSync(join(tmpdir(), "offing-pages-"));
+  const from = writeEvents === undefined ? DEMO_EVENTS : join(folder, "events");
+  if (writeEvents !== undefined) mkdirSync(from);
+  writeEvents?.(from);
   const run = (...args: string[]): string[] => ["--import", "tsx", ...args, "--data", folder];
-  const seeded = spawnSync(process.execPath, run("prisma/seed.ts", "--from", DEMO_EVENTS), { encoding: "utf8" });
+  const seeded = spawnSync(process.execPath, run("prisma/seed.ts", "--from", from), { encoding: "utf8" });
   if (seeded.status !== 0) throw new Error(`The demo could not be saved: ${seeded.stderr}`);
 
   const server = spawn(process.execPath, run("lib/cli/start.ts", "--port", "0"), { stdio: ["ignore", "pipe", "inherit"] });

@@ -2,7 +2,7 @@
 
 import "leaflet/dist/leaflet.css";
 import { latLngBounds, type LatLngBounds, type Map as LeafletMap } from "leaflet";
-import { useMemo } from "react";
+import { useMemo, useState } from "react";
 import { MapContainer, ZoomControl } from "react-leaflet";
 import type { BaseMap } from "#lib/chart/base-map.ts";
 import type { ChartArea, ChartPoint } from "#lib/chart/chart-point.ts";
@@ -11,12 +11,14 @@ import type { EventLayers } from "#lib/chart/event-layers.ts";
 import type { NumberedStation } from "#lib/core/arrival/numbered-stations.ts";
 import styles from "./chart.module.css";
 import { BaseMapLayers } from "./base-map-layers.tsx";
+import { ChartPlacing } from "./chart-placing.tsx";
 import { ExactLines } from "./exact-lines.tsx";
 import { RingLayers } from "./ring-layers.tsx";
 import { ScaleBar } from "./scale-bar.tsx";
 import { SmallestScale } from "./smallest-scale.tsx";
 import { SourceLayers } from "./source-layers.tsx";
 import { StationMarks } from "./station-marks.tsx";
+import type { ChangeView } from "./use-view.ts";
 import type { EventView } from "./view.ts";
 
 export interface ChartProps {
@@ -28,6 +30,7 @@ export interface ChartProps {
   readonly overlap: readonly ChartArea[];
   readonly view: EventView;
   readonly onFocus: (id: string) => void;
+  readonly onChange: ChangeView;
 }
 
 /** The chart of one event. It has the map library's own keys: arrows move it, plus and minus change its scale. */
@@ -39,8 +42,9 @@ export function Chart(props: ChartProps) {
 
 function DrawnChart(props: ChartProps & { layers: EventLayers }) {
   const { window, stations, layers, view } = props;
-  // Where the chart opens. Later answers leave it where the reader has put it.
-  const opensOn = useMemo(() => extent(window, stations, layers), [window, stations]); // eslint-disable-line react-hooks/exhaustive-deps
+  const whole = useMemo(() => extent(window, stations, layers), [window, stations, layers]);
+  // Where the chart opens. Later answers leave it where it is.
+  const [opensOn] = useState(whole);
   const middle = window.centreLongitudeDegrees;
   const glides = !globalThis.matchMedia("(prefers-reduced-motion: reduce)").matches;
   return (
@@ -48,7 +52,6 @@ function DrawnChart(props: ChartProps & { layers: EventLayers }) {
       ref={nameTheChart}
       className={styles.chart ?? ""}
       bounds={opensOn}
-      boundsOptions={{ paddingTopLeft: [28, 28], paddingBottomRight: [28, SCALE_BAR_PIXELS] }}
       maxBounds={[[-86, middle - 200], [86, middle + 200]]}
       maxBoundsViscosity={1}
       minZoom={0}
@@ -62,6 +65,7 @@ function DrawnChart(props: ChartProps & { layers: EventLayers }) {
     >
       <ExactLines />
       <SmallestScale />
+      <ChartPlacing whole={whole} place={view.place} onChange={props.onChange} />
       <BaseMapLayers baseMap={props.baseMap} middle={middle} />
       <RingLayers layers={layers} overlap={props.overlap} view={view} />
       <SourceLayers layers={layers} showsSight={view.showsSight} />
@@ -92,9 +96,6 @@ function extent(window: ChartWindow, stations: readonly NumberedStation[], layer
   const shown = places.map(([latitude, longitude]): ChartPoint => [Math.max(-78, Math.min(80, latitude)), longitude]);
   return latLngBounds(shown);
 }
-
-/** What the scale bar takes at the chart's foot. */
-const SCALE_BAR_PIXELS = 44;
 
 /** More places than this that the storm did not stand at need not all be seen at first. */
 const FEW = 4;

@@ -1,7 +1,7 @@
 "use client";
 
 import dynamic from "next/dynamic";
-import { useCallback, useEffect, useMemo, useState } from "react";
+import { useCallback, useEffect, useMemo } from "react";
 import { windowAround } from "#lib/chart/chart-window.ts";
 import { numberedStations } from "#lib/core/arrival/numbered-stations.ts";
 import type { EventObservations } from "#lib/core/arrival/observations.ts";
@@ -9,10 +9,12 @@ import type { EstimationSettings } from "#lib/core/source/settings.ts";
 import type { EventSolution } from "#lib/core/source/solution.ts";
 import { Answer } from "./answer.tsx";
 import { ChartBar } from "./chart-bar.tsx";
+import { ChartState } from "./chart-state.tsx";
 import { Evidence } from "./evidence.tsx";
 import styles from "./event-sheet.module.css";
-import { useEventWorker } from "./use-event-worker.ts";
-import { queryFromView, type EventView } from "./view.ts";
+import { useEventWorker, type EventWorker } from "./use-event-worker.ts";
+import { useView, type ChangeView } from "./use-view.ts";
+import type { EventView } from "./view.ts";
 
 // The map library measures the page as soon as it is loaded, which a server cannot.
 const Chart = dynamic(() => import("./chart.tsx").then((module) => module.Chart), { ssr: false });
@@ -22,49 +24,29 @@ export interface EventSheetProps {
   readonly note: string;
   readonly observations: EventObservations;
   readonly settings: EstimationSettings;
-  /** Worked out by the server, without the stations that the view leaves out. */
+  /** Worked out by the server, without these stations. */
   readonly solution: EventSolution;
-  readonly view: EventView;
+  readonly without: readonly string[];
 }
 
 export function EventSheet(props: EventSheetProps) {
   const { observations, settings } = props;
-  const [view, setView] = useState(props.view);
   const stations = useMemo(() => numberedStations(observations), [observations]);
+  const ids = useMemo(() => stations.map(({ id }) => id), [stations]);
+  const [view, change] = useView(ids);
   const window = useMemo(() => windowAround(stations.map(({ position }) => position)), [stations]);
-  const worker = useEventWorker({ observations, settings, window, solution: props.solution });
-  const { solve, findOverlap, drawn } = worker;
-  const solution = drawn?.solution ?? props.solution;
-  const cannotSolve = drawn === null && worker.failure !== null;
+  const { solution: served, without: servedWithout } = props;
+  const worker = useEventWorker({ observations, settings, window, solution: served, without: servedWithout }, view.without);
+  const { drawn, isBehind, failure } = worker;
+  const { toggleFocus, toggleStation } = useChoices(view, change);
+  useOverlap(view, worker);
 
-  const change = useCallback(
-    (part: Partial<EventView>) => {
-      const next = { ...view, ...part };
-      const address = globalThis.location.pathname + queryFromView(next);
-      // Without the worker the server works the new choice out; figures of the old one must not stand under it.
-      if (part.without !== undefined && cannotSolve) {
-        globalThis.location.assign(address);
-        return;
-      }
-      setView(next);
-      if (part.without !== undefined) solve(part.without);
-      globalThis.history.replaceState(null, "", address);
-    },
-    [view, solve, cannotSolve],
-  );
-  const toggleFocus = useCallback((id: string) => { change({ focus: view.focus === id ? null : id }); }, [change, view.focus]);
-  const toggleStation = useCallback(
-    (id: string, included: boolean) => {
-      change({ without: included ? view.without.filter((other) => other !== id) : [...view.without, id] });
-    },
-    [change, view.without],
-  );
-
+  // Without the worker the server works the new choice out; the address holds it by now.
   useEffect(() => {
-    if (view.showsOverlap && drawn !== null) findOverlap(view.focus);
-  }, [view.showsOverlap, view.focus, drawn, findOverlap]);
+    if (isBehind && drawn === null && failure !== null) globalThis.location.reload();
+  }, [isBehind, drawn, failure]);
 
-  const said = { solution, stations, settings, unit: view.unit };
+  const said = { solution: drawn?.solution ?? served, stations, settings, unit: view.unit, isBehind, isWorking: isBehind && failure === null };
   return (
     <div className={styles.sheet}>
       <section className={styles.chart} aria-label="Chart">
@@ -77,31 +59,40 @@ export function EventSheet(props: EventSheetProps) {
             overlap={view.showsOverlap ? worker.overlap : []}
             view={view}
             onFocus={toggleFocus}
+            onChange={change}
           />
-          <ChartState isDrawn={drawn !== null} isWorking={worker.isWorking} failure={worker.failure} />
+          <ChartState isDrawn={drawn !== null} isWorking={said.isWorking} failure={failure} />
         </div>
         <ChartBar view={view} onChange={change} />
       </section>
-      <Answer title={props.title} note={props.note} without={view.without} isWorking={worker.isWorking} {...said} />
+      <Answer title={props.title} note={props.note} without={view.without} {...said} />
       <Evidence {...said} view={view} onInclude={toggleStation} onFocus={toggleFocus} />
     </div>
   );
 }
 
-function ChartState({ isDrawn, isWorking, failure }: { isDrawn: boolean; isWorking: boolean; failure: string | null }) {
-  if (failure !== null) {
-    return (
-      <p className={styles.state} role="alert">
-        {isDrawn
-          ? `This choice of stations could not be worked out: ${failure} The chart still shows the last answer.`
-          : `The chart could not be drawn: ${failure} The figures beside it stand; loading the page again may help.`}
-      </p>
-    );
-  }
-  if (isDrawn && !isWorking) return null;
-  return (
-    <p className={`${styles.state ?? ""} ${isDrawn ? (styles.late ?? "") : ""}`} role="status">
-      {isDrawn ? "Working out this choice of stations…" : "Drawing the chart…"}
-    </p>
+/** What stations are chosen by, on the chart and in the table alike. Escape drops the focus from anywhere on the page. */
+function useChoices(view: EventView, change: ChangeView) {
+  const { focus, without } = view;
+  const toggleFocus = useCallback((id: string) => { change({ focus: focus === id ? null : id }); }, [change, focus]);
+  const toggleStation = useCallback(
+    (id: string, included: boolean) => {
+      change({ without: included ? without.filter((other) => other !== id) : [...without, id] });
+    },
+    [change, without],
   );
+  useEffect(() => {
+    const drop = ({ key }: KeyboardEvent): void => {
+      if (key === "Escape") change({ focus: null });
+    };
+    document.addEventListener("keydown", drop);
+    return () => { document.removeEventListener("keydown", drop); };
+  }, [change]);
+  return { toggleFocus, toggleStation };
+}
+
+function useOverlap({ showsOverlap, focus }: EventView, { drawn, findOverlap }: EventWorker): void {
+  useEffect(() => {
+    if (showsOverlap && drawn !== null) findOverlap(focus);
+  }, [showsOverlap, focus, drawn, findOverlap]);
 }

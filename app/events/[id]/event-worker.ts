@@ -6,9 +6,8 @@ import { withoutStations } from "#lib/core/arrival/without-stations.ts";
 import { buildLandMask } from "#lib/core/geodesy/land-mask.ts";
 import type { SightTable } from "#lib/core/geodesy/sight-table.ts";
 import { solveEvent } from "#lib/core/source/solve-event.ts";
-import type { EventSolution } from "#lib/core/source/solution.ts";
 import { sightOfStations } from "./sight-of-stations.ts";
-import type { WorkerReport, WorkerRequest } from "./worker-messages.ts";
+import type { Drawn, WorkerReport, WorkerRequest } from "./worker-messages.ts";
 
 type Opening = Extract<WorkerRequest, { kind: "open" }>;
 type Question = Exclude<WorkerRequest, Opening>;
@@ -43,11 +42,11 @@ async function openEvent(opening: Opening): Promise<(question: Question) => void
   const drawing = { window: opening.window, settings: opening.settings, sightTables };
   let shown = opening.solution;
 
-  const show = (ask: number, solution: EventSolution): void => {
+  const show = ({ ask, without, solution }: Omit<Drawn, "layers">): void => {
     shown = solution;
-    report({ kind: "drawn", ask, solution, layers: eventLayers({ ...drawing, solution }) });
+    report({ kind: "drawn", ask, without, solution, layers: eventLayers({ ...drawing, solution }) });
   };
-  show(0, opening.solution);
+  show({ ask: 0, without: opening.without, solution: opening.solution });
 
   return (question) => {
     try {
@@ -56,8 +55,9 @@ async function openEvent(opening: Opening): Promise<(question: Question) => void
         report({ kind: "overlap", ask: question.ask, areas });
         return;
       }
-      const observations = withoutStations(opening.observations, question.without);
-      show(question.ask, solveEvent({ observations, settings: opening.settings, land, sightTables }));
+      const { ask, without } = question;
+      const observations = withoutStations(opening.observations, without);
+      show({ ask, without, solution: solveEvent({ observations, settings: opening.settings, land, sightTables }) });
     } catch (error) {
       reportFailure(question.ask, error);
     }

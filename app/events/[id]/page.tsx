@@ -9,7 +9,7 @@ import { numberedStations } from "#lib/core/arrival/numbered-stations.ts";
 import { withoutStations } from "#lib/core/arrival/without-stations.ts";
 import { runningProgram } from "#lib/http/running-program.ts";
 import { EventSheet } from "./event-sheet.tsx";
-import { viewFromQuery, type EventView } from "./view.ts";
+import { viewFromQuery } from "./view.ts";
 import text from "../../page-text.module.css";
 
 interface EventAddress {
@@ -17,11 +17,22 @@ interface EventAddress {
   readonly searchParams: Promise<Record<string, string | string[] | undefined>>;
 }
 
-/** The head and the body of the page ask for the same event: it is loaded once. */
-const loadEvent = cache(async (id: string): Promise<StoredEvent | null> => {
+/** By its id as the address writes it. The head and the body of the page ask for the same event: it is loaded once. */
+const loadEvent = cache(async (written: string): Promise<StoredEvent | null> => {
+  const id = decoded(written);
+  if (id === null) return null;
   const { events } = await runningProgram();
   return events.loadEvent(id);
 });
+
+/** Spaces and letters beyond ASCII stand in an address as per cent signs and digits; null where those mean no text. */
+function decoded(written: string): string | null {
+  try {
+    return decodeURIComponent(written);
+  } catch {
+    return null;
+  }
+}
 
 export async function generateMetadata({ params }: EventAddress): Promise<Metadata> {
   const event = await loadEvent((await params).id);
@@ -32,24 +43,22 @@ export default async function EventPage({ params, searchParams }: EventAddress) 
   const event = await loadEvent((await params).id);
   if (event === null) notFound();
 
-  const view = viewFromQuery(
-    toQuery(await searchParams),
-    numberedStations(event.observations).map(({ id }) => id),
-  );
+  const ids = numberedStations(event.observations).map(({ id }) => id);
+  const { without } = viewFromQuery(toQuery(await searchParams), ids);
   // What is known to exist is promised before it is worked out; what does not exist has been answered 404 above.
   return (
     <Suspense fallback={<Working />}>
-      <LocatedEvent event={event} view={view} />
+      <LocatedEvent event={event} without={without} />
     </Suspense>
   );
 }
 
-async function LocatedEvent({ event, view }: { event: StoredEvent; view: EventView }) {
+async function LocatedEvent({ event, without }: { event: StoredEvent; without: readonly string[] }) {
   const { title, note, observations } = event;
   const { host } = await runningProgram();
   const settings = DEFAULT_PUBLIC_SETTINGS;
-  const { solution } = locateEvent({ observations: withoutStations(observations, view.without), settings, host });
-  return <EventSheet {...{ title, note, observations, solution, view }} settings={toEstimationSettings(settings)} />;
+  const { solution } = locateEvent({ observations: withoutStations(observations, without), settings, host });
+  return <EventSheet {...{ title, note, observations, solution, without }} settings={toEstimationSettings(settings)} />;
 }
 
 function Working() {

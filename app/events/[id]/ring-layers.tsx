@@ -10,6 +10,7 @@ import type { EventView } from "./view.ts";
 export function RingLayers(props: { layers: EventLayers; overlap: readonly ChartArea[]; view: EventView }) {
   const { layers, overlap, view } = props;
   const rings = [...layers.rings].sort((a, b) => Number(a.stationId === view.focus) - Number(b.stationId === view.focus));
+  const opacity = overlapOpacity(overlap.length);
   return (
     <>
       <Pane name="bands" style={{ zIndex: PANES.bands }}>
@@ -25,7 +26,7 @@ export function RingLayers(props: { layers: EventLayers; overlap: readonly Chart
       </Pane>
       <Pane name="overlap" style={{ zIndex: PANES.overlap }}>
         {overlap.map((area, index) => (
-          <Polygon key={index} positions={area} className={styles.overlap} interactive={false} smoothFactor={0} />
+          <Polygon key={index} positions={area} className={styles.overlap} fillOpacity={opacity} interactive={false} smoothFactor={0} />
         ))}
       </Pane>
       <Pane name="rings" style={{ zIndex: PANES.rings }}>
@@ -52,6 +53,14 @@ export function RingLayers(props: { layers: EventLayers; overlap: readonly Chart
       </Pane>
     </>
   );
+}
+
+/** Where all bands meet the overlaps together are this dark, however many they are, so that the regions stand out. */
+const DARKEST = 0.2;
+
+/** Of one of several areas painted over one another. */
+function overlapOpacity(areas: number): number {
+  return 1 - (1 - DARKEST) ** (1 / Math.max(2, areas));
 }
 
 /** The map library sets a shape's class once, when it makes it: a change of focus makes the shape anew. */

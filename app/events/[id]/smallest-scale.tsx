@@ -17,5 +17,9 @@ export function SmallestScale() {
 
 function limit(map: LeafletMap): void {
   const width = map.getSize().x;
-  if (width > 0) map.setMinZoom(Math.max(0, Math.log2((width * 360) / WIDEST_DEGREES / WORLD_PIXELS)));
+  if (width <= 0) return;
+  const least = Math.max(0, Math.log2((width * 360) / WIDEST_DEGREES / WORLD_PIXELS));
+  // At once: what stands on the chart next measures it.
+  if (map.getZoom() < least) map.setZoom(least, { animate: false });
+  map.setMinZoom(least);
 }

@@ -15,12 +15,22 @@ export type WorkerRequest =
       readonly window: ChartWindow;
       /** As worked out by the server: drawn at once, before anything is worked out here. */
       readonly solution: EventSolution;
+      /** The stations that it leaves out. */
+      readonly without: readonly string[];
     }
   | { readonly kind: "solve"; readonly ask: number; readonly without: readonly string[] }
   | { readonly kind: "overlap"; readonly ask: number; readonly focus: string | null };
 
+/** One solution and its picture, and the stations that both leave out. */
+export interface Drawn {
+  readonly ask: number;
+  readonly without: readonly string[];
+  readonly solution: EventSolution;
+  readonly layers: EventLayers;
+}
+
 export type WorkerReport =
   | { readonly kind: "base-map"; readonly baseMap: BaseMap }
-  | { readonly kind: "drawn"; readonly ask: number; readonly solution: EventSolution; readonly layers: EventLayers }
+  | ({ readonly kind: "drawn" } & Drawn)
   | { readonly kind: "overlap"; readonly ask: number; readonly areas: readonly ChartArea[] }
   | { readonly kind: "failed"; readonly ask: number; readonly message: string };
