@@ -341,6 +341,8 @@ describe("periods timed at a moment", () => {
     const ridge = readingsOf(5e6, even(8, 0.05, 0.075).map((frequencyHz) => ({ frequencyHz, sigmaSeconds: 600 })));
     const line = fitted([...timedReadings(5e6, even(12)), ...ridge]);
     expectWithin(line.distanceMetres, 5e6, ratio(1e-6, "both lie on the true line"));
+    const [single] = timedReadings(5e6, [0.0625]);
+    expectWithin(fitted([...ridge, ...(single ? [single] : [])]).distanceMetres, 5e6, ratio(1e-6, "a single one is its own mean frequency"));
     expect(Math.abs(line.sharedShifts[0]?.distanceMetres ?? NaN)).toBeLessThan(Math.abs(fitted(timedReadings(5e6, even(12))).sharedShifts[0]?.distanceMetres ?? NaN));
   });
 });
@@ -369,6 +371,29 @@ describe("readings that make no line", () => {
   it("are none that only seem to have no start: most of one frequency, evenly chosen", () => {
     const samples = Array.from({ length: 120 }, (_, i) => ({ frequencyHz: i < 119 ? 0.05 : 0.06, offSeconds: i < 119 ? i - 59 : 0 }));
     expectWithin(fitted(readingsOf(8e6, samples)).distanceMetres, 8e6, ratio(1e-3, "a minute over a lever of a day"));
+  });
+  it("are a value too, whatever the reader lets through, and a line's numbers are numbers", () => {
+    const extremes = fc.record({
+      arrivalEpochSeconds: fc.oneof(fc.constantFrom(ORIGIN, ORIGIN + 0.001, 0, -6e10, 2e11), evenly(ORIGIN, ORIGIN + 1e6)),
+      frequencyHz: fc.oneof(fc.constantFrom(0.001, 0.05, 0.05000000000000001, 2), evenly(0.04, 0.1)),
+      arrivalSigmaSeconds: fc.constantFrom(0, 0.001, 1800, 2_592_000),
+      frequencySigmaHz: fc.constantFrom(1e-9, 0.0005, 1),
+      kind: fc.constantFrom("ridge" as const, "timed" as const),
+      row: fc.integer({ min: 2, max: 99 }),
+      bearing: fc.option(fc.record({ comesFromDegrees: evenly(0, 360), sigmaDegrees: fc.constantFrom(1e-9, 5, 180) })),
+    });
+    const timed = fc.record({ durationSeconds: fc.constantFrom(0, 1, 21_600, 1e6), spectrumWidthHz: fc.constantFrom(1e-6, 0.012, 1) });
+    fc.assert(
+      fc.property(fc.array(extremes, { minLength: 1, maxLength: 70, size: "max" }), timed, (readings, window) => {
+        const outcome = fitDispersionLine(readings, { ...DEFAULT_SETTINGS, timed: window });
+        if (outcome.kind !== "fitted") return;
+        const { distanceMetres, originEpochSeconds, covariance } = outcome.line;
+        const { distanceVariance, originVariance, distanceOriginCovariance } = covariance;
+        expect([distanceMetres, originEpochSeconds, distanceVariance, originVariance, distanceOriginCovariance].every(Number.isFinite)).toBe(true);
+        expect(Math.min(distanceMetres, distanceVariance, originVariance)).toBeGreaterThan(0);
+      }),
+      { numRuns: 400 },
+    );
   });
   it("are refused where the period rises with time", () => {
     expect(codeOf(fit(readingsOf(-5e6, even(6).map((frequencyHz) => ({ frequencyHz })))))).toBe("period-rises");

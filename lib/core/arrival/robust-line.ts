@@ -45,9 +45,9 @@ export function robustLine(columns: LineColumns): RobustLine | null {
   return residuals.every(Number.isFinite) && weights.every(isAboveZero) ? { york, weights, residuals } : null;
 }
 
-/** Null where no line is determined, or where a weight is no number. */
+/** Null where no line is determined, as by a single reading, or where a weight is no number. */
 function fit(columns: LineColumns, weights: Float64Array): YorkLine | null {
-  if (!weights.every(isAboveZero)) return null;
+  if (weights.length < 2 || !weights.every(isAboveZero)) return null;
   const york = yorkLine({
     x: columns.frequency,
     y: columns.time,
