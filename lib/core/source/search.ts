@@ -27,6 +27,7 @@ const LEAST_LEVEL = 4;
 /** Peaks this far below the best do not ask for finer cells. */
 const FAINT_PEAK = 6;
 const LEAST_CELLS_IN_REGION = 100;
+/** A posterior wider than this many cells can carry is left a level coarser: seven children each. */
 const MOST_CELLS = 60_000;
 
 export interface WeighedCell extends Weight {
@@ -87,13 +88,17 @@ export function searchOcean({ network, sets, land }: SearchInput, peaks: readonl
   const rough = conditionAt(network, quest.one?.site.azimuths ?? null, quest.plan);
   let prospects: Prospect[] = firstCells().map((cell) => ({ cell, conditioned: rough }));
   for (let level = FIRST_LEVEL; ; level++) {
-    if (level >= wanted || prospects.length > MOST_CELLS) {
+    if (level >= wanted) {
       const cells = weighCells(quest, prospects);
       const enough = cellsHolding(cells, 0.95).length >= LEAST_CELLS_IN_REGION;
-      if (enough || level === LAST_LEVEL || prospects.length > MOST_CELLS) return { level, cells, neighboursOf: neighbourFinder(cells), peaks, plan: quest.plan };
+      if (enough || level === LAST_LEVEL) return { level, cells, neighboursOf: neighbourFinder(cells), peaks, plan: quest.plan };
     }
     const { kept, plan } = pruned(quest, prospects, level);
     quest = { ...quest, plan };
+    if (7 * kept.length > MOST_CELLS) {
+      const cells = weighCells(quest, kept);
+      return { level, cells, neighboursOf: neighbourFinder(cells), peaks, plan };
+    }
     prospects = kept.flatMap(({ cell, conditioned }) => childrenOf(cell).map((child) => ({ cell: child, conditioned })));
   }
 }
