@@ -47,4 +47,10 @@ describe("an event of one's own", () => {
     const row = (await page.getByRole("row").filter({ has: page.getByRole("rowheader", { name: "Saltharrow" }) }).innerText()).replace(/\s+/g, " ");
     expect(row).toMatch(/ <0\.01 \d+$/);
   });
+
+  test("draws no bar of a residual that lies within its ring's band", async () => {
+    const page = await openEvent(encodeURIComponent(ID));
+    // All rings fit within their bands: the demo's storm is the truth, and only a station's dates are wrong.
+    expect(await page.locator("tbody svg").count()).toBe(0);
+  });
 });

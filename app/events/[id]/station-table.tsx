@@ -85,8 +85,8 @@ function Figures({ row }: { row: StationRow }) {
         {row.ring} <span className={styles.sigma}>{row.ringSigma}</span>
       </td>
       <td>
+        {row.residualDistance}
         {row.residualInSigmas !== null && Math.abs(row.residualInSigmas) >= LEAST_READ && <ResidualBar inSigmas={row.residualInSigmas} />}
-        <span className={styles.figure}>{row.residualDistance}</span>
       </td>
       <td>{row.residualHours}</td>
       <td>{row.belongs}</td>
@@ -95,16 +95,16 @@ function Figures({ row }: { row: StationRow }) {
   );
 }
 
-/** A shorter bar is not told from none. */
-const LEAST_READ = 0.5;
+/** A bar of a ring that misses the answer by less than its band is too short to be read. */
+const LEAST_READ = 1;
 
-/** The residual of distance against two half widths of the band to either side; a figure beside it says the same. */
+/** The residual of distance against two half widths of the band to either side; the figure above it says the same. */
 function ResidualBar({ inSigmas }: { inSigmas: number }) {
   const end = Math.max(-2, Math.min(2, inSigmas)) * 12;
   return (
-    <svg className={styles.bar} viewBox="-25 -8 50 16" width="44" height="14" aria-hidden="true">
+    <svg className={styles.bar} viewBox="-25 -4 50 8" width="44" height="7" aria-hidden="true">
       <rect className={styles.barFill} x={Math.min(0, end)} y="-3" width={Math.abs(end)} height="6" />
-      <path className={styles.barAxis} d="M0 -7V7" />
+      <path className={styles.barAxis} d="M0 -4V4" />
     </svg>
   );
 }
