@@ -33,7 +33,7 @@ function stationWarnings({ stations, source }: Omit<SourceAnswer, "warnings">): 
   return stations.flatMap(({ id, belongs, clockOffset }) => {
     const stray = belongs !== null && belongs < 0.5;
     return [
-      ...(stray ? [{ code: "station-does-not-belong", message: `${id} probably saw another storm, or its clock is wrong: it does not belong to this answer (probability ${belongs.toFixed(2)}).` }] : []),
+      ...(stray ? [{ code: "station-does-not-belong", message: `${id} probably saw another storm, or its clock is wrong: it does not belong to this answer (probability ${belongs < 0.01 ? "below 0.01" : belongs.toFixed(2)}).` }] : []),
       ...(clockOffset ? [{ code: "clock-suspect", message: clockSentence(id, clockOffset) }] : []),
     ];
   });
