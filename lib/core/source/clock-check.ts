@@ -14,7 +14,7 @@ const HOURS_SIGMA_SECONDS = 12 * SECONDS_PER_HOUR;
 /** Of stations whose times ask for a look, one in ten is taken to have a wrong clock. */
 const WRONG_PRIOR = 0.1;
 /** Named where it is this probable: in simulations, nine days in ten that are wrong and one right clock in a hundred. */
-const NAMED_PROBABILITY = 0.27;
+const NAMED_PROBABILITY = 0.29;
 const LEAST_STATIONS = 3;
 
 export interface ClockOffset {
