@@ -1,13 +1,14 @@
 import { join, resolve } from "node:path";
 import type { Host } from "#lib/application/host.ts";
 import { createLand } from "#lib/application/land.ts";
-import type { EventStore } from "#lib/application/ports.ts";
+import type { EventStore, LocalizationStore } from "#lib/application/ports.ts";
 import { readLandTopology, readProgramName } from "#lib/application/shipped-files.ts";
 import { sharedStore } from "#lib/store/shared-store.ts";
 
-/** What pages and routes are lent: where events are kept, and what a use case needs. */
+/** What pages and routes are lent: where events and their answers are kept, and what a use case needs. */
 export interface RunningProgram {
   readonly events: EventStore;
+  readonly localizations: LocalizationStore;
   readonly host: Host;
 }
 
@@ -25,11 +26,11 @@ export async function runningProgram(): Promise<RunningProgram> {
   if (dataDirectory === undefined || dataDirectory === "") {
     throw new Error("No data directory is named. Start the server with: npm start -- --data DIR");
   }
-  const events = await sharedStore({
+  const store = await sharedStore({
     dataDirectory: resolve(packageRoot, dataDirectory),
     migrationsDirectory: join(packageRoot, "prisma", "migrations"),
   });
-  return { events, host: sharedHost(packageRoot) };
+  return { events: store, localizations: store, host: sharedHost(packageRoot) };
 }
 
 function sharedHost(packageRoot: string): Host {

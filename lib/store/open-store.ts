@@ -1,9 +1,10 @@
 import { mkdirSync } from "node:fs";
 import { join } from "node:path";
-import type { EventStore } from "#lib/application/ports.ts";
+import type { EventStore, LocalizationStore } from "#lib/application/ports.ts";
 import { openClient } from "./client.ts";
 import type { Prisma } from "./generated/client.ts";
 import { listEvents, loadEvent } from "./load-events.ts";
+import { listLocalizations, loadLocalization, saveLocalization } from "./localizations.ts";
 import { lockFolder } from "./lock-folder.ts";
 import { migrate } from "./migrate.ts";
 import { saveEvent } from "./save-event.ts";
@@ -12,7 +13,7 @@ import { createWriteGate } from "./write-gate.ts";
 
 export const DATABASE_FILE = "offing.sqlite";
 
-export interface Store extends EventStore {
+export interface Store extends EventStore, LocalizationStore {
   /** Does several writes as one: all of them, or none when `work` throws. Waits for its turn at the write gate. */
   write<T>(work: (transaction: Prisma.TransactionClient) => Promise<T>): Promise<T>;
   close(): Promise<void>;
@@ -43,6 +44,9 @@ export async function openStore(place: Place): Promise<Store> {
     listEvents: () => listEvents(reader),
     loadEvent: (id) => loadEvent(reader, id),
     saveEvent: (event) => write((transaction) => saveEvent(transaction, event)),
+    listLocalizations: (eventId) => listLocalizations(reader, eventId),
+    loadLocalization: (eventId, number) => loadLocalization(reader, eventId, number),
+    saveLocalization: (localization) => write((transaction) => saveLocalization(transaction, localization)),
     async close() {
       await gate.settled();
       await Promise.all([writer.$disconnect(), reader.$disconnect()]);

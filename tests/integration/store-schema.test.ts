@@ -57,7 +57,7 @@ test("the migrated database holds the schema's tables and no others", () => {
   const tables = migratedDatabase().prepare<[], { name: string }>("SELECT name FROM sqlite_master WHERE type = 'table' ORDER BY name").all();
   const own = tables.map((row) => row.name).filter((name) => !name.startsWith("sqlite_") && name !== "_prisma_migrations");
   expect(own).toStrictEqual(declared.map((table) => table.name).sort());
-  expect(own).toHaveLength(8);
+  expect(own).toHaveLength(9);
 });
 
 test.each(declared)("the migrated table $name has the schema's columns and keys", (table) => {
@@ -70,6 +70,8 @@ const DEPLOYMENT = "INSERT INTO deployments (station_id, ordinal, name, sensor, 
 const EVENT = `${STATION} INSERT INTO events VALUES ('e', 'Storm', '', 0); INSERT INTO event_stations VALUES ('e', 'a', 0);`;
 const READING = `${EVENT} INSERT INTO readings (event_id, station_id, ordinal, source_row, arrival_epoch_seconds, frequency_sigma_hz, kind, frequency_hz, arrival_sigma_seconds`;
 const ESTIMATE = `${EVENT} INSERT INTO estimates (event_id, station_id, ordinal, source_row, shared_shifts_json, origin_epoch_seconds, distance_metres, distance_variance_m2, origin_variance_s2, distance_origin_covariance_m_s)`;
+
+const LOCALIZATION = `${EVENT} INSERT INTO localizations (event_id, number, saved_epoch_seconds, actor, reason, program, node_version, input_digest, settings_json, input_json, left_out_json, answer_json, outcome, latitude_degrees, longitude_degrees, origin_epoch_seconds) VALUES ('e', 1, 0, 'me', '', 'p', 'v', '${"0".repeat(64)}', '{}', '{}', '[]', '{}'`;
 
 const refused: [string, string][] = [
   ["a latitude of 95 degrees", `${STATION} ${DEPLOYMENT}) VALUES ('a', 0, 'A', 'surface', 95, 0)`],
@@ -85,6 +87,8 @@ const refused: [string, string][] = [
   ["a bearing without its standard deviation", `${READING}, comes_from_degrees) VALUES ('e', 'a', 0, 1, 0, 0, 'ridge', 0.05, 0, 10)`],
   ["text for a number", `${READING}) VALUES ('e', 'a', 0, 1, 'noon', 0, 'ridge', 0.05, 0)`],
   ["a correlation beyond one", `${ESTIMATE} VALUES ('e', 'a', 0, 1, '[]', 0, 1, 4, 9, -6.1)`],
+  ["an outcome that is none", `${LOCALIZATION}, 'found', 1, 2, 3)`],
+  ["a source without its time", `${LOCALIZATION}, 'located', 1, 2, NULL)`],
   ["shared shifts that are no list", `${ESTIMATE} VALUES ('e', 'a', 0, 1, '{}', 0, 1, 4, 9, -5.9)`],
 ];
 
@@ -99,6 +103,7 @@ test("the rows above are refused for what they name alone", () => {
     `${STATION} ${DEPLOYMENT}) VALUES ('a', 0, 'A', 'surface', 90, -180)`,
     `${READING}) VALUES ('e', 'a', 0, 1, 0, 0, 'ridge', 0.05, 0)`,
     `${ESTIMATE} VALUES ('e', 'a', 0, 1, '[]', 0, 1, 4, 9, -6)`,
+    `${LOCALIZATION}, 'located', 1, 2, 3)`,
   ]) {
     expect(() => migratedDatabase().exec(sql)).not.toThrow();
   }

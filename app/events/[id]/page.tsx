@@ -7,6 +7,7 @@ import { toEstimationSettings } from "#lib/contracts/estimation-settings.ts";
 import { DEFAULT_PUBLIC_SETTINGS } from "#lib/contracts/settings.ts";
 import { numberedStations } from "#lib/core/arrival/numbered-stations.ts";
 import { withoutStations } from "#lib/core/arrival/without-stations.ts";
+import { decodedPart } from "#lib/http/address-part.ts";
 import { runningProgram } from "#lib/http/running-program.ts";
 import { EventSheet } from "./event-sheet.tsx";
 import { viewFromQuery } from "./view.ts";
@@ -19,20 +20,11 @@ interface EventAddress {
 
 /** By its id as the address writes it. The head and the body of the page ask for the same event: it is loaded once. */
 const loadEvent = cache(async (written: string): Promise<StoredEvent | null> => {
-  const id = decoded(written);
+  const id = decodedPart(written);
   if (id === null) return null;
   const { events } = await runningProgram();
   return events.loadEvent(id);
 });
-
-/** Spaces and letters beyond ASCII stand in an address as per cent signs and digits; null where those mean no text. */
-function decoded(written: string): string | null {
-  try {
-    return decodeURIComponent(written);
-  } catch {
-    return null;
-  }
-}
 
 export async function generateMetadata({ params }: EventAddress): Promise<Metadata> {
   const event = await loadEvent((await params).id);
