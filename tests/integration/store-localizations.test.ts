@@ -1,5 +1,7 @@
 import { readFileSync } from "node:fs";
-import { describe, expect, test } from "vitest";
+import { join } from "node:path";
+import Database from "better-sqlite3";
+import { describe, expect, onTestFinished, test } from "vitest";
 import { keepLocalization } from "#lib/application/keep-localization.ts";
 import { createLand } from "#lib/application/land.ts";
 import { locateEvent } from "#lib/application/locate-event.ts";
@@ -8,6 +10,7 @@ import { readLandTopology } from "#lib/application/shipped-files.ts";
 import { readSettings } from "#lib/contracts/settings.ts";
 import type { EventObservations } from "#lib/core/arrival/observations.ts";
 import { readEventFiles } from "#lib/records/event-files.ts";
+import { DATABASE_FILE } from "#lib/store/open-store.ts";
 import { inventedEvent } from "#tests/support/invented-event.ts";
 import { temporaryStore } from "#tests/support/temporary-store.ts";
 
@@ -51,11 +54,16 @@ describe("localizations in the store", () => {
   });
 
   test("are kept for good, each with its line in the audit trail", async () => {
-    const { store } = await temporaryStore();
+    const { store, dataDirectory } = await temporaryStore();
     await store.saveEvent(inventedEvent("gale"));
     await store.saveLocalization(invented(1));
-    await expect(store.write((transaction) => transaction.localization.updateMany({ data: { reason: "better" } }))).rejects.toThrow(/kept as it was saved/);
-    await expect(store.write((transaction) => transaction.localization.deleteMany())).rejects.toThrow(/kept as it was saved/);
+    const database = new Database(join(dataDirectory, DATABASE_FILE));
+    onTestFinished(() => {
+      database.close();
+    });
+    for (const sql of ["UPDATE localizations SET reason = 'better'", "DELETE FROM localizations"]) {
+      expect(() => database.exec(sql)).toThrow("A localization is kept as it was saved.");
+    }
     const trail = await store.write((transaction) => transaction.auditEntry.findMany({ where: { action: "localization saved" } }));
     expect(trail.map(({ actor, subject, detail }) => [actor, subject, JSON.parse(detail) as unknown])).toStrictEqual([
       ["test", "event gale", { number: 1, outcome: "located", inputDigest: "ab".repeat(32), leftOut: ["far-rock"] }],
