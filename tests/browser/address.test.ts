@@ -12,7 +12,7 @@ const drawnWithout = (page: Page, rings: number): Promise<unknown> =>
 
 /** What the page says and shows of its choice: the headline, the unit, and whether the first station counts. */
 async function shown(page: Page): Promise<{ words: string; nmi: boolean; first: boolean }> {
-  const words = (await page.getByRole("region", { name: "Answer" }).getByRole("status").innerText()).replace(/\s+/g, " ");
+  const words = (await page.getByRole("region", { name: "Answer", exact: true }).getByRole("status").innerText()).replace(/\s+/g, " ");
   return { words, nmi: await page.getByRole("radio", { name: "nmi" }).isChecked(), first: await box(page, "1 Fennbank").isChecked() };
 }
 

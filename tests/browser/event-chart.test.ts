@@ -34,7 +34,7 @@ interface Answer {
 
 /** The answer as a reader takes it from the page. */
 async function readAnswer(page: Page): Promise<Answer> {
-  const words = (await page.getByRole("region", { name: "Answer" }).getByRole("status").innerText()).replace(/\s+/g, " ");
+  const words = (await page.getByRole("region", { name: "Answer", exact: true }).getByRole("status").innerText()).replace(/\s+/g, " ");
   const found = /([\d.]+)° ([NS]) ([\d.]+)° ([EW]) (\d+ \w+ \d+ \d\d:\d\d UTC) ± ([\d.]+) h/.exec(words);
   if (found === null) throw new Error(`No position and time in: ${words}`);
   const [, latitude, ns, longitude, ew, moment = "", hours] = found;
@@ -176,7 +176,7 @@ describe("round the South Pole", () => {
 test("one station gives its ring and no place", async () => {
   const page = await openEvent("fulmar");
   const truth = truthOf("fulmar");
-  const words = (await page.getByRole("region", { name: "Answer" }).getByRole("status").innerText()).replace(/\s+/g, " ");
+  const words = (await page.getByRole("region", { name: "Answer", exact: true }).getByRole("status").innerText()).replace(/\s+/g, " ");
   const [, km, sigmaKm, moment = "", hours] = /^([\d ]+) ± (\d+) km (.* UTC) ± ([\d.]+) h Distance only\./.exec(words) ?? [];
   const distanceKm = legBetween(station("mar").position, truth.storm).distanceMetres / 1000;
   expectWithin(Number(km?.replace(/\s/g, "")), distanceKm, { absolute: 2.6 * Number(sigmaKm), unit: "km", because: "99 % of the stated error" });
@@ -191,7 +191,7 @@ test("two stations give two possible sources, one of them the storm", async () =
   const { storm } = truthOf("tern");
   const sources = (await chart.marks("sources")).map((mark) => legBetween(mark, storm).distanceMetres / 1000);
   expectWithin(Math.min(...sources), 0, { absolute: 400, unit: "km", because: "the 50 % region about it is 540 km in radius" });
-  const answer = page.getByRole("region", { name: "Answer" }).getByRole("status");
+  const answer = page.getByRole("region", { name: "Answer", exact: true }).getByRole("status");
   expect((await answer.innerText()).replace(/\s+/g, " ")).toMatch(/^Two possible sources A .*° N .*° E 0\.50 21 Nov .* UTC B .*° N .*° W 0\.50 21 Nov .* UTC Not one place\. .* sight lines are for A;/);
   const sizes = await answer.getByRole("listitem").locator("span").evaluateAll((parts) => parts.filter(({ textContent }) => /°|^0\./.test(textContent)).map((part) => getComputedStyle(part).fontSize));
   expect(sizes).toHaveLength(4);

@@ -6,7 +6,7 @@ import { demoBrowser, redrawn } from "#tests/support/demo-browser.ts";
 const { open, openEvent, address, expectFault } = demoBrowser();
 
 const headline = async (page: Page): Promise<string> => (await status(page).innerText()).replace(/\s+/g, " ");
-const status = (page: Page): Locator => page.getByRole("region", { name: "Answer" }).getByRole("status");
+const status = (page: Page): Locator => page.getByRole("region", { name: "Answer", exact: true }).getByRole("status");
 const included = (page: Page, name: string): Locator => page.getByRole("checkbox", { name: `Include ${name}` });
 const rings = (page: Page): Promise<number> => page.locator(".leaflet-rings-pane path").count();
 const rowOf = async (page: Page, name: string): Promise<string> =>

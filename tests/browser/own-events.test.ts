@@ -36,7 +36,7 @@ describe("an event of one's own", () => {
 
   test("says on its page which errors were assumed", async () => {
     const page = await openEvent(encodeURIComponent(ID));
-    const answer = await page.getByRole("region", { name: "Answer" }).innerText();
+    const answer = await page.getByRole("region", { name: "Answer", exact: true }).innerText();
     expect(answer).toContain(`Assumed at intake: ${ID}/readings.csv, 55 rows: kind ridge and no time_sigma_s; 1800 s was used.`);
   });
 

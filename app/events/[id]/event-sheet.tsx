@@ -7,11 +7,13 @@ import { numberedStations } from "#lib/core/arrival/numbered-stations.ts";
 import type { EventObservations } from "#lib/core/arrival/observations.ts";
 import type { EstimationSettings } from "#lib/core/source/settings.ts";
 import type { EventSolution } from "#lib/core/source/solution.ts";
+import type { KeptAnswer } from "#lib/presentation/kept-words.ts";
 import { Answer } from "./answer.tsx";
 import { ChartBar } from "./chart-bar.tsx";
 import { ChartState } from "./chart-state.tsx";
 import { Evidence } from "./evidence.tsx";
 import styles from "./event-sheet.module.css";
+import { KeptAnswers } from "./kept-answers.tsx";
 import { useEventWorker, type EventWorker } from "./use-event-worker.ts";
 import { useView, type ChangeView } from "./use-view.ts";
 import type { EventView } from "./view.ts";
@@ -20,6 +22,7 @@ import type { EventView } from "./view.ts";
 const Chart = dynamic(() => import("./chart.tsx").then((module) => module.Chart), { ssr: false });
 
 export interface EventSheetProps {
+  readonly id: string;
   readonly title: string;
   readonly note: string;
   readonly observations: EventObservations;
@@ -27,6 +30,8 @@ export interface EventSheetProps {
   /** Worked out by the server, without these stations. */
   readonly solution: EventSolution;
   readonly without: readonly string[];
+  /** Latest first. */
+  readonly kept: readonly KeptAnswer[];
 }
 
 export function EventSheet(props: EventSheetProps) {
@@ -67,6 +72,7 @@ export function EventSheet(props: EventSheetProps) {
       </section>
       <Answer title={props.title} note={props.note} without={view.without} {...said} />
       <Evidence {...said} view={view} onInclude={toggleStation} onFocus={toggleFocus} />
+      <KeptAnswers eventId={props.id} kept={props.kept} stations={stations} without={view.without} isBehind={isBehind} />
     </div>
   );
 }

@@ -46,11 +46,12 @@ export default async function EventPage({ params, searchParams }: EventAddress) 
 }
 
 async function LocatedEvent({ event, without }: { event: StoredEvent; without: readonly string[] }) {
-  const { title, note, observations } = event;
-  const { host } = await runningProgram();
+  const { id, title, note, observations } = event;
+  const { host, localizations } = await runningProgram();
+  const kept = await localizations.listLocalizations(id);
   const settings = DEFAULT_PUBLIC_SETTINGS;
   const { solution } = locateEvent({ observations: withoutStations(observations, without), settings, host });
-  return <EventSheet {...{ title, note, observations, solution, without }} settings={toEstimationSettings(settings)} />;
+  return <EventSheet {...{ id, title, note, observations, solution, without, kept }} settings={toEstimationSettings(settings)} />;
 }
 
 function Working() {

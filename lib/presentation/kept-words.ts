@@ -1,0 +1,57 @@
+import type { NumberedStation } from "#lib/core/arrival/numbered-stations.ts";
+import type { SourceOutcome } from "#lib/core/source/answer.ts";
+import type { Position } from "#lib/core/units/position.ts";
+import { SECONDS_PER_HOUR } from "#lib/core/units/time.ts";
+import { listWords } from "./numbers-in-words.ts";
+import { positionWords } from "./positions.ts";
+import { momentWords } from "./times.ts";
+
+/** An answer that was kept, as a list of them needs it. */
+export interface KeptAnswer {
+  readonly number: number;
+  readonly savedEpochSeconds: number;
+  readonly actor: string;
+  /** In its maker's words; may be empty. */
+  readonly reason: string;
+  /** Ids of the stations left out. */
+  readonly leftOut: readonly string[];
+  readonly outcome: SourceOutcome;
+  readonly source: { readonly position: Position; readonly originEpochSeconds: number } | null;
+}
+
+export interface KeptWords {
+  readonly what: string;
+  readonly who: string;
+  /** Null where no station was. */
+  readonly leftOut: string | null;
+}
+
+export function keptWords(kept: KeptAnswer, stations: readonly NumberedStation[]): KeptWords {
+  const { savedEpochSeconds, actor, leftOut } = kept;
+  const out = stations.filter(({ id }) => leftOut.includes(id)).map(({ number, name }) => `${number}\u00a0${name}`);
+  return {
+    what: whatWords(kept),
+    who: `${momentWords(savedEpochSeconds)}, ${actor}`,
+    leftOut: out.length === 0 ? null : `Left out: ${listWords(out)}.`,
+  };
+}
+
+/** In the words of the answer's own headline. */
+function whatWords({ outcome, source }: KeptAnswer): string {
+  switch (outcome) {
+    case "located":
+      return source === null ? "No place yet" : placeWords(source);
+    case "several":
+      return source === null ? "Not one place" : `Not surely one place; most probable ${placeWords(source)}`;
+    case "ring-only":
+    case "too-few":
+      return "Distance only";
+    case "no-agreement":
+      return "No common source";
+  }
+}
+
+/** To the hour: the list does not know how well each time is known, and none is known better by much. */
+function placeWords({ position, originEpochSeconds }: NonNullable<KeptAnswer["source"]>): string {
+  return `${positionWords(position)}, ${momentWords(Math.round(originEpochSeconds / SECONDS_PER_HOUR) * SECONDS_PER_HOUR)}`;
+}
