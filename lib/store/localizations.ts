@@ -44,8 +44,8 @@ function stale(eventId: string, startedFrom: number, latest: Localization | null
   if (latest === null || latest.number < startedFrom) {
     return new Refusal("conflict", `Event "${eventId}" has ${String(latest?.number ?? 0)} localizations; this one says it started from number ${String(startedFrom)}.`);
   }
-  const since = new Date(latest.savedEpochSeconds * 1000).toISOString();
-  return new Refusal("conflict", `${latest.actor} saved number ${String(latest.number)} of event "${eventId}" at ${since}; this one started from number ${String(startedFrom)}.`);
+  const since = `${new Date(latest.savedEpochSeconds * 1000).toISOString().slice(0, 16)}Z`;
+  return new Refusal("conflict", `Number ${String(latest.number)} of event "${eventId}" was kept by ${latest.actor} at ${since}; this one started from number ${String(startedFrom)}.`);
 }
 
 export async function listLocalizations(reader: PrismaClient, eventId: string): Promise<LocalizationSummary[]> {

@@ -70,7 +70,7 @@ describe("keeping an answer", () => {
     await button(other).click();
     const alert = section(other).getByRole("alert");
     await alert.waitFor();
-    expect(await alert.innerText()).toContain("local keeper saved number 1");
+    expect(await alert.innerText()).toContain("Number 1 of event");
     expect(await entries(other)).toStrictEqual([]);
     expect(await why(other).inputValue()).toBe("From the other page");
 

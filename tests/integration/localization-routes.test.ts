@@ -32,7 +32,7 @@ describe("the localizations of an event over HTTP", () => {
     const second = await keep("petrel", { startedFrom: 1, leftOut: ["wic"], settings: { spread: { timeHours: 9 } } });
     expect(second.status).toBe(201);
     const late = await keep("petrel", { startedFrom: 1 });
-    expect(late).toMatchObject({ status: 409, body: { issues: [{ code: "conflict", message: expect.stringContaining("saved number 2") as string }] } });
+    expect(late).toMatchObject({ status: 409, body: { issues: [{ code: "conflict", message: expect.stringContaining("Number 2 of event") as string }] } });
 
     const { body } = await asked(ofEvent("petrel"));
     expect(body["localizations"]).toMatchObject([{ number: 2, leftOut: ["wic"], actor: "local keeper" }, { number: 1, reason: "First look", outcome: "located" }]);
