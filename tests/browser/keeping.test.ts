@@ -159,8 +159,9 @@ describe("the list of kept answers", () => {
   });
 });
 
-/** What axe, which the page has been given, finds against it. */
-function faults(page: Page): Promise<string[]> {
+/** What axe, which the page has been given, finds against it once it has settled: a refresh sends the title last. */
+async function faults(page: Page): Promise<string[]> {
+  await page.waitForFunction(() => document.title !== "");
   return page.evaluate(async () => {
     const inPage = globalThis as unknown as { axe: { run: () => Promise<{ violations: { id: string; nodes: { html: string }[] }[] }> } };
     const { violations } = await inPage.axe.run();
