@@ -55,6 +55,7 @@ async function cover(recipe: RecipeName, seed: number, storms: number, targets: 
 async function nameClocks(recipe: RecipeName, seed: number, storms: number): Promise<void> {
   const tally = tallyClocks(await judgeInParallel(recipe, seed, storms));
   report(`named ${recipe}`, seed, storms, tally.named / tally.storms, "of wrong clocks", { from: 0.9 });
+  report(`named within 12 h ${recipe}`, seed, storms, tally.namedWithinHalfADay / tally.storms, "of wrong clocks", { from: 0.9 });
   report(`offset within two sigmas ${recipe}`, seed, storms, tally.withinTwoSigmas / tally.named, "of those named", { from: 0.95 });
   report(`right clocks accused ${recipe}`, seed, storms, tally.rightAccused / tally.rightClocks, "of right clocks", { to: 0.01 });
 }

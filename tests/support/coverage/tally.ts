@@ -4,6 +4,8 @@ export interface ClockTally {
   readonly storms: number;
   /** Wrong clocks called wrong. */
   readonly named: number;
+  /** Of those: with an offset within 12 h of theirs. */
+  readonly namedWithinHalfADay: number;
   /** Of those: stated offset within two of its standard deviations of the true one. */
   readonly withinTwoSigmas: number;
   readonly rightClocks: number;
@@ -15,6 +17,7 @@ export function tallyClocks(judgements: readonly Judgement[]): ClockTally {
   return {
     storms: judgements.length,
     named: named.length,
+    namedWithinHalfADay: named.filter(({ offSeconds }) => Math.abs(offSeconds) < 12 * 3600).length,
     withinTwoSigmas: named.filter(({ offSeconds, sigmaSeconds }) => Math.abs(offSeconds) <= 2 * sigmaSeconds).length,
     rightClocks: judgements.reduce((sum, { clock }) => sum + clock.rightClocks, 0),
     rightAccused: judgements.reduce((sum, { clock }) => sum + clock.rightAccused, 0),
