@@ -1,7 +1,7 @@
 import { existsSync, readdirSync, readFileSync } from "node:fs";
 import { basename, join } from "node:path";
 import { z } from "zod";
-import type { EventStore, StoredEvent } from "#lib/application/ports.ts";
+import type { EventStore, EventBroughtIn } from "#lib/application/ports.ts";
 import type { EventObservations } from "#lib/core/arrival/observations.ts";
 import { InputError } from "#lib/core/failures/input-error.ts";
 import type { InputIssue } from "#lib/core/failures/input-error.ts";
@@ -26,7 +26,7 @@ export interface Intake {
  *
  * @throws InputError with the problems of all their files.
  */
-export function readEventFolder(directory: string): ReadResult<StoredEvent[]> {
+export function readEventFolder(directory: string): ReadResult<EventBroughtIn[]> {
   const issues: InputIssue[] = [];
   const stations = textFile(directory, "stations.csv");
   if (stations === null) throw problem(directory, "found no stations.csv; wanted one, and a folder for each event beside it");
@@ -50,7 +50,7 @@ export function readEventFolder(directory: string): ReadResult<StoredEvent[]> {
 }
 
 /** Saves events one by one. One that is known already, or clashes with what is, does not keep the others out. */
-export async function saveEvents(store: EventStore, events: readonly StoredEvent[], by: { actor: string; savedEpochSeconds: number }): Promise<Intake> {
+export async function saveEvents(store: EventStore, events: readonly EventBroughtIn[], by: { actor: string; savedEpochSeconds: number }): Promise<Intake> {
   const saved: string[] = [];
   const refused: string[] = [];
   for (const event of events) {
@@ -65,7 +65,7 @@ export async function saveEvents(store: EventStore, events: readonly StoredEvent
   return { saved, refused };
 }
 
-function readEvent(id: string, folder: string, stations: TextFile): ReadResult<StoredEvent> {
+function readEvent(id: string, folder: string, stations: TextFile): ReadResult<EventBroughtIn> {
   const { title, note } = readEventFile(join(folder, "event.json"), id);
   const { value, notes } = readEventFiles({ stations, readings: textFile(folder, "readings.csv"), arrivals: textFile(folder, "arrivals.csv") });
   if (value.readings.length + value.estimates.length === 0) {

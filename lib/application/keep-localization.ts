@@ -1,23 +1,24 @@
-import type { EventObservations } from "#lib/core/arrival/observations.ts";
-import { withoutStations } from "#lib/core/arrival/without-stations.ts";
-import { InputError } from "#lib/core/failures/input-error.ts";
+import { chosenObservations } from "#lib/core/arrival/chosen-observations.ts";
+import type { GatheredObservations } from "#lib/core/arrival/gathered-observations.ts";
+import { gatheringNotes } from "#lib/core/arrival/gathering-notes.ts";
+import type { ObservationChoices } from "#lib/core/arrival/observation-choices.ts";
+import { InputError, type InputIssue } from "#lib/core/failures/input-error.ts";
 import { Refusal } from "#lib/core/failures/refusal.ts";
 import type { LocateJson } from "#lib/contracts/locate-json.ts";
 import type { PublicSettings } from "#lib/contracts/settings.ts";
 import type { Host } from "./host.ts";
 import { locateEvent } from "./locate-event.ts";
-import type { EventStore, LocalizationStore } from "./ports.ts";
+import type { Doing, EventStore, LocalizationStore } from "./ports.ts";
 
-export interface AnswerToKeep {
+export interface AnswerToKeep extends Doing {
   readonly eventId: string;
-  /** Ids of stations of the event to leave out. */
-  readonly leftOut: readonly string[];
+  readonly choices: ObservationChoices;
   readonly settings: PublicSettings;
   readonly reason: string;
-  readonly actor: string;
-  readonly savedEpochSeconds: number;
   /** The number of the latest localization that was in view when the work began; 0 for none. */
   readonly startedFrom: number;
+  /** The event's revision in view; null where its maker does not say. */
+  readonly eventRevision: number | null;
 }
 
 interface Keeping {
@@ -32,25 +33,27 @@ export interface KeptAnswer {
 }
 
 /**
- * Works an event's answer out anew from what is stored, whatever the browser showed, and keeps it for good with copies
- * of its readings, estimates, deployments and settings.
+ * Works an event's answer out anew from what is stored and what was chosen of it, whatever the browser showed, and keeps
+ * it for good with copies of its readings, estimates, deployments and settings.
  *
- * @throws Refusal `not-found` for an event that nobody knows; `conflict` where another answer was saved meanwhile.
- * @throws InputError `unknown-station` for a station left out that the event does not have, `not-fitted` where no
- * station is left that can be fitted.
+ * @throws Refusal `not-found` for an event that nobody knows; `conflict` where another answer was saved meanwhile, or the
+ *   event was changed.
+ * @throws InputError `unknown-station` and `unknown-reading` for choices that name what the event does not have,
+ *   `not-fitted` where no station is left that can be fitted.
  */
 export async function keepLocalization({ events, localizations, host }: Keeping, wanted: AnswerToKeep): Promise<KeptAnswer> {
   const event = await events.loadEvent(wanted.eventId);
   if (event === null) throw new Refusal("not-found", `No event "${wanted.eventId}" is stored.`);
-  requireStations(event.observations, wanted.leftOut);
-  const observations = withoutStations(event.observations, wanted.leftOut);
-  const { solution, answer } = locateEvent({ observations, settings: wanted.settings, host });
+  const { eventId, startedFrom, savedEpochSeconds, actor, reason, choices, settings } = wanted;
+  requireKnown(event.observations, choices);
+  const observations = chosenObservations(event.observations, choices);
+  const { solution, answer } = locateEvent({ observations, settings, notes: gatheringNotes(event.observations, choices), host });
   if (answer === null) {
     throw new InputError([{ code: "not-fitted", path: "leftOut", message: "No station is left that could be fitted, so there is no answer to keep." }]);
   }
-  const { eventId, startedFrom, savedEpochSeconds, actor, reason, leftOut, settings } = wanted;
   const number = await localizations.saveLocalization({
-    ...{ eventId, startedFrom, savedEpochSeconds, actor, reason, leftOut },
+    ...{ eventId, startedFrom, savedEpochSeconds, actor, reason, choices },
+    eventRevision: wanted.eventRevision ?? event.revision,
     program: host.program,
     nodeVersion: process.version,
     inputDigest: answer.inputDigest,
@@ -63,10 +66,18 @@ export async function keepLocalization({ events, localizations, host }: Keeping,
   return { number, answer };
 }
 
-function requireStations({ deployments }: EventObservations, leftOut: readonly string[]): void {
-  const known = new Set(deployments.map(({ stationId }) => stationId));
-  const issues = leftOut.flatMap((id, place) =>
-    known.has(id) ? [] : [{ code: "unknown-station", path: `leftOut[${place}]`, message: `Station "${id}" is none of this event's.` }],
-  );
+function requireKnown({ deployments, readings }: GatheredObservations, choices: ObservationChoices): void {
+  const stations = new Set(deployments.map(({ stationId }) => stationId));
+  const known = new Set(readings.map(({ id }) => id));
+  const station = (path: string, id: string): InputIssue[] =>
+    stations.has(id) ? [] : [{ code: "unknown-station", path, message: `${path}: found "${id}"; wanted a station of this event.` }];
+  const reading = (path: string, id: number): InputIssue[] =>
+    known.has(id) ? [] : [{ code: "unknown-reading", path, message: `${path}: found ${id}; wanted a reading of this event.` }];
+  const issues = [
+    ...choices.leftOutStationIds.flatMap((id, place) => station(`leftOut[${place}]`, id)),
+    ...choices.droppedReadingIds.flatMap((id, place) => reading(`dropped[${place}]`, id)),
+    ...choices.movedReadings.flatMap(({ readingId }, place) => reading(`moved[${place}].reading`, readingId)),
+    ...choices.addedReadings.flatMap(({ stationId }, place) => station(`added[${place}].station`, stationId)),
+  ];
   if (issues.length > 0) throw new InputError(issues);
 }

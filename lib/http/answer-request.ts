@@ -1,52 +1,84 @@
 import { randomUUID } from "node:crypto";
+import { readShape } from "#lib/contracts/api/input-issues.ts";
+import type { BodyShape, Operation, Role } from "#lib/contracts/api/operation.ts";
 import { InputError } from "#lib/core/failures/input-error.ts";
 import { Refusal, type RefusalReason } from "#lib/core/failures/refusal.ts";
+import { decodedPart } from "./address-part.ts";
 import { isOwnHost } from "./own-host.ts";
+import { parseJson, readText } from "./read-body.ts";
+import { runningProgram, type RunningProgram } from "./running-program.ts";
+import { whoAsks, type Person } from "./who-asks.ts";
 
 const STATUS = { "not-found": 404, conflict: 409, forbidden: 403, "too-large": 413, "too-many": 429 } as const satisfies Record<RefusalReason, number>;
-/** Bytes of a request's body; what these routes take in are choices, not records. */
-const MOST_BYTES = 1_000_000;
 
-/** What a route gives back as JSON. */
+/** What a route is given: the request as its operation describes it, who asks, and what it is lent. */
+export interface Asked<Body, Query> {
+  readonly params: Readonly<Record<string, string>>;
+  readonly query: Query;
+  readonly body: Body;
+  readonly program: RunningProgram;
+  /** For the audit trail. */
+  readonly doing: { readonly actor: string; readonly savedEpochSeconds: number };
+}
+
+/** What a route gives back, as its operation says: a value for JSON, or text. */
 export interface Reply {
-  readonly status: 200 | 201;
   readonly body: unknown;
   /** Address of what was made. */
   readonly location?: string;
+  /** Under which a browser saves it. */
+  readonly fileName?: string;
 }
 
+type Handler = (request: Request, context: { params: Promise<Record<string, string>> }) => Promise<Response>;
+
 /**
- * Every route of the programming interface passes here: the request must be meant for this server, and one that writes
- * must not come from a page elsewhere; failures become statuses. A fault of the program shows its reader a number to
- * ask by and nothing of its inside.
+ * The one door of the programming interface: every route is made here from its operation. The request must be meant for
+ * this server, one that writes must not come from a page elsewhere, who asks must have the operation's role, and what
+ * is asked must have its shape; failures become statuses. A fault of the program shows its reader a number to ask by
+ * and nothing of its inside.
  */
-export async function answerRequest(request: Request, work: () => Promise<Reply>): Promise<Response> {
-  try {
-    requireOwnHost(request);
-    if (request.method !== "GET") requireOwnPage(request);
-    const { status, body, location } = await work();
-    return Response.json(body, { status, headers: { ...HEADERS, ...(location === undefined ? {} : { location }) } });
-  } catch (error) {
-    return failed(error);
-  }
+export function route<Body, Query>(operation: Operation<Body, Query>, work: (asked: Asked<Body, Query>) => Promise<Reply>): Handler {
+  return async (request, context) => {
+    try {
+      requireOwnHost(request);
+      if (request.method !== "GET" && request.method !== "HEAD") requireOwnPage(request, operation.body);
+      const person = whoAsks();
+      requireRole(person, operation.role);
+      const { searchParams } = new URL(request.url);
+      const query = readShape(operation.query, Object.fromEntries(searchParams));
+      const params = decoded(await context.params);
+      const body = await readBody(request, operation);
+      const doing = { actor: person.name, savedEpochSeconds: Date.now() / 1000 };
+      return respond(operation.answer, await work({ params, query, body, program: await runningProgram(), doing }));
+    } catch (error) {
+      return failed(error);
+    }
+  };
 }
 
 const HEADERS = { "cache-control": "no-store" };
 
-/**
- * A body of JSON.
- *
- * @throws Refusal `too-large`; InputError `not-json` where it is none.
- */
-export async function readJson(request: Request): Promise<unknown> {
-  const announced = Number(request.headers.get("content-length") ?? "0");
-  const text = announced > MOST_BYTES ? null : await request.text();
-  if (text === null || text.length > MOST_BYTES) throw new Refusal("too-large", `The request holds more than ${MOST_BYTES} bytes.`);
-  try {
-    return JSON.parse(text) as unknown;
-  } catch {
-    throw new InputError([{ code: "not-json", path: "", message: "The request's body is no JSON." }]);
-  }
+function respond(answer: Operation<unknown, unknown>["answer"], { body, location, fileName }: Reply): Response {
+  const headers = {
+    ...HEADERS,
+    ...(location === undefined ? {} : { location }),
+    ...(fileName === undefined ? {} : { "content-disposition": `attachment; filename="${fileName}"` }),
+  };
+  if (answer.type === "application/json") return Response.json(body, { status: answer.status, headers });
+  return new Response(String(body), { status: answer.status, headers: { ...headers, "content-type": `${answer.type}; charset=utf-8` } });
+}
+
+async function readBody<Body, Query>(request: Request, { body, mostBytes }: Operation<Body, Query>): Promise<Body> {
+  // Without a body there is nothing to read, and an operation of CSV is given its text as it stands.
+  if (body === null) return null as Body;
+  const text = await readText(request, mostBytes);
+  return body.type === "text/csv" ? (text as Body) : readShape(body.schema, parseJson(text));
+}
+
+/** Parts of an address that mean no text name nothing that could be found. */
+function decoded(params: Readonly<Record<string, string>>): Record<string, string> {
+  return Object.fromEntries(Object.entries(params).map(([name, written]) => [name, decodedPart(written) ?? ""]));
 }
 
 function requireOwnHost(request: Request): void {
@@ -55,15 +87,20 @@ function requireOwnHost(request: Request): void {
 }
 
 /** A browser names the page that a request comes from; a program that is no browser need not. */
-function requireOwnPage(request: Request): void {
+function requireOwnPage(request: Request, body: BodyShape<unknown>): void {
   const origin = request.headers.get("origin");
   if (origin !== null && origin !== `http://${request.headers.get("host") ?? ""}` && origin !== `https://${request.headers.get("host") ?? ""}`) {
     throw new Refusal("forbidden", "A page elsewhere may not write here.");
   }
   const type = request.headers.get("content-type") ?? "";
-  if (!/^application\/json\b/i.test(type)) {
-    throw new InputError([{ code: "not-json", path: "", message: `The request's content type is ${type === "" ? "missing" : `"${type}"`}; wanted application/json.` }]);
-  }
+  const wanted = body?.type ?? "application/json";
+  if (type.split(";", 1)[0]?.trim().toLowerCase() === wanted) return;
+  throw new InputError([{ code: "content-type", path: "", message: `The request's content type is ${type === "" ? "missing" : `"${type}"`}; wanted ${wanted}.` }]);
+}
+
+function requireRole({ name, roles }: Person, role: Role): void {
+  if (roles.includes(role)) return;
+  throw new Refusal("forbidden", `This is for those with the role of ${role}, which ${name} does not have.`);
 }
 
 /** By name: what the store throws may be made by another copy of the class than this route's, for Next bundles each apart. */

@@ -1,14 +1,17 @@
 import { join, resolve } from "node:path";
 import type { Host } from "#lib/application/host.ts";
 import { createLand } from "#lib/application/land.ts";
-import type { EventStore, LocalizationStore } from "#lib/application/ports.ts";
+import type { ArrivalStore, AuditTrail, EventStore, LocalizationStore, StationStore } from "#lib/application/ports.ts";
 import { readLandTopology, readProgramName } from "#lib/application/shipped-files.ts";
 import { sharedStore } from "#lib/store/shared-store.ts";
 
 /** What pages and routes are lent: where events and their answers are kept, and what a use case needs. */
 export interface RunningProgram {
+  readonly stations: StationStore;
   readonly events: EventStore;
+  readonly arrivals: ArrivalStore;
   readonly localizations: LocalizationStore;
+  readonly audit: AuditTrail;
   readonly host: Host;
 }
 
@@ -30,7 +33,7 @@ export async function runningProgram(): Promise<RunningProgram> {
     dataDirectory: resolve(packageRoot, dataDirectory),
     migrationsDirectory: join(packageRoot, "prisma", "migrations"),
   });
-  return { events: store, localizations: store, host: sharedHost(packageRoot) };
+  return { stations: store, events: store, arrivals: store, localizations: store, audit: store, host: sharedHost(packageRoot) };
 }
 
 function sharedHost(packageRoot: string): Host {

@@ -1,4 +1,5 @@
 import type { NumberedStation } from "#lib/core/arrival/numbered-stations.ts";
+import type { ObservationChoices } from "#lib/core/arrival/observation-choices.ts";
 import type { SourceOutcome } from "#lib/core/source/answer.ts";
 import type { Position } from "#lib/core/units/position.ts";
 import { SECONDS_PER_HOUR } from "#lib/core/units/time.ts";
@@ -13,8 +14,7 @@ export interface KeptAnswer {
   readonly actor: string;
   /** In its maker's words; may be empty. */
   readonly reason: string;
-  /** Ids of the stations left out. */
-  readonly leftOut: readonly string[];
+  readonly choices: ObservationChoices;
   readonly outcome: SourceOutcome;
   readonly source: { readonly position: Position; readonly originEpochSeconds: number } | null;
 }
@@ -27,8 +27,8 @@ export interface KeptWords {
 }
 
 export function keptWords(kept: KeptAnswer, stations: readonly NumberedStation[]): KeptWords {
-  const { savedEpochSeconds, actor, leftOut } = kept;
-  const out = stations.filter(({ id }) => leftOut.includes(id)).map(({ number, name }) => `${number}\u00a0${name}`);
+  const { savedEpochSeconds, actor, choices } = kept;
+  const out = stations.filter(({ id }) => choices.leftOutStationIds.includes(id)).map(({ number, name }) => `${number}\u00a0${name}`);
   return {
     what: whatWords(kept),
     who: `${momentWords(savedEpochSeconds)}, ${actor}`,

@@ -1,5 +1,5 @@
 import type { CsvRow, CsvTable } from "./csv-table.ts";
-import { parseIsoTime } from "./iso-time.ts";
+import { parseIsoTime } from "#lib/core/units/parse-iso-time.ts";
 import type { Problems } from "./problems.ts";
 
 /** One cell of a table, and where to say what is wrong with it. */

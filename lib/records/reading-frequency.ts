@@ -1,3 +1,4 @@
+import { FREQUENCY_HZ, PERIOD_SECONDS } from "#lib/core/arrival/reading-limits.ts";
 import { inRange, readNumber, zeroOrInRange } from "./cells.ts";
 import type { CellPlace } from "./cells.ts";
 
@@ -5,10 +6,6 @@ import type { CellPlace } from "./cells.ts";
 const PERIOD_AGREEMENT_FRACTION = 0.02;
 /** Errors are written to one or two digits. */
 const SIGMA_AGREEMENT_FRACTION = 0.2;
-
-/** Wide of every wave that a station of any kind hears; what lies outside is a slip of unit or of the decimal point. */
-const PERIOD_SECONDS = { least: 0.5, most: 1000 };
-const FREQUENCY_HZ = { least: 0.001, most: 2 };
 
 const SECONDS = inRange("seconds", PERIOD_SECONDS);
 const HERTZ = inRange("hertz", FREQUENCY_HZ);

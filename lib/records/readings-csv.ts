@@ -1,4 +1,6 @@
+import { DEFAULT_ARRIVAL_SIGMA_SECONDS, DEFAULT_BEARING_SIGMA_DEGREES, DEFAULT_FREQUENCY_SIGMA_FRACTION } from "#lib/core/arrival/default-errors.ts";
 import type { StationReading } from "#lib/core/arrival/observations.ts";
+import { ARRIVAL_SIGMA_SECONDS } from "#lib/core/arrival/reading-limits.ts";
 import type { Bearing, Reading } from "#lib/core/arrival/reading.ts";
 import { readChoice, readNumber, readText, readTime, zeroOrInRange } from "./cells.ts";
 import type { CellPlace } from "./cells.ts";
@@ -11,27 +13,24 @@ const OPTIONAL_COLUMNS = [
   "period_s", "frequency_hz", "period_sigma_s", "frequency_sigma_hz", "time_sigma_s", "kind", "bearing_deg", "bearing_sigma_deg",
 ];
 
-/** From a millisecond to thirty days: what lies outside is no error of a time. */
-const TIME_SIGMA = zeroOrInRange("seconds", { least: 0.001, most: 30 * 86_400 });
+const TIME_SIGMA = zeroOrInRange("seconds", ARRIVAL_SIGMA_SECONDS);
 
 interface DefaultValue {
   readonly value: number;
   readonly message: string;
 }
 
-/** Common practice, no source: half an hour for a peak of energy picked from hourly spectra, minutes for a stopwatch. */
-const RIDGE_TIME: DefaultValue = { value: 1800, message: "kind ridge and no time_sigma_s; 1800 s was used" };
+const RIDGE_TIME: DefaultValue = { value: DEFAULT_ARRIVAL_SIGMA_SECONDS.ridge, message: "kind ridge and no time_sigma_s; 1800 s was used" };
 const RIDGE_FREQUENCY: DefaultValue = {
-  value: 0,
+  value: DEFAULT_FREQUENCY_SIGMA_FRACTION.ridge,
   message: "kind ridge and no error of the period or frequency; 0 was used",
 };
-const TIMED_TIME: DefaultValue = { value: 300, message: "kind timed and no time_sigma_s; 300 s was used" };
+const TIMED_TIME: DefaultValue = { value: DEFAULT_ARRIVAL_SIGMA_SECONDS.timed, message: "kind timed and no time_sigma_s; 300 s was used" };
 const TIMED_PERIOD_FRACTION: DefaultValue = {
-  value: 0.025,
+  value: DEFAULT_FREQUENCY_SIGMA_FRACTION.timed,
   message: "kind timed and no error of the period or frequency; 2.5 % of the period was used",
 };
-/** Common practice, no source: mean directions of a swell swing by 10 degrees within the hour. */
-const BEARING_DEGREES: DefaultValue = { value: 15, message: "a bearing and no bearing_sigma_deg; 15 degrees was used" };
+const BEARING_DEGREES: DefaultValue = { value: DEFAULT_BEARING_SIGMA_DEGREES, message: "a bearing and no bearing_sigma_deg; 15 degrees was used" };
 
 /** Defaults that stood in for what a row did not say, each counted so that one note can tell of all its rows. */
 type DefaultsUsed = Map<string, number>;

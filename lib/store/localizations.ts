@@ -1,18 +1,24 @@
+import { z } from "zod";
 import type { LocalizationSummary, LocalizationToSave, StoredLocalization } from "#lib/application/ports.ts";
+import { NO_CHOICES } from "#lib/core/arrival/observation-choices.ts";
 import { Refusal } from "#lib/core/failures/refusal.ts";
 import type { SourceOutcome } from "#lib/core/source/answer.ts";
 import { wrapLongitudeDegrees } from "#lib/core/units/position.ts";
+import { addToAudit } from "./audit.ts";
+import { requireEvent, requireUnmerged } from "./event-change.ts";
 import type { Localization, Prisma, PrismaClient } from "./generated/client.ts";
+import { requireRevision } from "./stale.ts";
 
 /** Saves within a transaction that the caller has opened; see `LocalizationStore.saveLocalization`. */
 export async function saveLocalization(transaction: Prisma.TransactionClient, localization: LocalizationToSave): Promise<number> {
-  const { eventId, startedFrom, leftOut, source, settingsJson, inputJson, answerJson, ...plain } = localization;
-  if ((await transaction.event.findUnique({ where: { id: eventId } })) === null) {
-    throw new Refusal("not-found", `No event "${eventId}" is stored.`);
-  }
+  const { eventId, startedFrom, choices, source, settingsJson, inputJson, answerJson, ...plain } = localization;
+  const { leftOutStationIds: leftOut, ...others } = choices;
+  const event = await requireEvent(transaction, eventId);
+  requireUnmerged(event);
   const latest = await transaction.localization.findFirst({ where: { eventId }, orderBy: { number: "desc" } });
   const number = (latest?.number ?? 0) + 1;
   if (number !== startedFrom + 1) throw stale(eventId, startedFrom, latest);
+  requireRevision(`Event "${eventId}"`, event, plain.eventRevision);
 
   await transaction.localization.create({
     data: {
@@ -23,20 +29,14 @@ export async function saveLocalization(transaction: Prisma.TransactionClient, lo
       input: inputJson,
       answer: answerJson,
       leftOut: JSON.stringify(leftOut),
+      choices: JSON.stringify(others),
       latitudeDegrees: source?.position.latitudeDegrees ?? null,
       longitudeDegrees: source ? wrapLongitudeDegrees(source.position.longitudeDegrees) : null,
       originEpochSeconds: source?.originEpochSeconds ?? null,
     },
   });
-  await transaction.auditEntry.create({
-    data: {
-      atEpochSeconds: plain.savedEpochSeconds,
-      actor: plain.actor,
-      action: "localization saved",
-      subject: `event ${eventId}`,
-      detail: JSON.stringify({ number, outcome: plain.outcome, inputDigest: plain.inputDigest, leftOut }),
-    },
-  });
+  const detail = { number, outcome: plain.outcome, inputDigest: plain.inputDigest, choices };
+  await addToAudit(transaction, plain, { action: "localization saved", subject: `event ${eventId}`, detail });
   return number;
 }
 
@@ -63,12 +63,37 @@ export async function loadLocalization(reader: PrismaClient, eventId: string, nu
 }
 
 function summaryFromRow(row: Omit<Localization, "settings" | "input" | "answer">): LocalizationSummary {
-  const { eventId, number, savedEpochSeconds, actor, reason, program, nodeVersion, inputDigest } = row;
-  const { latitudeDegrees, longitudeDegrees, originEpochSeconds } = row;
+  const { eventId, eventRevision, savedEpochSeconds, actor, reason, program, nodeVersion, inputDigest } = row;
+  return {
+    ...{ eventId, eventRevision, savedEpochSeconds, actor, reason, program, nodeVersion, inputDigest },
+    ...placedSummary(row),
+    choices: { ...NO_CHOICES, ...Choices.parse(JSON.parse(row.choices)), leftOutStationIds: LeftOut.parse(JSON.parse(row.leftOut)) },
+  };
+}
+
+const LeftOut = z.array(z.string());
+const Choices = z.object({
+  droppedReadingIds: z.array(z.number()),
+  movedReadings: z.array(z.object({ readingId: z.number(), arrivalEpochSeconds: z.number(), frequencyHz: z.number() })),
+  addedReadings: z.array(
+    z.object({
+      stationId: z.string(),
+      arrivalEpochSeconds: z.number(),
+      frequencyHz: z.number(),
+      arrivalSigmaSeconds: z.number(),
+      frequencySigmaHz: z.number(),
+      kind: z.enum(["ridge", "timed"]),
+    }),
+  ),
+  usesSuspect: z.boolean(),
+});
+
+/** What a kept answer came to, from the columns that say so. */
+export function placedSummary(row: Pick<Localization, "number" | "outcome" | "latitudeDegrees" | "longitudeDegrees" | "originEpochSeconds">) {
+  const { number, latitudeDegrees, longitudeDegrees, originEpochSeconds } = row;
   const isPlaced = latitudeDegrees !== null && longitudeDegrees !== null && originEpochSeconds !== null;
   return {
-    ...{ eventId, number, savedEpochSeconds, actor, reason, program, nodeVersion, inputDigest },
-    leftOut: JSON.parse(row.leftOut) as string[],
+    number,
     outcome: row.outcome as SourceOutcome,
     source: isPlaced ? { position: { latitudeDegrees, longitudeDegrees }, originEpochSeconds } : null,
   };

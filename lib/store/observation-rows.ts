@@ -1,5 +1,7 @@
-import type { Deployment, StationEstimate, StationReading } from "#lib/core/arrival/observations.ts";
-import type { Bearing } from "#lib/core/arrival/reading.ts";
+import type { ArrivalEstimate } from "#lib/core/arrival/estimate.ts";
+import type { Deployment } from "#lib/core/arrival/observations.ts";
+import type { QualityFlag } from "#lib/core/arrival/quality.ts";
+import type { Bearing, Reading } from "#lib/core/arrival/reading.ts";
 import type { Prisma } from "./generated/client.ts";
 
 /** Columns of a bearing, which readings and estimates share. */
@@ -10,10 +12,10 @@ function bearingColumns(bearing: Bearing | null) {
   };
 }
 
-export function deploymentRow(deployment: Deployment, ordinal: number): Prisma.DeploymentCreateInput {
+export function deploymentRow(deployment: Deployment, ordinal: number) {
   return {
     ordinal,
-    station: { connect: { id: deployment.stationId } },
+    stationId: deployment.stationId,
     name: deployment.name,
     latitudeDegrees: deployment.position.latitudeDegrees,
     longitudeDegrees: deployment.position.longitudeDegrees,
@@ -26,22 +28,13 @@ export function deploymentRow(deployment: Deployment, ordinal: number): Prisma.D
     timeZone: deployment.timeZone,
     fromEpochSeconds: deployment.fromEpochSeconds,
     toEpochSeconds: deployment.toEpochSeconds,
-    shelf: {
-      create: deployment.shelf.map((leg, place) => ({
-        ordinal: place,
-        lengthMetres: leg.lengthMetres,
-        depthMetres: leg.depthMetres,
-      })),
-    },
+    shelf: deployment.shelf.map(({ lengthMetres, depthMetres }) => ({ lengthMetres, depthMetres })),
   };
 }
 
-export function readingRow(eventId: string, item: StationReading, ordinal: number): Prisma.ReadingCreateManyInput {
-  const { reading } = item;
+export function readingRow(arrivalId: number, { reading, quality }: { reading: Reading; quality: QualityFlag }): Prisma.ReadingCreateManyInput {
   return {
-    eventId,
-    stationId: item.stationId,
-    ordinal,
+    arrivalId,
     sourceRow: reading.row,
     kind: reading.kind,
     arrivalEpochSeconds: reading.arrivalEpochSeconds,
@@ -49,16 +42,14 @@ export function readingRow(eventId: string, item: StationReading, ordinal: numbe
     frequencyHz: reading.frequencyHz,
     frequencySigmaHz: reading.frequencySigmaHz,
     ...bearingColumns(reading.bearing),
+    quality,
   };
 }
 
-export function estimateRow(eventId: string, item: StationEstimate, ordinal: number): Prisma.EstimateCreateManyInput {
-  const { estimate } = item;
+export function estimateRow(arrivalId: number, { estimate, row }: { estimate: ArrivalEstimate; row: number }): Prisma.EstimateCreateManyInput {
   return {
-    eventId,
-    stationId: item.stationId,
-    ordinal,
-    sourceRow: item.row,
+    arrivalId,
+    sourceRow: row,
     distanceMetres: estimate.distanceMetres,
     originEpochSeconds: estimate.originEpochSeconds,
     distanceVariance: estimate.covariance.distanceVariance,

@@ -1,11 +1,14 @@
 import { z } from "zod";
-import type { Deployment, StationEstimate, StationReading } from "#lib/core/arrival/observations.ts";
+import type { GatheredEstimate, GatheredReading } from "#lib/core/arrival/gathered-observations.ts";
+import type { Deployment } from "#lib/core/arrival/observations.ts";
+import { QUALITY_FLAGS } from "#lib/core/arrival/quality.ts";
 import type { Bearing } from "#lib/core/arrival/reading.ts";
 import type { Prisma } from "./generated/client.ts";
 
 const Sensor = z.enum(["surface", "pressure", "ground"]);
 const Stamp = z.enum(["start", "middle", "end"]).nullable();
 const Kind = z.enum(["ridge", "timed"]);
+const Quality = z.literal(QUALITY_FLAGS);
 const SharedShifts = z.array(
   z.object({ cause: z.enum(["timed-readings", "bin-width"]), distanceMetres: z.number(), originSeconds: z.number() }),
 );
@@ -34,9 +37,16 @@ export function deploymentFromRow(row: Prisma.DeploymentGetPayload<{ include: { 
   };
 }
 
-export function readingFromRow(row: Prisma.ReadingGetPayload<object>): StationReading {
+interface OfStation {
+  readonly arrival: { readonly stationId: string };
+}
+
+export function readingFromRow(row: Prisma.ReadingGetPayload<object> & OfStation): GatheredReading {
   return {
-    stationId: row.stationId,
+    id: row.id,
+    arrivalId: row.arrivalId,
+    quality: Quality.parse(row.quality),
+    stationId: row.arrival.stationId,
     reading: {
       arrivalEpochSeconds: row.arrivalEpochSeconds,
       frequencyHz: row.frequencyHz,
@@ -49,9 +59,10 @@ export function readingFromRow(row: Prisma.ReadingGetPayload<object>): StationRe
   };
 }
 
-export function estimateFromRow(row: Prisma.EstimateGetPayload<object>): StationEstimate {
+export function estimateFromRow(row: Prisma.EstimateGetPayload<object> & OfStation): GatheredEstimate {
   return {
-    stationId: row.stationId,
+    arrivalId: row.arrivalId,
+    stationId: row.arrival.stationId,
     row: row.sourceRow,
     estimate: {
       distanceMetres: row.distanceMetres,

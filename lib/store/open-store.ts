@@ -1,19 +1,23 @@
 import { mkdirSync } from "node:fs";
 import { join } from "node:path";
-import type { EventStore, LocalizationStore } from "#lib/application/ports.ts";
+import type { ArrivalStore, AuditTrail, EventStore, LocalizationStore, StationStore } from "#lib/application/ports.ts";
+import { flagReading, listArrivals, listReadings, loadArrival, moveArrival, saveArrival } from "./arrivals.ts";
+import { listAudit } from "./audit.ts";
 import { openClient } from "./client.ts";
+import { editEvent, mergeEvents, openEvent, splitEvent } from "./edit-events.ts";
 import type { Prisma } from "./generated/client.ts";
 import { listEvents, loadEvent } from "./load-events.ts";
 import { listLocalizations, loadLocalization, saveLocalization } from "./localizations.ts";
 import { lockFolder } from "./lock-folder.ts";
 import { migrate } from "./migrate.ts";
 import { saveEvent } from "./save-event.ts";
+import { listStations, removeStation, saveStations } from "./stations.ts";
 import { unusableFolder } from "./unusable-folder.ts";
 import { createWriteGate } from "./write-gate.ts";
 
 export const DATABASE_FILE = "offing.sqlite";
 
-export interface Store extends EventStore, LocalizationStore {
+export interface Store extends StationStore, EventStore, ArrivalStore, LocalizationStore, AuditTrail {
   /** Does several writes as one: all of them, or none when `work` throws. Waits for its turn at the write gate. */
   write<T>(work: (transaction: Prisma.TransactionClient) => Promise<T>): Promise<T>;
   close(): Promise<void>;
@@ -41,12 +45,27 @@ export async function openStore(place: Place): Promise<Store> {
 
   return {
     write,
+    listStations: () => listStations(reader),
+    loadStation: async (id) => (await listStations(reader, id))[0] ?? null,
+    saveStations: (stations, doing) => write((transaction) => saveStations(transaction, stations, doing)),
+    removeStation: (id, startedFrom, doing) => write((transaction) => removeStation(transaction, id, startedFrom, doing)),
     listEvents: () => listEvents(reader),
     loadEvent: (id) => loadEvent(reader, id),
     saveEvent: (event) => write((transaction) => saveEvent(transaction, event)),
+    openEvent: (event, doing) => write((transaction) => openEvent(transaction, event, doing)),
+    editEvent: (edit, doing) => write((transaction) => editEvent(transaction, edit, doing)),
+    mergeEvents: (merge, doing) => write((transaction) => mergeEvents(transaction, merge, doing)),
+    splitEvent: (split, doing) => write((transaction) => splitEvent(transaction, split, doing)),
+    listArrivals: (filter) => listArrivals(reader, filter),
+    loadArrival: (id) => loadArrival(reader, id),
+    listReadings: (filter) => listReadings(reader, filter),
+    saveArrival: (arrival, doing) => write((transaction) => saveArrival(transaction, arrival, doing)),
+    moveArrival: (move, doing) => write((transaction) => moveArrival(transaction, move, doing)),
+    flagReading: (flag, doing) => write((transaction) => flagReading(transaction, flag, doing)),
     listLocalizations: (eventId) => listLocalizations(reader, eventId),
     loadLocalization: (eventId, number) => loadLocalization(reader, eventId, number),
     saveLocalization: (localization) => write((transaction) => saveLocalization(transaction, localization)),
+    listAudit: (filter) => listAudit(reader, filter),
     async close() {
       await gate.settled();
       await Promise.all([writer.$disconnect(), reader.$disconnect()]);

@@ -1,11 +1,15 @@
 import { isDeepStrictEqual } from "node:util";
-import type { EventToSave } from "#lib/application/ports.ts";
+import type { Doing, EventToSave } from "#lib/application/ports.ts";
 import type { Deployment } from "#lib/core/arrival/observations.ts";
+import { NOT_EVALUATED } from "#lib/core/arrival/quality.ts";
+import { UNDESCRIBED } from "#lib/core/arrival/station-description.ts";
 import { InputError } from "#lib/core/failures/input-error.ts";
 import { Refusal } from "#lib/core/failures/refusal.ts";
+import { addToAudit } from "./audit.ts";
 import type { Prisma } from "./generated/client.ts";
-import { deploymentRow, estimateRow, readingRow } from "./observation-rows.ts";
+import { estimateRow, readingRow } from "./observation-rows.ts";
 import { deploymentFromRow } from "./observations-from-rows.ts";
+import { saveStations } from "./stations.ts";
 
 /** Writes an event within a transaction that the caller has opened; see `EventStore.saveEvent`. */
 export async function saveEvent(transaction: Prisma.TransactionClient, event: EventToSave): Promise<void> {
@@ -16,24 +20,21 @@ export async function saveEvent(transaction: Prisma.TransactionClient, event: Ev
   if ((await transaction.event.findUnique({ where: { id: event.id } })) !== null) {
     throw new Refusal("conflict", `An event "${event.id}" is stored already.`);
   }
-  for (const [stationId, own] of deploymentsOf) await keepStation(transaction, stationId, own);
+  for (const own of deploymentsOf.values()) await keepStation(transaction, own, event);
 
   await transaction.event.create({
     data: { id: event.id, title: event.title, note: event.note, savedEpochSeconds: event.savedEpochSeconds },
   });
-  const parts = [...deploymentsOf.keys()].map((stationId, ordinal) => ({ eventId: event.id, stationId, ordinal }));
-  await transaction.eventStation.createMany({ data: parts });
-  await transaction.reading.createMany({ data: readings.map((item, ordinal) => readingRow(event.id, item, ordinal)) });
-  await transaction.estimate.createMany({ data: estimates.map((item, ordinal) => estimateRow(event.id, item, ordinal)) });
-  await transaction.auditEntry.create({
-    data: {
-      atEpochSeconds: event.savedEpochSeconds,
-      actor: event.actor,
-      action: "event saved",
-      subject: `event ${event.id}`,
-      detail: JSON.stringify({ stations: parts.length, readings: readings.length, estimates: estimates.length }),
-    },
-  });
+  const arrivalOf = new Map<string, number>();
+  for (const [ordinal, stationId] of [...deploymentsOf.keys()].entries()) {
+    const { actor, savedEpochSeconds } = event;
+    const { id } = await transaction.arrival.create({ data: { stationId, eventId: event.id, ordinal, note: "", actor, savedEpochSeconds } });
+    arrivalOf.set(stationId, id);
+  }
+  await transaction.reading.createMany({ data: readings.map(({ stationId, reading }) => readingRow(arrivalOf.get(stationId) ?? 0, { reading, quality: NOT_EVALUATED })) });
+  await transaction.estimate.createMany({ data: estimates.map(({ stationId, estimate, row }) => estimateRow(arrivalOf.get(stationId) ?? 0, { estimate, row })) });
+  const detail = { stations: arrivalOf.size, readings: readings.length, estimates: estimates.length };
+  await addToAudit(transaction, event, { action: "event saved", subject: `event ${event.id}`, detail });
 }
 
 function byStation(deployments: readonly Deployment[]): Map<string, Deployment[]> {
@@ -63,15 +64,14 @@ function requireKnownStations(event: EventToSave, known: ReadonlyMap<string, unk
 }
 
 /** A station is described once. Another event may bring it again, word for word. */
-async function keepStation(transaction: Prisma.TransactionClient, stationId: string, own: readonly Deployment[]): Promise<void> {
+async function keepStation(transaction: Prisma.TransactionClient, own: readonly Deployment[], doing: Doing): Promise<void> {
+  const stationId = own[0]?.stationId ?? "";
   const byOrdinal = { orderBy: { ordinal: "asc" as const } };
   const stored = await transaction.deployment.findMany({ where: { stationId }, ...byOrdinal, include: { shelf: byOrdinal } });
   if (stored.length > 0) {
     if (isDeepStrictEqual(stored.map(deploymentFromRow), own)) return;
     throw new Refusal("conflict", `Station "${stationId}" is known already, with other deployments than these.`);
   }
-  await transaction.station.create({ data: { id: stationId } });
-  for (const [ordinal, deployment] of own.entries()) {
-    await transaction.deployment.create({ data: deploymentRow(deployment, ordinal) });
-  }
+  const description = { ...UNDESCRIBED, id: stationId, deployments: own };
+  await saveStations(transaction, [{ description, startedFrom: 0 }], doing);
 }

@@ -3,6 +3,7 @@ import { cpSync, mkdirSync, readFileSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 import { expect, test } from "vitest";
 import { InputError } from "#lib/core/failures/input-error.ts";
+import { broughtIn } from "#tests/support/brought-in.ts";
 import { temporaryDirectory } from "#tests/support/temporary-directory.ts";
 import { temporaryStore } from "#tests/support/temporary-store.ts";
 import { readEventFolder, saveEvents } from "../../prisma/seed-events.ts";
@@ -32,7 +33,7 @@ test("a folder of events is saved whole, and again only what is new", async () =
   expect(second.refused).toHaveLength(5);
   expect(second.refused[0]).toBe('fulmar: An event "fulmar" is stored already.');
   const petrel = await store.loadEvent("petrel");
-  expect(petrel).toStrictEqual(events.find(({ id }) => id === "petrel"));
+  expect(broughtIn(petrel)).toStrictEqual(events.find(({ id }) => id === "petrel"));
   // Rows of the files under fixtures/, counted by hand, the headers left out.
   expect(petrel?.observations.readings).toHaveLength(60);
   expect(petrel?.observations.estimates).toHaveLength(1);

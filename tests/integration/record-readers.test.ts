@@ -1,6 +1,6 @@
 import { describe, expect, it } from "vitest";
 import { readArrivalsCsv } from "#lib/records/arrivals-csv.ts";
-import { parseIsoTime } from "#lib/records/iso-time.ts";
+import { parseIsoTime } from "#lib/core/units/parse-iso-time.ts";
 import { readReadingsCsv } from "#lib/records/readings-csv.ts";
 import { readStationsCsv } from "#lib/records/stations-csv.ts";
 import { expectWithin } from "#tests/support/expect-within.ts";

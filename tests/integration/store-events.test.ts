@@ -2,6 +2,7 @@ import { join } from "node:path";
 import Database from "better-sqlite3";
 import { describe, expect, onTestFinished, test } from "vitest";
 import { DATABASE_FILE, openStore } from "#lib/store/open-store.ts";
+import { broughtIn } from "#tests/support/brought-in.ts";
 import { inventedEvent, INVENTED_DEPLOYMENT } from "#tests/support/invented-event.ts";
 import { temporaryDirectory } from "#tests/support/temporary-directory.ts";
 import { MIGRATIONS_DIRECTORY } from "#tests/support/migrations-directory.ts";
@@ -17,7 +18,7 @@ describe("events in the store", () => {
 
     const { store } = await temporaryStore(dataDirectory);
     const { id, title, note, observations } = event;
-    expect(await store.loadEvent("gale")).toStrictEqual({ id, title, note, observations });
+    expect(broughtIn(await store.loadEvent("gale"))).toStrictEqual({ id, title, note, observations });
     expect(await store.loadEvent("nothing")).toBeNull();
   });
 
@@ -39,11 +40,13 @@ describe("events in the store", () => {
       id: "early",
       title: "Storm early",
       note: "Made up for a test.",
+      revision: 1,
       stationCount: 2,
       readingCount: 2,
       estimateCount: 1,
       firstArrivalEpochSeconds: 821_000_000.5,
       savedEpochSeconds: 1_700_000_000.25,
+      latest: null,
     });
     expect(list[2]?.firstArrivalEpochSeconds).toBeNull();
   });
@@ -81,7 +84,11 @@ describe("events in the store", () => {
     const { store, dataDirectory } = await temporaryStore();
     await store.saveEvent(inventedEvent("gale"));
     const entries = await store.write((transaction) => transaction.auditEntry.findMany());
-    expect(entries).toMatchObject([{ actor: "test", action: "event saved", subject: "event gale" }]);
+    expect(entries).toMatchObject([
+      { actor: "test", action: "station made", subject: "station north-mole" },
+      { actor: "test", action: "station made", subject: "station far-rock" },
+      { actor: "test", action: "event saved", subject: "event gale" },
+    ]);
 
     const database = new Database(join(dataDirectory, DATABASE_FILE));
     onTestFinished(() => {

@@ -5,6 +5,7 @@ import { describe, expect, onTestFinished, test } from "vitest";
 import { keepLocalization } from "#lib/application/keep-localization.ts";
 import { createLand } from "#lib/application/land.ts";
 import { locateEvent } from "#lib/application/locate-event.ts";
+import { NO_CHOICES, type ObservationChoices } from "#lib/core/arrival/observation-choices.ts";
 import type { LocalizationToSave } from "#lib/application/ports.ts";
 import { readLandTopology } from "#lib/application/shipped-files.ts";
 import { readSettings } from "#lib/contracts/settings.ts";
@@ -16,14 +17,24 @@ import { temporaryStore } from "#tests/support/temporary-store.ts";
 
 const host = { program: "offing test", land: createLand({ readTopology: () => readLandTopology({ packageRoot: process.cwd() }) }) };
 
+const INVENTED_CHOICES: ObservationChoices = {
+  leftOutStationIds: ["far-rock"],
+  droppedReadingIds: [2],
+  movedReadings: [{ readingId: 1, arrivalEpochSeconds: 821_000_123.5, frequencyHz: 0.07 / 3 }],
+  addedReadings: [{ stationId: "north-mole", arrivalEpochSeconds: 821_020_000, frequencyHz: 0.05, arrivalSigmaSeconds: 600, frequencySigmaHz: 0.001, kind: "timed" }],
+  usesSuspect: true,
+};
+
 function invented(number: number): LocalizationToSave {
   return {
     ...{ eventId: "gale", startedFrom: number - 1, savedEpochSeconds: 1_700_000_000 + number, actor: "test", reason: `the ${number}th` },
     ...{ program: "offing test", nodeVersion: "v20", inputDigest: "ab".repeat(32), settingsJson: '{"sight":true}', inputJson: "{}" },
-    ...{ leftOut: ["far-rock"], answerJson: `{"number":${number}}`, outcome: "located" },
+    ...{ eventRevision: 1, choices: INVENTED_CHOICES, answerJson: `{"number":${number}}`, outcome: "located" },
     source: { position: { latitudeDegrees: -47.5, longitudeDegrees: 180 }, originEpochSeconds: 1_699_000_000.5 },
   };
 }
+
+const without = (...leftOutStationIds: string[]): ObservationChoices => ({ ...NO_CHOICES, leftOutStationIds });
 
 describe("localizations in the store", () => {
   test("are numbered as they come, listed latest first, and come back as they were saved", async () => {
@@ -66,7 +77,7 @@ describe("localizations in the store", () => {
     }
     const trail = await store.write((transaction) => transaction.auditEntry.findMany({ where: { action: "localization saved" } }));
     expect(trail.map(({ actor, subject, detail }) => [actor, subject, JSON.parse(detail) as unknown])).toStrictEqual([
-      ["test", "event gale", { number: 1, outcome: "located", inputDigest: "ab".repeat(32), leftOut: ["far-rock"] }],
+      ["test", "event gale", { number: 1, outcome: "located", inputDigest: "ab".repeat(32), choices: INVENTED_CHOICES }],
     ]);
   });
 });
@@ -74,7 +85,7 @@ describe("localizations in the store", () => {
 describe("an answer that is kept", () => {
   const read = (fileName: string) => ({ fileName, text: readFileSync(`fixtures/scenarios/demo/${fileName}`, "utf8") });
   const { value: observations } = readEventFiles({ stations: read("stations.csv"), readings: read("tern/readings.csv"), arrivals: null });
-  const wanted = { eventId: "tern", leftOut: [] as string[], settings: readSettings({}), reason: "", actor: "test", savedEpochSeconds: 1_700_000_000, startedFrom: 0 };
+  const wanted = { eventId: "tern", choices: NO_CHOICES, eventRevision: null, settings: readSettings({}), reason: "", actor: "test", savedEpochSeconds: 1_700_000_000, startedFrom: 0 };
 
   test("is worked out from what is stored, and can be made again from its own copies to the last bit", async () => {
     const { store } = await temporaryStore();
@@ -93,12 +104,12 @@ describe("an answer that is kept", () => {
     await store.saveEvent({ ...inventedEvent("tern"), observations });
     const keeping = { events: store, localizations: store, host };
     const [station = ""] = observations.readings.map(({ stationId }) => stationId);
-    const { answer } = await keepLocalization(keeping, { ...wanted, leftOut: [station] });
+    const { answer } = await keepLocalization(keeping, { ...wanted, choices: without(station) });
     expect(answer.outcome).toBe("ring-only");
     expect(answer.stations.map(({ id }) => id)).not.toContain(station);
-    await expect(keepLocalization(keeping, { ...wanted, leftOut: ["nowhere"] })).rejects.toMatchObject({ issues: [{ code: "unknown-station", path: "leftOut[0]" }] });
+    await expect(keepLocalization(keeping, { ...wanted, choices: without("nowhere") })).rejects.toMatchObject({ issues: [{ code: "unknown-station", path: "leftOut[0]" }] });
     const all = [...new Set(observations.readings.map(({ stationId }) => stationId))];
-    await expect(keepLocalization(keeping, { ...wanted, leftOut: all })).rejects.toMatchObject({ issues: [{ code: "not-fitted" }] });
+    await expect(keepLocalization(keeping, { ...wanted, choices: without(...all) })).rejects.toMatchObject({ issues: [{ code: "not-fitted" }] });
     await expect(keepLocalization(keeping, { ...wanted, eventId: "calm" })).rejects.toMatchObject({ reason: "not-found" });
     expect(await store.listLocalizations("tern")).toHaveLength(1);
   });

@@ -1,12 +1,15 @@
-import { cpSync, existsSync, mkdirSync, readdirSync, writeFileSync } from "node:fs";
+import { cpSync, existsSync, mkdirSync, readdirSync, readFileSync, writeFileSync } from "node:fs";
 import { join } from "node:path";
 import Database from "better-sqlite3";
 import { describe, expect, test } from "vitest";
 import { migrate } from "#lib/store/migrate.ts";
 import { openStore } from "#lib/store/open-store.ts";
+import { NO_CHOICES } from "#lib/core/arrival/observation-choices.ts";
+import { broughtIn } from "#tests/support/brought-in.ts";
 import { inventedEvent } from "#tests/support/invented-event.ts";
 import { temporaryDirectory } from "#tests/support/temporary-directory.ts";
 import { MIGRATIONS_DIRECTORY } from "#tests/support/migrations-directory.ts";
+import { temporaryStore } from "#tests/support/temporary-store.ts";
 
 /** A database with one event, and a copy of the migrations to which a test can add. */
 async function keptDatabase(): Promise<{ databasePath: string; migrationsDirectory: string; add(name: string, sql: string): void }> {
@@ -49,6 +52,25 @@ describe("migrations", () => {
     expect(applied).toStrictEqual(["9999_later"]);
     expect(query(kept.databasePath, "SELECT title FROM events")).toStrictEqual([{ title: "changed" }]);
     expect(query(backupPath ?? "", "SELECT title FROM events")).toStrictEqual([{ title: "Storm gale" }]);
+  });
+
+  test("of a database of the first version keep its events, readings, estimates and answers as they were", async () => {
+    const folder = temporaryDirectory();
+    const migrationsDirectory = join(folder, "migrations");
+    for (const name of ["0001_stations_and_events", "0002_localizations"]) cpSync(join(MIGRATIONS_DIRECTORY, name), join(migrationsDirectory, name), { recursive: true });
+    const databasePath = join(folder, "offing.sqlite");
+    migrate({ databasePath, migrationsDirectory });
+    const database = new Database(databasePath);
+    database.exec(readFileSync("fixtures/records/first-version.sql", "utf8"));
+    database.close();
+
+    const { store } = await temporaryStore(folder);
+    const event = inventedEvent("gale");
+    const { title, note, observations } = event;
+    expect(broughtIn(await store.loadEvent("gale"))).toStrictEqual({ id: "gale", title, note, observations });
+    expect(await store.listLocalizations("gale")).toMatchObject([{ number: 1, eventRevision: 1, choices: { ...NO_CHOICES, leftOutStationIds: ["far-rock"] } }]);
+    const [first] = await store.listArrivals({ eventId: "gale", limit: 10 });
+    expect(first).toMatchObject({ stationId: "north-mole", revision: 1, readings: [{ quality: 2 }, { quality: 2 }] });
   });
 
   test("that fail are undone whole, and the copy stays", async () => {

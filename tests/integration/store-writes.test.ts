@@ -44,6 +44,6 @@ test("what is acknowledged has reached the disk, and keys are held to", async ()
   expect(Number(synchronous?.synchronous)).toBe(2); // 2 is FULL: https://www.sqlite.org/pragma.html#pragma_synchronous
   const [timeout] = await pragma("busy_timeout");
   expect(Number(timeout?.timeout)).toBeGreaterThanOrEqual(5000);
-  const orphan = store.write((transaction) => transaction.eventStation.create({ data: { eventId: "no", stationId: "no", ordinal: 0 } }));
+  const orphan = store.write((transaction) => transaction.arrival.create({ data: { eventId: "no", stationId: "no", ordinal: 0, note: "", actor: "test", savedEpochSeconds: 0 } }));
   await expect(orphan).rejects.toThrow(/foreign key/i);
 });

@@ -44,7 +44,7 @@ export function readPrismaSchema(text: string): SchemaTable[] {
       primaryKey: [...marked("@id"), ...rule("id")].join(),
       unique: [...marked("@unique"), ...rule("unique")].sort(),
       foreignKeys: model.fields
-        .filter((field) => field.rest.includes("@relation("))
+        .filter((field) => /@relation\(.*fields: /.test(field.rest))
         .map((field) => {
           const other = models.find((candidate) => candidate.name === field.type);
           const target = (name: string) => columnName(other?.fields.find((candidate) => candidate.name === name));

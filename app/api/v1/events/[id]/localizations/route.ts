@@ -1,38 +1,16 @@
 import { keepLocalization } from "#lib/application/keep-localization.ts";
-import { localizationJson, readLocalizationRequest } from "#lib/contracts/localization-json.ts";
+import { localizationJson, localizationRequest } from "#lib/contracts/api/localizations.ts";
+import { OPERATIONS } from "#lib/contracts/api/operations.ts";
 import { Refusal } from "#lib/core/failures/refusal.ts";
-import { decodedPart } from "#lib/http/address-part.ts";
-import { answerRequest, readJson } from "#lib/http/answer-request.ts";
-import { runningProgram } from "#lib/http/running-program.ts";
+import { route } from "#lib/http/answer-request.ts";
 
-interface EventAddress {
-  readonly params: Promise<{ id: string }>;
-}
+export const GET = route(OPERATIONS.listLocalizations, async ({ params: { id = "" }, program }) => {
+  const { events, localizations } = program;
+  if ((await events.loadEvent(id)) === null) throw new Refusal("not-found", `No event "${id}" is stored.`);
+  return { body: { localizations: (await localizations.listLocalizations(id)).map(localizationJson) } };
+});
 
-/** Until there are accounts, whoever reaches this server is its keeper. */
-const LOCAL_KEEPER = "local keeper";
-
-export function GET(request: Request, { params }: EventAddress): Promise<Response> {
-  return answerRequest(request, async () => {
-    const id = decodedPart((await params).id) ?? "";
-    const { events, localizations } = await runningProgram();
-    if ((await events.loadEvent(id)) === null) throw new Refusal("not-found", `No event "${id}" is stored.`);
-    const list = await localizations.listLocalizations(id);
-    return { status: 200, body: { localizations: list.map(localizationJson) } };
-  });
-}
-
-export function POST(request: Request, { params }: EventAddress): Promise<Response> {
-  return answerRequest(request, async () => {
-    const { id } = await params;
-    const wanted = readLocalizationRequest(await readJson(request));
-    const { events, localizations, host } = await runningProgram();
-    const { number, answer } = await keepLocalization({ events, localizations, host }, {
-      ...wanted,
-      eventId: decodedPart(id) ?? "",
-      actor: LOCAL_KEEPER,
-      savedEpochSeconds: Date.now() / 1000,
-    });
-    return { status: 201, body: { number, answer }, location: `/api/v1/events/${id}/localizations/${number}` };
-  });
-}
+export const POST = route(OPERATIONS.keepLocalization, async ({ params: { id = "" }, body, program, doing }) => {
+  const { number, answer } = await keepLocalization(program, { ...localizationRequest(body), eventId: id, ...doing });
+  return { body: { number, answer }, location: `/api/v1/events/${encodeURIComponent(id)}/localizations/${number}` };
+});

@@ -1,0 +1,101 @@
+import * as z from "zod/mini";
+import type { RefusalReason } from "#lib/core/failures/refusal.ts";
+import { arrivalShape, movedArrivalShape, newArrivalShape } from "./arrivals.ts";
+import { describedEventShape, eventShape, eventSummaryShape, mergeShape, newEventShape, splitShape } from "./events.ts";
+import { revisionField, timeField } from "./fields.ts";
+import { localizationShape, localizationSummaryShape, newLocalizationShape } from "./localizations.ts";
+import { MOST_JSON_BYTES, type BodyShape, type Operation, type Role } from "./operation.ts";
+import { qualityField, readingShape } from "./readings.ts";
+
+/** An operation that gives JSON, from its shapes. */
+function operation<Body = null, Query = Record<string, never>>(parts: {
+  id: string;
+  method: Operation<Body, Query>["method"];
+  path: Operation<Body, Query>["path"];
+  role: Role;
+  summary: string;
+  query?: z.ZodMiniType<Query>;
+  body?: z.ZodMiniType<Body>;
+  status?: 200 | 201;
+  gives: z.ZodMiniType;
+  refusals?: readonly RefusalReason[];
+}): Operation<Body, Query> {
+  const { id, method, path, role, summary, query, body, status = 200, gives, refusals = [] } = parts;
+  const bodyShape: BodyShape<Body> = body === undefined ? null : { type: "application/json", schema: body };
+  return {
+    ...{ id, method, path, role, summary, refusals, mostBytes: MOST_JSON_BYTES },
+    query: query ?? (NO_QUERY as unknown as z.ZodMiniType<Query>),
+    body: bodyShape,
+    answer: { status, type: "application/json", schema: gives },
+  };
+}
+
+const NO_QUERY = z.strictObject({});
+const limitField = z.optional(z.string().check(z.regex(/^[1-9]\d{0,4}$/, "a whole number from 1 to 99999")));
+const CHANGED = z.object({ revision: revisionField });
+const EDIT = ["not-found", "conflict"] as const;
+
+export const OPERATIONS = {
+  listReadings: operation({
+    id: "listReadings", method: "GET", path: "/api/v1/readings", role: "reader",
+    summary: "Readings in the order in which they were brought in, by station and time (the first moment counts, the last does not); 1000 unless limit says otherwise.",
+    query: z.strictObject({ station: z.optional(z.string()), from: z.optional(timeField), to: z.optional(timeField), limit: limitField }),
+    gives: z.object({ readings: z.array(readingShape) }),
+  }),
+  flagReading: operation({
+    id: "flagReading", method: "PATCH", path: "/api/v1/readings/{id}", role: "contributor",
+    summary: "Gives a reading another quality flag. The revision is its arrival's.",
+    body: z.strictObject({ revision: revisionField, quality: qualityField }),
+    gives: CHANGED, refusals: EDIT,
+  }),
+  listArrivals: operation({
+    id: "listArrivals", method: "GET", path: "/api/v1/arrivals", role: "reader",
+    summary: "Arrivals in the order in which they were brought in, by station and event (waiting=yes: those of no event); 200 unless limit says otherwise.",
+    query: z.strictObject({ station: z.optional(z.string()), event: z.optional(z.string()), waiting: z.optional(z.enum(["yes"], "yes")), limit: limitField }),
+    gives: z.object({ arrivals: z.array(arrivalShape) }),
+  }),
+  bringInArrival: operation({
+    id: "bringInArrival", method: "POST", path: "/api/v1/arrivals", role: "contributor",
+    summary: "Brings in one station's arrival: its readings, or an estimate in their place.",
+    body: newArrivalShape, status: 201, gives: arrivalShape, refusals: EDIT,
+  }),
+  readArrival: operation({ id: "readArrival", method: "GET", path: "/api/v1/arrivals/{id}", role: "reader", summary: "One arrival with its readings.", gives: arrivalShape, refusals: ["not-found"] }),
+  moveArrival: operation({
+    id: "moveArrival", method: "PATCH", path: "/api/v1/arrivals/{id}", role: "analyst",
+    summary: "Moves an arrival to another event, or out of its own.",
+    body: movedArrivalShape, gives: CHANGED, refusals: EDIT,
+  }),
+  listEvents: operation({ id: "listEvents", method: "GET", path: "/api/v1/events", role: "reader", summary: "Events, latest swell first, without those merged into others.", gives: z.object({ events: z.array(eventSummaryShape) }) }),
+  openEvent: operation({
+    id: "openEvent", method: "POST", path: "/api/v1/events", role: "analyst",
+    summary: "Makes an event of arrivals that are stored, or an empty one. Where no id is given it is made from the day of the first arrival.",
+    body: newEventShape, status: 201, gives: eventShape, refusals: ["conflict"],
+  }),
+  readEvent: operation({ id: "readEvent", method: "GET", path: "/api/v1/events/{id}", role: "reader", summary: "One event with its arrivals.", gives: eventShape, refusals: ["not-found"] }),
+  describeEvent: operation({ id: "describeEvent", method: "PATCH", path: "/api/v1/events/{id}", role: "analyst", summary: "Gives an event another title and note.", body: describedEventShape, gives: CHANGED, refusals: EDIT }),
+  mergeEvents: operation({
+    id: "mergeEvents", method: "POST", path: "/api/v1/events/{id}/merge", role: "analyst",
+    summary: "Takes all arrivals of another event, which stays, empty, with the answers that were kept of it.",
+    body: mergeShape, gives: eventShape, refusals: EDIT,
+  }),
+  splitEvent: operation({
+    id: "splitEvent", method: "POST", path: "/api/v1/events/{id}/split", role: "analyst",
+    summary: "Makes a new event of some of this one's arrivals.",
+    body: splitShape, status: 201, gives: eventShape, refusals: EDIT,
+  }),
+  listLocalizations: operation({
+    id: "listLocalizations", method: "GET", path: "/api/v1/events/{id}/localizations", role: "reader",
+    summary: "The answers that were kept of an event, latest first.",
+    gives: z.object({ localizations: z.array(localizationSummaryShape) }), refusals: ["not-found"],
+  }),
+  keepLocalization: operation({
+    id: "keepLocalization", method: "POST", path: "/api/v1/events/{id}/localizations", role: "analyst",
+    summary: "Works an event's answer out anew from what is stored and what was chosen of it, and keeps it for good.",
+    body: newLocalizationShape, status: 201, gives: z.object({ number: z.int(), answer: z.unknown() }), refusals: EDIT,
+  }),
+  readLocalization: operation({
+    id: "readLocalization", method: "GET", path: "/api/v1/events/{id}/localizations/{number}", role: "reader",
+    summary: "One kept answer, whole, with copies of all that made it.",
+    gives: localizationShape, refusals: ["not-found"],
+  }),
+};

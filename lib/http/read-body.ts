@@ -1,0 +1,37 @@
+import { InputError } from "#lib/core/failures/input-error.ts";
+import { Refusal } from "#lib/core/failures/refusal.ts";
+
+/**
+ * A request's body as text, read no further than it may be long.
+ *
+ * @throws Refusal `too-large`; InputError `not-text` where the bytes are not UTF-8.
+ */
+export async function readText(request: Request, mostBytes: number): Promise<string> {
+  const tooLarge = new Refusal("too-large", `The request holds more than ${mostBytes} bytes.`);
+  if (Number(request.headers.get("content-length") ?? "0") > mostBytes) throw tooLarge;
+  const parts: Uint8Array[] = [];
+  let length = 0;
+  const reader = request.body?.getReader();
+  for (let part = await reader?.read(); part?.done === false; part = await reader?.read()) {
+    length += part.value.byteLength;
+    if (length > mostBytes) {
+      await reader?.cancel();
+      throw tooLarge;
+    }
+    parts.push(part.value);
+  }
+  try {
+    return new TextDecoder("utf-8", { fatal: true }).decode(Buffer.concat(parts));
+  } catch {
+    throw new InputError([{ code: "not-text", path: "", message: "The request's body is no UTF-8 text." }]);
+  }
+}
+
+/** @throws InputError `not-json` where it is none. */
+export function parseJson(text: string): unknown {
+  try {
+    return JSON.parse(text) as unknown;
+  } catch {
+    throw new InputError([{ code: "not-json", path: "", message: "The request's body is no JSON." }]);
+  }
+}
