@@ -102,9 +102,10 @@ export interface EventBroughtIn {
 
 export interface EventToSave extends EventBroughtIn, Doing {}
 
-/** A new event of arrivals that are stored already. */
+/** A new event of arrivals that are stored already and belong to none. */
 export interface EventToOpen {
-  readonly id: string;
+  /** Null: one is made of the day on which the first of the arrivals came in, or else of today's. */
+  readonly id: string | null;
   readonly title: string;
   readonly note: string;
   readonly arrivalIds: readonly number[];
@@ -127,10 +128,12 @@ export interface EventStore {
   saveEvent(event: EventToSave): Promise<void>;
 
   /**
-   * @throws Refusal `conflict` where an event has this id already.
+   * Makes an event of arrivals that wait for one. Gives its id.
+   *
+   * @throws Refusal `conflict` where an event has this id already, or where an arrival belongs to another event.
    * @throws InputError `unknown-arrival` for ids that no arrival has.
    */
-  openEvent(event: EventToOpen, doing: Doing): Promise<void>;
+  openEvent(event: EventToOpen, doing: Doing): Promise<string>;
 
   /** @throws Refusal `not-found`; `conflict` where it was changed since `startedFrom`. Gives the new revision. */
   editEvent(edit: { readonly id: string; readonly startedFrom: number; readonly title: string; readonly note: string }, doing: Doing): Promise<number>;
@@ -143,12 +146,12 @@ export interface EventStore {
   mergeEvents(merge: { readonly into: EventVersion; readonly from: EventVersion }, doing: Doing): Promise<void>;
 
   /**
-   * Makes a new event of some of another's arrivals.
+   * Makes a new event of some of another's arrivals. Gives its id.
    *
    * @throws Refusal `not-found`; `conflict` where the event was changed since, or the new id is taken.
    * @throws InputError `unknown-arrival` for ids that are none of this event's; `nothing-left` where all would go.
    */
-  splitEvent(split: { readonly from: EventVersion; readonly event: EventToOpen }, doing: Doing): Promise<void>;
+  splitEvent(split: { readonly from: EventVersion; readonly event: EventToOpen }, doing: Doing): Promise<string>;
 }
 
 /** An event and the revision of it that somebody had seen. */
@@ -229,7 +232,7 @@ export interface StoredLocalization extends Omit<LocalizationToSave, "startedFro
   readonly number: number;
 }
 
-export type LocalizationSummary = Omit<StoredLocalization, "settingsJson" | "inputJson" | "answerJson">;
+export type LocalizationSummary = Omit<StoredLocalization, "inputJson" | "answerJson">;
 
 /** Where the answers of events are kept, each for good. */
 export interface LocalizationStore {

@@ -3,7 +3,8 @@ import type { ObservationChoices } from "#lib/core/arrival/observation-choices.t
 import type { SourceOutcome } from "#lib/core/source/answer.ts";
 import type { Position } from "#lib/core/units/position.ts";
 import { SECONDS_PER_HOUR } from "#lib/core/units/time.ts";
-import { listWords } from "./numbers-in-words.ts";
+import { readingChoiceWords } from "./choice-words.ts";
+import { listWords, startingSentence } from "./numbers-in-words.ts";
 import { positionWords } from "./positions.ts";
 import { momentWords } from "./times.ts";
 
@@ -12,6 +13,7 @@ export interface KeptAnswer {
   readonly number: number;
   readonly savedEpochSeconds: number;
   readonly actor: string;
+  readonly settingsJson: string;
   /** In its maker's words; may be empty. */
   readonly reason: string;
   readonly choices: ObservationChoices;
@@ -24,16 +26,25 @@ export interface KeptWords {
   readonly who: string;
   /** Null where no station was. */
   readonly leftOut: string | null;
+  /** What was chosen of the readings; null where all were used as they were brought in. */
+  readonly readings: string | null;
 }
 
 export function keptWords(kept: KeptAnswer, stations: readonly NumberedStation[]): KeptWords {
   const { savedEpochSeconds, actor, choices } = kept;
-  const out = stations.filter(({ id }) => choices.leftOutStationIds.includes(id)).map(({ number, name }) => `${number}\u00a0${name}`);
+  const readings = readingChoiceWords(choices);
   return {
     what: whatWords(kept),
     who: `${momentWords(savedEpochSeconds)}, ${actor}`,
-    leftOut: out.length === 0 ? null : `Left out: ${listWords(out)}.`,
+    leftOut: leftOutWords(choices, stations),
+    readings: readings === null ? null : `${startingSentence(readings)}.`,
   };
+}
+
+/** "Left out: 4 Thornholm."; null where no station was. */
+export function leftOutWords({ leftOutStationIds }: ObservationChoices, stations: readonly NumberedStation[]): string | null {
+  const out = stations.filter(({ id }) => leftOutStationIds.includes(id)).map(({ number, name }) => `${number}\u00a0${name}`);
+  return out.length === 0 ? null : `Left out: ${listWords(out)}.`;
 }
 
 /** In the words of the answer's own headline. */

@@ -1,3 +1,4 @@
+import { parseIsoTime } from "#lib/core/units/parse-iso-time.ts";
 import { SECONDS_PER_HOUR } from "#lib/core/units/time.ts";
 import { figure, signedFigure } from "./figures.ts";
 
@@ -36,4 +37,18 @@ export function dayWords(epochSeconds: number): string {
 
 function dayOf(moment: Date): string {
   return `${moment.getUTCDate()} ${MONTHS[moment.getUTCMonth()] ?? ""} ${moment.getUTCFullYear()}`;
+}
+
+/** A moment in UTC as a field holds it: "2031-02-09 06:00", with seconds where it has any. */
+export function momentText(epochSeconds: number): string {
+  const text = new Date(Math.round(epochSeconds) * 1000).toISOString();
+  return `${text.slice(0, 10)} ${text.slice(11, text.slice(17, 19) === "00" ? 16 : 19)}`;
+}
+
+/** The moment that such a field names, UTC unless it says an offset itself; null where it names none. */
+export function parseMoment(text: string): number | null {
+  const trimmed = text.trim();
+  const [own, taken] = [parseIsoTime(trimmed), parseIsoTime(`${trimmed}Z`)];
+  if (own.kind === "time") return own.epochSeconds;
+  return taken.kind === "time" ? taken.epochSeconds : null;
 }

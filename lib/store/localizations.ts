@@ -52,21 +52,22 @@ export async function listLocalizations(reader: PrismaClient, eventId: string): 
   const rows = await reader.localization.findMany({
     where: { eventId },
     orderBy: { number: "desc" },
-    omit: { settings: true, input: true, answer: true },
+    omit: { input: true, answer: true },
   });
   return rows.map(summaryFromRow);
 }
 
 export async function loadLocalization(reader: PrismaClient, eventId: string, number: number): Promise<StoredLocalization | null> {
   const row = await reader.localization.findUnique({ where: { eventId_number: { eventId, number } } });
-  return row && { ...summaryFromRow(row), settingsJson: row.settings, inputJson: row.input, answerJson: row.answer };
+  return row && { ...summaryFromRow(row), inputJson: row.input, answerJson: row.answer };
 }
 
-function summaryFromRow(row: Omit<Localization, "settings" | "input" | "answer">): LocalizationSummary {
+function summaryFromRow(row: Omit<Localization, "input" | "answer">): LocalizationSummary {
   const { eventId, eventRevision, savedEpochSeconds, actor, reason, program, nodeVersion, inputDigest } = row;
   return {
     ...{ eventId, eventRevision, savedEpochSeconds, actor, reason, program, nodeVersion, inputDigest },
     ...placedSummary(row),
+    settingsJson: row.settings,
     choices: { ...NO_CHOICES, ...Choices.parse(JSON.parse(row.choices)), leftOutStationIds: LeftOut.parse(JSON.parse(row.leftOut)) },
   };
 }

@@ -4,46 +4,60 @@ import dynamic from "next/dynamic";
 import { useCallback, useEffect, useMemo } from "react";
 import { windowAround } from "#lib/chart/chart-window.ts";
 import { numberedStations } from "#lib/core/arrival/numbered-stations.ts";
-import type { EventObservations } from "#lib/core/arrival/observations.ts";
+import type { GatheredObservations } from "#lib/core/arrival/gathered-observations.ts";
+import type { ObservationChoices } from "#lib/core/arrival/observation-choices.ts";
 import type { EstimationSettings } from "#lib/core/source/settings.ts";
 import type { EventSolution } from "#lib/core/source/solution.ts";
+import type { ArrivalInEvent } from "#lib/presentation/arrival-rows.ts";
+import type { AuditLine } from "#lib/presentation/audit-words.ts";
 import type { KeptAnswer } from "#lib/presentation/kept-words.ts";
 import { Answer } from "./answer.tsx";
+import { ArrivalsPanel, type EventInView } from "./arrivals-panel.tsx";
 import { ChartBar } from "./chart-bar.tsx";
 import { ChartState } from "./chart-state.tsx";
 import { Evidence } from "./evidence.tsx";
 import styles from "./event-sheet.module.css";
 import { KeptAnswers } from "./kept-answers.tsx";
+import { ReadingsPanel } from "./readings-panel.tsx";
+import { Unkept } from "./unkept.tsx";
 import { useEventWorker, type EventWorker } from "./use-event-worker.ts";
 import { useView, type ChangeView } from "./use-view.ts";
+import { useWork } from "./use-work.ts";
 import type { EventView } from "./view.ts";
 
 // The map library measures the page as soon as it is loaded, which a server cannot.
 const Chart = dynamic(() => import("./chart.tsx").then((module) => module.Chart), { ssr: false });
 
 export interface EventSheetProps {
-  readonly id: string;
-  readonly title: string;
-  readonly note: string;
-  readonly observations: EventObservations;
+  readonly event: EventInView;
+  readonly arrivals: readonly ArrivalInEvent[];
+  readonly observations: GatheredObservations;
   readonly settings: EstimationSettings;
-  /** Worked out by the server, without these stations. */
+  /** The same as the programming interface takes them. */
+  readonly settingsJson: string;
+  /** Worked out by the server, from these choices. */
   readonly solution: EventSolution;
-  readonly without: readonly string[];
+  readonly choices: ObservationChoices;
+  /** Those of the latest kept answer, or none. */
+  readonly base: ObservationChoices;
   /** Latest first. */
   readonly kept: readonly KeptAnswer[];
+  readonly trail: readonly AuditLine[];
 }
 
 export function EventSheet(props: EventSheetProps) {
-  const { observations, settings } = props;
+  const { event, observations, settings, base, kept } = props;
   const stations = useMemo(() => numberedStations(observations), [observations]);
-  const ids = useMemo(() => stations.map(({ id }) => id), [stations]);
-  const [view, change] = useView(ids);
+  const defaults = useMemo(() => ({ knownIds: stations.map(({ id }) => id), without: base.leftOutStationIds }), [stations, base]);
+  const [view, change] = useView(defaults);
+  const latestNumber = kept[0]?.number ?? 0;
+  const work = useWork({ eventId: event.id, eventRevision: event.revision, observations, number: latestNumber, base }, view, change);
   const window = useMemo(() => windowAround(stations.map(({ position }) => position)), [stations]);
-  const { solution: served, without: servedWithout } = props;
-  const worker = useEventWorker({ observations, settings, window, solution: served, without: servedWithout }, view.without);
+  const { solution: served, choices: servedChoices } = props;
+  const worker = useEventWorker({ observations, settings, window, solution: served, choices: servedChoices }, work.choices);
   const { drawn, isBehind, failure } = worker;
   const { toggleFocus, toggleStation } = useChoices(view, change);
+  const focusOn = useCallback((focus: string | null) => { change({ focus }); }, [change]);
   useOverlap(view, worker);
 
   // Without the worker the server works the new choice out; the address holds it by now.
@@ -70,9 +84,12 @@ export function EventSheet(props: EventSheetProps) {
         </div>
         <ChartBar view={view} onChange={change} />
       </section>
-      <Answer title={props.title} note={props.note} without={view.without} {...said} />
+      <Answer title={event.title} note={event.note} without={view.without} {...said} />
+      <Unkept work={work} latestNumber={latestNumber} />
       <Evidence {...said} view={view} onInclude={toggleStation} onFocus={toggleFocus} />
-      <KeptAnswers eventId={props.id} kept={props.kept} stations={stations} without={view.without} isBehind={isBehind} />
+      <ReadingsPanel observations={observations} stations={stations} solution={said.solution} focus={view.focus} work={work} onFocus={focusOn} />
+      <KeptAnswers eventId={event.id} eventRevision={event.revision} unit={view.unit} {...{ kept, stations, work, isBehind }} trail={props.trail} settingsJson={props.settingsJson} />
+      <ArrivalsPanel event={event} arrivals={props.arrivals} readings={observations.readings} stations={stations} />
     </div>
   );
 }

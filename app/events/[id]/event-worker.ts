@@ -2,10 +2,9 @@ import type { GeometryCollection, Topology } from "topojson-specification";
 import { bandOverlaps } from "#lib/chart/band-overlaps.ts";
 import { baseMap } from "#lib/chart/base-map.ts";
 import { eventLayers } from "#lib/chart/event-layers.ts";
-import { withoutStations } from "#lib/core/arrival/without-stations.ts";
 import { buildLandMask } from "#lib/core/geodesy/land-mask.ts";
 import type { SightTable } from "#lib/core/geodesy/sight-table.ts";
-import { solveEvent } from "#lib/core/source/solve-event.ts";
+import { solveGathered } from "#lib/core/source/solve-gathered.ts";
 import { sightOfStations } from "./sight-of-stations.ts";
 import type { Drawn, WorkerReport, WorkerRequest } from "./worker-messages.ts";
 
@@ -42,11 +41,11 @@ async function openEvent(opening: Opening): Promise<(question: Question) => void
   const drawing = { window: opening.window, settings: opening.settings, sightTables };
   let shown = opening.solution;
 
-  const show = ({ ask, without, solution }: Omit<Drawn, "layers">): void => {
+  const show = ({ ask, choices, solution }: Omit<Drawn, "layers">): void => {
     shown = solution;
-    report({ kind: "drawn", ask, without, solution, layers: eventLayers({ ...drawing, solution }) });
+    report({ kind: "drawn", ask, choices, solution, layers: eventLayers({ ...drawing, solution }) });
   };
-  show({ ask: 0, without: opening.without, solution: opening.solution });
+  show({ ask: 0, choices: opening.choices, solution: opening.solution });
 
   return (question) => {
     try {
@@ -55,9 +54,9 @@ async function openEvent(opening: Opening): Promise<(question: Question) => void
         report({ kind: "overlap", ask: question.ask, areas });
         return;
       }
-      const { ask, without } = question;
-      const observations = withoutStations(opening.observations, without);
-      show({ ask, without, solution: solveEvent({ observations, settings: opening.settings, land, sightTables }) });
+      const { ask, choices } = question;
+      const solution = solveGathered({ gathered: opening.observations, choices, settings: opening.settings, land, sightTables });
+      show({ ask, choices, solution });
     } catch (error) {
       reportFailure(question.ask, error);
     }

@@ -1,21 +1,21 @@
 import { useRouter } from "next/navigation";
-import { useId, useRef, useState, useTransition } from "react";
-import { askToKeep, type KeepReport } from "./ask-to-keep.ts";
+import { useId, useState, useTransition } from "react";
+import { askServer, type Asked } from "../../_components/ask-server.ts";
+import { choicesJson } from "#lib/contracts/api/choices.ts";
 import styles from "./kept-answers.module.css";
+import type { Work } from "./use-work.ts";
 
 /** As long as the server takes it. */
 const MOST_LETTERS = 2000;
+/** Nothing is kept twice by trying again: what was kept meanwhile makes the server refuse. */
+const UNHEARD = "The server did not answer, so whether this was kept is not known. Try again: if it was, the server will say so.";
 
-/**
- * Keeps the answer that the page shows. The reason is held by the field itself, so that neither a refusal nor a fresh
- * list loses it; it is emptied once its answer is kept.
- */
-export function KeepForm(props: { eventId: string; latestNumber: number; without: readonly string[]; isBehind: boolean }) {
-  const { eventId, latestNumber, without, isBehind } = props;
+/** Keeps the answer that the page shows, and its reason, which neither a refusal nor a fresh list loses. */
+export function KeepForm(props: { eventId: string; eventRevision: number; latestNumber: number; settingsJson: string; work: Work; isBehind: boolean }) {
+  const { eventId, eventRevision, latestNumber, settingsJson, work, isBehind } = props;
   const router = useRouter();
-  const field = useRef<HTMLTextAreaElement>(null);
   const id = useId();
-  const [report, setReport] = useState<KeepReport | null>(null);
+  const [report, setReport] = useState<Asked<{ number: number }> | null>(null);
   const [isKeeping, setIsKeeping] = useState(false);
   const [isFetching, startFetching] = useTransition();
   const fetchList = (): void => {
@@ -25,11 +25,13 @@ export function KeepForm(props: { eventId: string; latestNumber: number; without
   const keep = async (): Promise<void> => {
     setIsKeeping(true);
     setReport(null);
-    const outcome = await askToKeep({ eventId, startedFrom: latestNumber, leftOut: without, reason: field.current?.value.trim() ?? "" });
+    const settings = JSON.parse(settingsJson) as unknown;
+    const body = { startedFrom: latestNumber, eventRevision, ...choicesJson(work.choices), reason: work.reason.trim(), settings };
+    const outcome = await askServer<{ number: number }>(`/api/v1/events/${encodeURIComponent(eventId)}/localizations`, { method: "POST", body, unheard: UNHEARD });
     setIsKeeping(false);
     setReport(outcome);
-    if (outcome.kind !== "kept") return;
-    if (field.current !== null) field.current.value = "";
+    if (outcome.kind !== "done") return;
+    work.setReason("");
     fetchList();
   };
   const showKept = (): void => {
@@ -39,23 +41,31 @@ export function KeepForm(props: { eventId: string; latestNumber: number; without
   return (
     <>
       <label htmlFor={id} className={styles.label}>Why (optional)</label>
-      <textarea ref={field} id={id} className={styles.why} rows={2} maxLength={MOST_LETTERS} readOnly={isKeeping} />
+      <textarea
+        id={id}
+        className={styles.why}
+        rows={2}
+        maxLength={MOST_LETTERS}
+        readOnly={isKeeping}
+        value={work.reason}
+        onChange={({ target }) => { work.setReason(target.value); }}
+      />
       <div className={styles.action}>
         <button type="button" className={styles.button} disabled={isKeeping || isFetching || isBehind} onClick={() => { void keep(); }}>
           {isKeeping ? "Keeping…" : "Keep this answer"}
         </button>
-        <p role="status">{report?.kind === "kept" && `Kept as number ${report.number}.`}</p>
+        <p role="status">{report?.kind === "done" && `Kept as number ${report.reply.number}.`}</p>
       </div>
-      {report !== null && report.kind !== "kept" && <Refused report={report} onShow={showKept} />}
+      {report !== null && report.kind !== "done" && <Refused report={report} onShow={showKept} />}
     </>
   );
 }
 
-function Refused({ report, onShow }: { report: Exclude<KeepReport, { kind: "kept" }>; onShow: () => void }) {
+function Refused({ report, onShow }: { report: Exclude<Asked<unknown>, { kind: "done" }>; onShow: () => void }) {
   return (
     <div className={styles.refused}>
       <div role="alert">
-        {report.messages.map((message) => <p key={message}>{message}</p>)}
+        {report.issues.map(({ message }) => <p key={message}>{message}</p>)}
       </div>
       {report.kind === "overtaken" && (
         <button type="button" className={styles.button} onClick={onShow}>

@@ -1,37 +1,53 @@
 import { useId } from "react";
 import type { NumberedStation } from "#lib/core/arrival/numbered-stations.ts";
+import { auditWords, type AuditLine } from "#lib/presentation/audit-words.ts";
+import type { DistanceUnit } from "#lib/presentation/distances.ts";
 import { keptWords, type KeptAnswer } from "#lib/presentation/kept-words.ts";
 import { KeepForm } from "./keep-form.tsx";
+import { KeptChanges } from "./kept-changes.tsx";
 import styles from "./kept-answers.module.css";
+import type { Work } from "./use-work.ts";
 
-/** What was kept of this event, latest first, and the way to keep what the page shows now. */
+/** What was kept of this event, latest first, the way to keep what the page shows now, and what was done to the event. */
 export function KeptAnswers(props: {
   eventId: string;
+  eventRevision: number;
   /** Latest first. */
   kept: readonly KeptAnswer[];
+  /** What was done to the event, latest first. */
+  trail: readonly AuditLine[];
   stations: readonly NumberedStation[];
-  without: readonly string[];
+  settingsJson: string;
+  unit: DistanceUnit;
+  work: Work;
   isBehind: boolean;
 }) {
-  const { kept, stations } = props;
+  const { eventId, kept, stations, trail, work } = props;
   const heading = useId();
   return (
-    <section className={styles.kept} aria-labelledby={heading}>
+    <section id="keep" className={styles.kept} aria-labelledby={heading}>
       <h2 id={heading} className={styles.heading}>Kept answers</h2>
       <KeepForm {...props} latestNumber={kept[0]?.number ?? 0} />
       {kept.length === 0 ? (
         <p className={styles.none}>None kept yet.</p>
       ) : (
         <ol className={styles.list}>
-          {kept.map((one) => <Entry key={one.number} kept={one} stations={stations} />)}
+          {kept.map((one, place) => <Entry key={one.number} kept={one} isLatest={place === 0} stations={stations} work={work} />)}
         </ol>
       )}
+      {kept.length > 1 && <KeptChanges {...props} key={kept.length} numbers={kept.map(({ number }) => number)} />}
+      <details className={styles.trail}>
+        <summary>What was done to this event</summary>
+        <ul>
+          {trail.map((line, place) => <li key={place}>{auditWords(line, eventId)}</li>)}
+        </ul>
+      </details>
     </section>
   );
 }
 
-function Entry({ kept, stations }: { kept: KeptAnswer; stations: readonly NumberedStation[] }) {
-  const { what, who, leftOut } = keptWords(kept, stations);
+function Entry({ kept, isLatest, stations, work }: { kept: KeptAnswer; isLatest: boolean; stations: readonly NumberedStation[]; work: Work }) {
+  const { what, who, leftOut, readings } = keptWords(kept, stations);
   return (
     <li>
       <b className={styles.number}>{kept.number}</b>
@@ -39,7 +55,13 @@ function Entry({ kept, stations }: { kept: KeptAnswer; stations: readonly Number
         <p>{what}</p>
         <p className={styles.who}>{who}</p>
         {leftOut !== null && <p>{leftOut}</p>}
+        {readings !== null && <p>{readings}</p>}
         {kept.reason !== "" && <p className={styles.reason}>{kept.reason}</p>}
+        {!isLatest && (
+          <button type="button" className={styles.plain} onClick={() => { work.takeUp(kept.choices); }}>
+            Take up number {kept.number} again
+          </button>
+        )}
       </div>
     </li>
   );

@@ -1,5 +1,6 @@
 import { useCallback, useEffect, useRef, useState } from "react";
 import type { BaseMap } from "#lib/chart/base-map.ts";
+import type { ObservationChoices } from "#lib/core/arrival/observation-choices.ts";
 import type { ChartArea } from "#lib/chart/chart-point.ts";
 import type { Drawn, WorkerReport, WorkerRequest } from "./worker-messages.ts";
 
@@ -8,21 +9,21 @@ export interface EventWorker {
   readonly drawn: Drawn | null;
   readonly overlap: readonly ChartArea[];
   readonly failure: string | null;
-  /** Whether what is shown, or came with the page, leaves out other stations than it should. */
+  /** Whether what is shown, or came with the page, comes from other choices than these. */
   readonly isBehind: boolean;
   readonly findOverlap: (focus: string | null) => void;
 }
 
 /**
- * The worker of one open event: started with the page, ended with it. It is asked anew whenever the stations `without`
+ * The worker of one open event: started with the page, ended with it. It is asked anew whenever the choices
  * change; answers overtaken by newer questions are dropped.
  */
 export function useEventWorker(
   opening: Omit<Extract<WorkerRequest, { kind: "open" }>, "kind">,
-  without: readonly string[],
+  choices: ObservationChoices,
 ): EventWorker {
   const worker = useRef<Worker | null>(null);
-  const lastAsk = useRef({ solve: 0, overlap: 0, without: opening.without });
+  const lastAsk = useRef({ solve: 0, overlap: 0, choices: opening.choices });
   const openedWith = useRef(opening);
   const [baseMap, setBaseMap] = useState<BaseMap | null>(null);
   const [drawn, setDrawn] = useState<Drawn | null>(null);
@@ -44,7 +45,7 @@ export function useEventWorker(
       setFailure("The part of the page that draws the chart could not be started.");
     };
     worker.current = started;
-    lastAsk.current.without = openedWith.current.without;
+    lastAsk.current.choices = openedWith.current.choices;
     post(started, { kind: "open", ...openedWith.current });
     return () => {
       started.terminate();
@@ -53,21 +54,22 @@ export function useEventWorker(
   }, []);
 
   useEffect(() => {
-    if (sameIds(without, lastAsk.current.without)) return;
-    lastAsk.current = { ...lastAsk.current, without, solve: lastAsk.current.solve + 1 };
-    post(worker.current, { kind: "solve", ask: lastAsk.current.solve, without });
-  }, [without]);
+    if (sameChoices(choices, lastAsk.current.choices)) return;
+    lastAsk.current = { ...lastAsk.current, choices, solve: lastAsk.current.solve + 1 };
+    post(worker.current, { kind: "solve", ask: lastAsk.current.solve, choices });
+  }, [choices]);
   const findOverlap = useCallback((focus: string | null) => {
     lastAsk.current.overlap += 1;
     post(worker.current, { kind: "overlap", ask: lastAsk.current.overlap, focus });
   }, []);
 
-  const isBehind = !sameIds(without, drawn?.without ?? opening.without);
+  const isBehind = !sameChoices(choices, drawn?.choices ?? opening.choices);
   return { baseMap, drawn, overlap, failure, isBehind, findOverlap };
 }
 
-function sameIds(some: readonly string[], others: readonly string[]): boolean {
-  return some.length === others.length && some.every((id, index) => id === others[index]);
+/** A copy that has been to the worker and back is another object that says the same. */
+export function sameChoices(some: ObservationChoices, others: ObservationChoices): boolean {
+  return some === others || JSON.stringify(some) === JSON.stringify(others);
 }
 
 function post(worker: Worker | null, request: WorkerRequest): void {

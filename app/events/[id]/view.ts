@@ -18,13 +18,19 @@ export interface EventView {
   readonly place: ChartPlace | null;
 }
 
+/** What an address need not say: the event's stations, and those left out where it says nothing of them. */
+export interface ViewDefaults {
+  readonly knownIds: readonly string[];
+  readonly without: readonly string[];
+}
+
 /** Reads a view from an address's query; what it does not know it leaves at its default. */
-export function viewFromQuery(query: URLSearchParams, knownIds: readonly string[]): EventView {
+export function viewFromQuery(query: URLSearchParams, { knownIds, without }: ViewDefaults): EventView {
   const known = (id: string | null): id is string => id !== null && knownIds.includes(id);
   const focus = query.get("focus");
   const unit = query.get("unit");
   return {
-    without: [...new Set(query.getAll("without"))].filter(known),
+    without: query.has("without") ? [...new Set(query.getAll("without"))].filter(known) : without,
     focus: known(focus) ? focus : null,
     unit: isDistanceUnit(unit) ? unit : "km",
     showsOverlap: query.get("overlap") === "yes",
@@ -34,9 +40,10 @@ export function viewFromQuery(query: URLSearchParams, knownIds: readonly string[
 }
 
 /** The same view as a query, empty for the default one. */
-export function queryFromView(view: EventView): string {
+export function queryFromView(view: EventView, { without }: ViewDefaults): string {
   const query = new URLSearchParams();
   for (const id of view.without) query.append("without", id);
+  if (view.without.length === 0 && without.length > 0) query.set("without", "");
   if (view.focus !== null) query.set("focus", view.focus);
   if (view.unit !== "km") query.set("unit", view.unit);
   if (view.showsOverlap) query.set("overlap", "yes");

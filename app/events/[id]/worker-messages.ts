@@ -2,7 +2,8 @@ import type { EventLayers } from "#lib/chart/event-layers.ts";
 import type { BaseMap } from "#lib/chart/base-map.ts";
 import type { ChartArea } from "#lib/chart/chart-point.ts";
 import type { ChartWindow } from "#lib/chart/chart-window.ts";
-import type { EventObservations } from "#lib/core/arrival/observations.ts";
+import type { GatheredObservations } from "#lib/core/arrival/gathered-observations.ts";
+import type { ObservationChoices } from "#lib/core/arrival/observation-choices.ts";
 import type { EstimationSettings } from "#lib/core/source/settings.ts";
 import type { EventSolution } from "#lib/core/source/solution.ts";
 
@@ -10,21 +11,21 @@ import type { EventSolution } from "#lib/core/source/solution.ts";
 export type WorkerRequest =
   | {
       readonly kind: "open";
-      readonly observations: EventObservations;
+      readonly observations: GatheredObservations;
       readonly settings: EstimationSettings;
       readonly window: ChartWindow;
       /** As worked out by the server: drawn at once, before anything is worked out here. */
       readonly solution: EventSolution;
-      /** The stations that it leaves out. */
-      readonly without: readonly string[];
+      /** What it was worked out from. */
+      readonly choices: ObservationChoices;
     }
-  | { readonly kind: "solve"; readonly ask: number; readonly without: readonly string[] }
+  | { readonly kind: "solve"; readonly ask: number; readonly choices: ObservationChoices }
   | { readonly kind: "overlap"; readonly ask: number; readonly focus: string | null };
 
-/** One solution and its picture, and the stations that both leave out. */
+/** One solution and its picture, and the choices that both come from. */
 export interface Drawn {
   readonly ask: number;
-  readonly without: readonly string[];
+  readonly choices: ObservationChoices;
   readonly solution: EventSolution;
   readonly layers: EventLayers;
 }

@@ -1,5 +1,6 @@
 import * as z from "zod/mini";
 import type { ObservationChoices } from "#lib/core/arrival/observation-choices.ts";
+import { InputError } from "#lib/core/failures/input-error.ts";
 import type { SourceOutcome } from "#lib/core/source/answer.ts";
 import type { Position } from "#lib/core/units/position.ts";
 import { isoTime } from "../iso-time.ts";
@@ -31,7 +32,17 @@ export interface LocalizationRequest {
 /** @throws InputError for settings that are none or out of range, each by its address. */
 export function localizationRequest(body: z.infer<typeof newLocalizationShape>): LocalizationRequest {
   const { startedFrom, eventRevision = null, reason = "", settings, ...choices } = body;
-  return { startedFrom, eventRevision, choices: choicesFromJson(choices), reason, settings: readSettings(settings ?? {}) };
+  return { startedFrom, eventRevision, choices: choicesFromJson(choices), reason, settings: settingsAt(settings) };
+}
+
+/** @throws InputError with addresses from the request's own root. */
+function settingsAt(settings: unknown): PublicSettings {
+  try {
+    return readSettings(settings === undefined ? {} : settings);
+  } catch (error) {
+    if (!(error instanceof InputError)) throw error;
+    throw new InputError(error.issues.map((issue) => ({ ...issue, path: ["settings", issue.path].filter((part) => part !== "").join(".") })));
+  }
 }
 
 const summary = {
@@ -74,3 +85,21 @@ export function localizationJson(kept: KeptLocalization): z.infer<typeof localiz
     ...choicesJson(kept.choices),
   };
 }
+
+/** What is different between two kept answers of one event. */
+export const changesShape = z.object({
+  from: z.int(),
+  to: z.int(),
+  outcome: z.object({ before: outcomeField, after: outcomeField }),
+  /** From the first source to the second; null unless both have one. */
+  shift: z.nullable(z.object({ km: z.number(), hours: z.number() })),
+  region95Km2: z.object({ before: z.nullable(z.number()), after: z.nullable(z.number()) }),
+  stationsIn: z.array(z.string()),
+  stationsOut: z.array(z.string()),
+  /** Of stations in both: how many readings came in, went out, or were changed in time, period or error. */
+  readings: z.array(z.object({ station: z.string(), changed: z.int(), in: z.int(), out: z.int() })),
+  settings: z.array(z.object({ name: z.string(), before: z.nullable(z.union([z.number(), z.boolean()])), after: z.nullable(z.union([z.number(), z.boolean()])) })),
+  program: z.object({ before: z.string(), after: z.string() }),
+});
+
+export type LocalizationChanges = z.infer<typeof changesShape>;

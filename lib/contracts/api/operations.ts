@@ -2,8 +2,8 @@ import * as z from "zod/mini";
 import type { RefusalReason } from "#lib/core/failures/refusal.ts";
 import { arrivalShape, movedArrivalShape, newArrivalShape } from "./arrivals.ts";
 import { describedEventShape, eventShape, eventSummaryShape, mergeShape, newEventShape, splitShape } from "./events.ts";
-import { revisionField, timeField } from "./fields.ts";
-import { localizationShape, localizationSummaryShape, newLocalizationShape } from "./localizations.ts";
+import { choiceField, revisionField, timeField } from "./fields.ts";
+import { changesShape, localizationShape, localizationSummaryShape, newLocalizationShape } from "./localizations.ts";
 import { MOST_JSON_BYTES, type BodyShape, type Operation, type Role } from "./operation.ts";
 import { qualityField, readingShape } from "./readings.ts";
 
@@ -31,15 +31,27 @@ function operation<Body = null, Query = Record<string, never>>(parts: {
 }
 
 const NO_QUERY = z.strictObject({});
-const limitField = z.optional(z.string().check(z.regex(/^[1-9]\d{0,4}$/, "a whole number from 1 to 99999")));
+const LIMIT_WANTED = "a whole number from 1 to 99999";
+const limitField = z.optional(z.string().check(z.regex(/^[1-9]\d{0,4}$/, LIMIT_WANTED)).register(z.globalRegistry, { description: LIMIT_WANTED }));
+const stationFilter = z.optional(z.string().register(z.globalRegistry, { description: "a station's id" }));
+const eventFilter = z.optional(z.string().register(z.globalRegistry, { description: "an event's id" }));
+/** An arrival that waits has no event to be found by. */
+const notOfEvent = z.check<{ waiting?: "yes" | undefined; event?: string | undefined }>(({ value, issues }) => {
+  if (value.waiting !== undefined && value.event !== undefined) issues.push({ code: "custom", path: ["event"], message: "event or waiting, and not both", input: value });
+});
 const CHANGED = z.object({ revision: revisionField });
 const EDIT = ["not-found", "conflict"] as const;
 
 export const OPERATIONS = {
+  describeInterface: operation({
+    id: "describeInterface", method: "GET", path: "/api/v1/openapi.json", role: "reader",
+    summary: "This description of the interface: OpenAPI 3.1, as JSON.",
+    gives: z.looseObject({ openapi: z.string() }),
+  }),
   listReadings: operation({
     id: "listReadings", method: "GET", path: "/api/v1/readings", role: "reader",
     summary: "Readings in the order in which they were brought in, by station and time (the first moment counts, the last does not); 1000 unless limit says otherwise.",
-    query: z.strictObject({ station: z.optional(z.string()), from: z.optional(timeField), to: z.optional(timeField), limit: limitField }),
+    query: z.strictObject({ station: stationFilter, from: z.optional(timeField), to: z.optional(timeField), limit: limitField }),
     gives: z.object({ readings: z.array(readingShape) }),
   }),
   flagReading: operation({
@@ -51,7 +63,7 @@ export const OPERATIONS = {
   listArrivals: operation({
     id: "listArrivals", method: "GET", path: "/api/v1/arrivals", role: "reader",
     summary: "Arrivals in the order in which they were brought in, by station and event (waiting=yes: those of no event); 200 unless limit says otherwise.",
-    query: z.strictObject({ station: z.optional(z.string()), event: z.optional(z.string()), waiting: z.optional(z.enum(["yes"], "yes")), limit: limitField }),
+    query: z.strictObject({ station: stationFilter, event: eventFilter, waiting: z.optional(choiceField(["yes"])), limit: limitField }).check(notOfEvent),
     gives: z.object({ arrivals: z.array(arrivalShape) }),
   }),
   bringInArrival: operation({
@@ -68,7 +80,7 @@ export const OPERATIONS = {
   listEvents: operation({ id: "listEvents", method: "GET", path: "/api/v1/events", role: "reader", summary: "Events, latest swell first, without those merged into others.", gives: z.object({ events: z.array(eventSummaryShape) }) }),
   openEvent: operation({
     id: "openEvent", method: "POST", path: "/api/v1/events", role: "analyst",
-    summary: "Makes an event of arrivals that are stored, or an empty one. Where no id is given it is made from the day of the first arrival.",
+    summary: "Makes an event of arrivals that wait for one, or an empty one. Where no id is given it is made from the day of the first arrival.",
     body: newEventShape, status: 201, gives: eventShape, refusals: ["conflict"],
   }),
   readEvent: operation({ id: "readEvent", method: "GET", path: "/api/v1/events/{id}", role: "reader", summary: "One event with its arrivals.", gives: eventShape, refusals: ["not-found"] }),
@@ -97,5 +109,11 @@ export const OPERATIONS = {
     id: "readLocalization", method: "GET", path: "/api/v1/events/{id}/localizations/{number}", role: "reader",
     summary: "One kept answer, whole, with copies of all that made it.",
     gives: localizationShape, refusals: ["not-found"],
+  }),
+  compareLocalizations: operation({
+    id: "compareLocalizations", method: "GET", path: "/api/v1/events/{id}/localizations/{number}/changes", role: "reader",
+    summary: "What is different in a kept answer since another one of the same event, named by since.",
+    query: z.strictObject({ since: z.string("the number of a kept answer").check(z.regex(/^\d{1,9}$/, "the number of a kept answer")) }),
+    gives: changesShape, refusals: ["not-found"],
   }),
 };
