@@ -8,7 +8,7 @@ import type { LocateJson } from "#lib/contracts/locate-json.ts";
 import type { PublicSettings } from "#lib/contracts/settings.ts";
 import type { Host } from "./host.ts";
 import { locateEvent } from "./locate-event.ts";
-import type { Doing, EventStore, LocalizationStore } from "./ports.ts";
+import type { Doing, EventStore, LocalizationStore, StoredEvent } from "./ports.ts";
 
 export interface AnswerToKeep extends Doing {
   readonly eventId: string;
@@ -44,6 +44,7 @@ export interface KeptAnswer {
 export async function keepLocalization({ events, localizations, host }: Keeping, wanted: AnswerToKeep): Promise<KeptAnswer> {
   const event = await events.loadEvent(wanted.eventId);
   if (event === null) throw new Refusal("not-found", `No event "${wanted.eventId}" is stored.`);
+  requireUnchanged(event, wanted.eventRevision);
   const { eventId, startedFrom, savedEpochSeconds, actor, reason, choices, settings } = wanted;
   requireKnown(event.observations, choices);
   const observations = chosenObservations(event.observations, choices);
@@ -53,7 +54,7 @@ export async function keepLocalization({ events, localizations, host }: Keeping,
   }
   const number = await localizations.saveLocalization({
     ...{ eventId, startedFrom, savedEpochSeconds, actor, reason, choices },
-    eventRevision: wanted.eventRevision ?? event.revision,
+    eventRevision: event.revision,
     program: host.program,
     nodeVersion: process.version,
     inputDigest: answer.inputDigest,
@@ -64,6 +65,13 @@ export async function keepLocalization({ events, localizations, host }: Keeping,
     source: solution.answer?.source ?? null,
   });
   return { number, answer };
+}
+
+/** Before anything is worked out of it; the store asks again when it saves, for the event may change meanwhile. */
+function requireUnchanged({ id, revision, mergedInto }: StoredEvent, seen: number | null): void {
+  if (mergedInto !== null) throw new Refusal("conflict", `Event "${id}" was merged into "${mergedInto}" and takes no more answers.`);
+  if (seen === null || seen === revision) return;
+  throw new Refusal("conflict", `Event "${id}" was changed meanwhile: it is at revision ${revision}, and this answer is of revision ${seen}.`);
 }
 
 function requireKnown({ deployments, readings }: GatheredObservations, choices: ObservationChoices): void {

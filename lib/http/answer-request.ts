@@ -1,15 +1,14 @@
 import { randomUUID } from "node:crypto";
 import { readShape } from "#lib/contracts/api/input-issues.ts";
 import type { BodyShape, Operation, Role } from "#lib/contracts/api/operation.ts";
+import { REFUSAL_STATUS } from "#lib/contracts/api/refusal-status.ts";
 import { InputError } from "#lib/core/failures/input-error.ts";
-import { Refusal, type RefusalReason } from "#lib/core/failures/refusal.ts";
+import { Refusal } from "#lib/core/failures/refusal.ts";
 import { decodedPart } from "./address-part.ts";
 import { isOwnHost } from "./own-host.ts";
 import { parseJson, readText } from "./read-body.ts";
 import { runningProgram, type RunningProgram } from "./running-program.ts";
 import { whoAsks, type Person } from "./who-asks.ts";
-
-const STATUS = { "not-found": 404, conflict: 409, forbidden: 403, "too-large": 413, "too-many": 429 } as const satisfies Record<RefusalReason, number>;
 
 /** What a route is given: the request as its operation describes it, who asks, and what it is lent. */
 export interface Asked<Body, Query> {
@@ -38,15 +37,14 @@ type Handler = (request: Request, context: { params: Promise<Record<string, stri
  * is asked must have its shape; failures become statuses. A fault of the program shows its reader a number to ask by
  * and nothing of its inside.
  */
-export function route<Body, Query>(operation: Operation<Body, Query>, work: (asked: Asked<Body, Query>) => Promise<Reply>): Handler {
+export function route<Body, Query>(operation: Operation<Body, Query>, work: (asked: Asked<Body, Query>) => Promise<Reply>, asks: () => Person = whoAsks): Handler {
   return async (request, context) => {
     try {
       requireOwnHost(request);
       if (request.method !== "GET" && request.method !== "HEAD") requireOwnPage(request, operation.body);
-      const person = whoAsks();
+      const person = asks();
       requireRole(person, operation.role);
-      const { searchParams } = new URL(request.url);
-      const query = readShape(operation.query, Object.fromEntries(searchParams));
+      const query = readShape(operation.query, queryOf(request));
       const params = decoded(await context.params);
       const body = await readBody(request, operation);
       const doing = { actor: person.name, savedEpochSeconds: Date.now() / 1000 };
@@ -58,6 +56,11 @@ export function route<Body, Query>(operation: Operation<Body, Query>, work: (ask
 }
 
 const HEADERS = { "cache-control": "no-store" };
+
+/** For addresses that no operation has: in JSON like every other refusal, and not a page. */
+export function nothingHere(request: Request): Response {
+  return failed(new Refusal("not-found", `The programming interface has nothing at ${new URL(request.url).pathname}.`));
+}
 
 function respond(answer: Operation<unknown, unknown>["answer"], { body, location, fileName }: Reply): Response {
   const headers = {
@@ -74,6 +77,15 @@ async function readBody<Body, Query>(request: Request, { body, mostBytes }: Oper
   if (body === null) return null as Body;
   const text = await readText(request, mostBytes);
   return body.type === "text/csv" ? (text as Body) : readShape(body.schema, parseJson(text));
+}
+
+/** @throws InputError `repeated` for what stands in the address twice: one of them would count for nothing. */
+function queryOf(request: Request): Record<string, string> {
+  const { searchParams } = new URL(request.url);
+  const names = [...searchParams.keys()];
+  const twice = [...new Set(names.filter((name, place) => names.indexOf(name) !== place))];
+  if (twice.length > 0) throw new InputError(twice.map((path) => ({ code: "repeated", path, message: `${path}: found more than one; wanted it once.` })));
+  return Object.fromEntries(searchParams);
 }
 
 /** Parts of an address that mean no text name nothing that could be found. */
@@ -111,7 +123,7 @@ function isNamed<Failure extends Error>(error: unknown, name: Failure["name"]): 
 function failed(error: unknown): Response {
   if (isNamed<InputError>(error, "InputError")) return Response.json({ issues: error.issues }, { status: 400, headers: HEADERS });
   if (isNamed<Refusal>(error, "Refusal")) {
-    return Response.json({ issues: [{ code: error.reason, path: "", message: error.message }] }, { status: STATUS[error.reason], headers: HEADERS });
+    return Response.json({ issues: [{ code: error.reason, path: "", message: error.message }] }, { status: REFUSAL_STATUS[error.reason], headers: HEADERS });
   }
   const reference = randomUUID().slice(0, 8);
   console.error(`Fault ${reference}:`, error); // eslint-disable-line no-console -- the server's own log

@@ -27,11 +27,30 @@ export async function readText(request: Request, mostBytes: number): Promise<str
   }
 }
 
-/** @throws InputError `not-json` where it is none. */
+/** No request has a fifth of it; a value nested without end would overflow whatever walks through it. */
+const MOST_DEPTH = 20;
+
+/** @throws InputError `not-json` where it is none, `too-deep` where lists and objects stand in one another without end. */
 export function parseJson(text: string): unknown {
+  const value = parsed(text);
+  if (isDeeperThan(MOST_DEPTH, value)) {
+    throw new InputError([{ code: "too-deep", path: "", message: `The request's body holds lists or objects more than ${MOST_DEPTH} deep in one another.` }]);
+  }
+  return value;
+}
+
+function parsed(text: string): unknown {
   try {
     return JSON.parse(text) as unknown;
   } catch {
     throw new InputError([{ code: "not-json", path: "", message: "The request's body is no JSON." }]);
   }
+}
+
+function isDeeperThan(most: number, value: unknown): boolean {
+  let level = [value];
+  for (let depth = 0; depth <= most && level.length > 0; depth += 1) {
+    level = level.flatMap((item): unknown[] => (typeof item === "object" && item !== null ? Object.values(item) : []));
+  }
+  return level.length > 0;
 }

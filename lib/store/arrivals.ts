@@ -8,6 +8,7 @@ import { changeEvent, nextOrdinal } from "./event-change.ts";
 import type { Prisma, PrismaClient } from "./generated/client.ts";
 import { estimateRow, readingRow } from "./observation-rows.ts";
 import { estimateFromRow, readingFromRow } from "./observations-from-rows.ts";
+import { moveTo } from "./move-arrival.ts";
 import { requireRevision } from "./stale.ts";
 
 type Transaction = Prisma.TransactionClient;
@@ -75,10 +76,8 @@ export async function moveArrival(transaction: Transaction, move: { id: number; 
   const row = await requireArrival(transaction, id, startedFrom);
   if (row.eventId === eventId) return row.revision;
   const ordinal = eventId === null ? null : await nextOrdinal(transaction, eventId);
-  const revision = row.revision + 1;
-  await transaction.arrival.update({ where: { id }, data: { eventId, ordinal, revision } });
+  const revision = await moveTo(transaction, row, { eventId, ordinal }, doing);
   const detail = { arrival: id, station: row.stationId, from: row.eventId, to: eventId };
-  await addToAudit(transaction, doing, { action: "arrival moved", subject: `arrival ${id}`, detail: { ...detail, revision } });
   for (const event of [row.eventId, eventId]) {
     if (event !== null) await changeEvent(transaction, { id: event, action: "arrival moved", detail }, doing);
   }

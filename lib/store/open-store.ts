@@ -41,7 +41,7 @@ export async function openStore(place: Place): Promise<Store> {
   const reader = await openClient(databasePath);
   const gate = createWriteGate();
   const write: Store["write"] = (work) =>
-    gate.through(() => writer.$transaction(work, { maxWait: 10_000, timeout: 120_000 }));
+    gate.through(() => writer.$transaction(work));
 
   return {
     write,

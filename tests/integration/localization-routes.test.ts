@@ -52,7 +52,7 @@ describe("the localizations of an event over HTTP", () => {
     ["stations that are no list", { startedFrom: 0, leftOut: "wic" }, "leftOut"],
     ["a station of another event", { startedFrom: 0, leftOut: ["nowhere"] }, "leftOut[0]"],
     ["a reason as long as a book", { startedFrom: 0, reason: "x".repeat(3000) }, "reason"],
-    ["a setting out of range", { startedFrom: 0, settings: { spread: { timeHours: -1 } } }, "spread.timeHours"],
+    ["a setting out of range", { startedFrom: 0, settings: { spread: { timeHours: -1 } } }, "settings.spread.timeHours"],
     ["a key that is none", { startedFrom: 0, force: true }, ""],
     ["a list", [], ""],
     ["no JSON", "{", ""],

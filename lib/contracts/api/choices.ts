@@ -1,8 +1,8 @@
 import * as z from "zod/mini";
 import type { ObservationChoices } from "#lib/core/arrival/observation-choices.ts";
 import { isoTime } from "../iso-time.ts";
-import { countField, distinctField, epochOf, listField, numberField, textField, timeField } from "./fields.ts";
-import { frequencyField, kindField, measuredReading, oneOf, periodField, timeSigmaField } from "./readings.ts";
+import { countField, distinctField, epochOf, listField, textField, timeField } from "./fields.ts";
+import { frequencyField, frequencySigmaField, kindField, measuredReading, oneOf, periodField, timeSigmaField } from "./readings.ts";
 
 const stationField = textField({ wanted: "the id of a station of this event", least: 1, most: 200 });
 const readingField = countField({ wanted: "the id of a reading of this event", from: 1 });
@@ -16,15 +16,15 @@ const addedShape = z.strictObject({
   time: timeField,
   frequencyHz: frequencyField,
   timeSigmaSeconds: z.optional(timeSigmaField),
-  frequencySigmaHz: z.optional(numberField({ wanted: "a number of hertz from 0 to 2", from: 0, to: 2 })),
+  frequencySigmaHz: z.optional(frequencySigmaField),
   kind: z.optional(kindField),
 });
 
 /** What an analyst chose to use of an event's observations; everything that is not named stays as it was brought in. */
 export const choicesFields = {
-  leftOut: z.optional(distinctField(stationField, "a list of station ids")),
-  dropped: z.optional(distinctField(readingField, "a list of readings' ids")),
-  moved: z.optional(listField(movedShape, { wanted: "a list of readings with their new time and period", most: 10_000 })),
+  leftOut: z.optional(distinctField(stationField, { wanted: "a list of station ids" })),
+  dropped: z.optional(distinctField(readingField, { wanted: "a list of readings' ids" })),
+  moved: z.optional(distinctField(movedShape, { wanted: "a list of readings with their new time and period", by: "reading" })),
   added: z.optional(listField(addedShape, { wanted: "a list of readings", most: 10_000 })),
   useSuspect: z.optional(z.boolean("true or false")),
 };

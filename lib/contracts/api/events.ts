@@ -6,22 +6,22 @@ import { arrivalShape, idField, NOTE } from "./arrivals.ts";
 import { countField, distinctField, revisionField, textField, timeField } from "./fields.ts";
 
 const titleField = textField({ wanted: "a title of 1 to 200 letters", least: 1, most: 200 });
-const arrivalIds = distinctField(countField({ wanted: "the id of an arrival that is stored", from: 1 }), "a list of one arrival's id or more", 1);
+const arrivalField = countField({ wanted: "the id of an arrival that is stored", from: 1 });
+const MOST_ARRIVALS = 1000;
+const ID_WANTED = "an id of 1 to 80 small letters, digits and hyphens";
 
 export const newEventShape = z.strictObject({
-  id: z.optional(
-    z.string("an id of 1 to 80 small letters, digits and hyphens").check(z.regex(/^[a-z0-9][a-z0-9-]{0,79}$/, "an id of 1 to 80 small letters, digits and hyphens")),
-  ),
+  id: z.optional(z.string(ID_WANTED).check(z.regex(/^[a-z0-9][a-z0-9-]{0,79}$/, ID_WANTED)).register(z.globalRegistry, { description: ID_WANTED })),
   title: titleField,
   note: z.optional(textField(NOTE)),
-  arrivals: z.optional(distinctField(countField({ wanted: "the id of an arrival that is stored", from: 1 }), "a list of arrivals' ids")),
+  arrivals: z.optional(distinctField(arrivalField, { wanted: `a list of ${MOST_ARRIVALS} arrivals' ids at most`, most: MOST_ARRIVALS })),
 });
 
 export const describedEventShape = z.strictObject({ revision: revisionField, title: titleField, note: textField(NOTE) });
 
 export const mergeShape = z.strictObject({ revision: revisionField, from: idField("the event whose arrivals are taken"), fromRevision: revisionField });
 
-export const splitShape = z.strictObject({ revision: revisionField, arrivals: arrivalIds, title: titleField, note: z.optional(textField(NOTE)) });
+export const splitShape = z.strictObject({ revision: revisionField, arrivals: distinctField(arrivalField, { wanted: `a list of 1 to ${MOST_ARRIVALS} arrivals' ids`, least: 1, most: MOST_ARRIVALS }), title: titleField, note: z.optional(textField(NOTE)) });
 
 export const sourceShape = z.nullable(z.object({ latitude: z.number(), longitude: z.number(), time: timeField }));
 export const outcomeField = z.enum(["located", "several", "ring-only", "too-few", "no-agreement"]);

@@ -4,6 +4,8 @@ import { InputError, type InputIssue } from "#lib/core/failures/input-error.ts";
 /** What zod says where a shape brings no words of its own. */
 const UNSAID = "Invalid input";
 const FOUND_CHARACTERS_SHOWN = 60;
+/** As many as of a file: more would hide the first ones, which usually explain the rest. */
+const ISSUES_SHOWN = 50;
 
 /**
  * A request held to its shape. The shapes of `fields.ts` bring the words that follow "wanted".
@@ -14,7 +16,11 @@ export function readShape<Shape>(schema: z.$ZodType<Shape>, value: unknown): Sha
   const parsed = schema["~standard"].validate(value);
   if (parsed instanceof Promise) throw new Error("Shapes of requests are read at once.");
   if (parsed.issues === undefined) return parsed.value;
-  throw new InputError((parsed.issues as unknown as z.$ZodIssue[]).map((issue) => inputIssue(issue, value)));
+  const issues = parsed.issues as unknown as z.$ZodIssue[];
+  const shown = issues.slice(0, ISSUES_SHOWN).map((issue) => inputIssue(issue, value));
+  const more = issues.length - shown.length;
+  const rest = { code: "more-problems", path: "", message: `The request: ${more} more problems like these are not shown (${issues.length} in all).` };
+  throw new InputError(more === 0 ? shown : [...shown, rest]);
 }
 
 function inputIssue(issue: z.$ZodIssue, value: unknown): InputIssue {
@@ -25,9 +31,14 @@ function inputIssue(issue: z.$ZodIssue, value: unknown): InputIssue {
     return { code: "unknown-key", path, message: `${place}: found ${keys}; wanted only what it takes.` };
   }
   const found = valueAt(value, issue.path);
-  const text = found === undefined ? "nothing" : JSON.stringify(found);
-  const short = text.length > FOUND_CHARACTERS_SHOWN ? `${text.slice(0, FOUND_CHARACTERS_SHOWN)}...` : text;
-  return { code: issue.code, path, message: `${place}: found ${short}; wanted ${wantedOf(issue)}.` };
+  return { code: issue.code, path, message: `${place}: found ${shortly(found)}; wanted ${wantedOf(issue)}.` };
+}
+
+function shortly(found: unknown): string {
+  if (found === undefined) return "nothing";
+  // 1e400 is a number to JSON and beyond all numbers here; written as JSON again it would be null.
+  const text = typeof found === "number" ? String(found) : JSON.stringify(found);
+  return text.length > FOUND_CHARACTERS_SHOWN ? `${text.slice(0, FOUND_CHARACTERS_SHOWN)}...` : text;
 }
 
 /** `leftOut[2].time` */
@@ -37,7 +48,7 @@ export function addressOf(path: readonly PropertyKey[]): string {
 
 function wantedOf(issue: z.$ZodIssue): string {
   if (issue.message !== UNSAID) return issue.message;
-  if (issue.code === "invalid_type") return issue.expected === "array" ? "a list" : `a value of the kind ${issue.expected}`;
+  if (issue.code === "invalid_type") return { array: "a list", object: "an object" }[String(issue.expected)] ?? `a value of the kind ${issue.expected}`;
   return "a value that this field takes";
 }
 

@@ -13,7 +13,7 @@ export const periodField = within("seconds", PERIOD_SECONDS);
 export const frequencyField = within("hertz", FREQUENCY_HZ);
 export const timeSigmaField = within("seconds", ARRIVAL_SIGMA_SECONDS);
 export const kindField = choiceField(["ridge", "timed"]);
-const frequencySigmaField = numberField({ wanted: `a number of hertz from 0 to ${FREQUENCY_HZ.most}`, from: 0, to: FREQUENCY_HZ.most });
+export const frequencySigmaField = numberField({ wanted: `a number of hertz from 0 to ${FREQUENCY_HZ.most}`, from: 0, to: FREQUENCY_HZ.most });
 const periodSigmaField = numberField({ wanted: `a number of seconds from 0 to ${PERIOD_SECONDS.most}`, from: 0, to: PERIOD_SECONDS.most });
 const qualityWanted = "a quality flag: 1 good, 2 not evaluated, 3 suspect, 4 bad, 9 missing";
 export const qualityField = z.literal(QUALITY_FLAGS, qualityWanted).register(z.globalRegistry, { description: qualityWanted });
@@ -54,7 +54,10 @@ const notBothSigmas = z.check<Measured>(({ value, issues }) => {
   issues.push({ code: "custom", path: ["frequencySigmaHz"], message: "periodSigmaSeconds or frequencySigmaHz, and not both", input: value });
 });
 
-
+const notSigmaAlone = z.check<{ readonly comesFromDegrees?: number | undefined; readonly comesFromSigmaDegrees?: number | undefined }>(({ value, issues }) => {
+  if (value.comesFromSigmaDegrees === undefined || value.comesFromDegrees !== undefined) return;
+  issues.push({ code: "custom", path: ["comesFromDegrees"], message: "a bearing, since comesFromSigmaDegrees gives its error", input: value });
+});
 
 /** A reading as somebody brings it in. */
 export const newReadingShape = z
@@ -64,7 +67,7 @@ export const newReadingShape = z
     comesFromSigmaDegrees: z.optional(numberField({ wanted: "a number of degrees above 0 and up to 180", above: 0, to: 180 })),
     quality: z.optional(qualityField),
   })
-  .check(oneOf("periodSeconds", "frequencyHz"), notBothSigmas);
+  .check(oneOf("periodSeconds", "frequencyHz"), notBothSigmas, notSigmaAlone);
 
 export type NewReading = z.infer<typeof newReadingShape>;
 

@@ -9,9 +9,10 @@ import { isUsable } from "./quality.ts";
  * analyst ruled out, with what the analyst moved and added. Added readings are numbered on from the station's own rows.
  */
 export function chosenObservations(gathered: GatheredObservations, choices: ObservationChoices): EventObservations {
-  const { leftOutStationIds, droppedReadingIds } = choices;
-  const stays = ({ stationId }: { readonly stationId: string }): boolean => !leftOutStationIds.includes(stationId);
-  const isUsed = (item: GatheredReading): boolean => stays(item) && isUsable(item.quality, choices) && !droppedReadingIds.includes(item.id);
+  const leftOut = new Set(choices.leftOutStationIds);
+  const dropped = new Set(choices.droppedReadingIds);
+  const stays = ({ stationId }: { readonly stationId: string }): boolean => !leftOut.has(stationId);
+  const isUsed = (item: GatheredReading): boolean => stays(item) && isUsable(item.quality, choices) && !dropped.has(item.id);
   const moved = new Map(choices.movedReadings.map((move) => [move.readingId, move]));
   const placed = ({ id, stationId, reading }: GatheredReading): StationReading => {
     const move = moved.get(id);

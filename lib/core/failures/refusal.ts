@@ -1,6 +1,6 @@
 export type RefusalReason = "not-found" | "conflict" | "forbidden" | "too-large" | "too-many";
 
-/** The request is well formed and still cannot be granted. One table in `lib/http` maps reasons to statuses. */
+/** The request is well formed and still cannot be granted. One table (lib/contracts/api/refusal-status.ts) maps reasons to statuses. */
 export class Refusal extends Error {
   readonly reason: RefusalReason;
 

@@ -1,4 +1,3 @@
-import { openEvent } from "#lib/application/open-event.ts";
 import { eventSummaryJson } from "#lib/contracts/api/events.ts";
 import { OPERATIONS } from "#lib/contracts/api/operations.ts";
 import { route } from "#lib/http/answer-request.ts";
@@ -11,6 +10,6 @@ export const GET = route(OPERATIONS.listEvents, async ({ program }) => {
 
 export const POST = route(OPERATIONS.openEvent, async ({ body, program, doing }) => {
   const { id = null, title, note = "", arrivals = [] } = body;
-  const made = await openEvent(program, { id, title, note, arrivalIds: arrivals }, doing);
+  const made = await program.events.openEvent({ id, title, note, arrivalIds: arrivals }, doing);
   return { body: await eventReply(program, made), location: `/api/v1/events/${made}` };
 });
