@@ -1,29 +1,48 @@
 import Link from "next/link";
 import type { EventSummary } from "#lib/application/ports.ts";
 import { runningProgram } from "#lib/http/running-program.ts";
+import { keptPlaceWords } from "#lib/presentation/kept-words.ts";
 import { counted } from "#lib/presentation/numbers-in-words.ts";
-import { dayWords } from "#lib/presentation/times.ts";
+import { dayWords, momentWords } from "#lib/presentation/times.ts";
+import { WaitingArrivals } from "./waiting-arrivals.tsx";
 import text from "./page-text.module.css";
 
+const MOST_WAITING = 200;
+
 export default async function EventsPage() {
-  const { events } = await runningProgram();
-  const list = await events.listEvents();
+  const { events, arrivals } = await runningProgram();
+  const [list, waiting] = await Promise.all([events.listEvents(), arrivals.listArrivals({ eventId: null, limit: MOST_WAITING })]);
   return (
     <div className={text.page}>
       <h1 className={text.title}>Events</h1>
       <p className={text.lead}>
-        {list.length === 0
-          ? "No event is stored yet. An event is one storm’s swell at all the stations that heard it."
-          : "One storm’s swell at all the stations that heard it, latest first."}
+        {list.length === 0 ? (
+          <>
+            No event is stored yet. An event is one storm’s swell at all the stations that heard it: begin with{" "}
+            <Link href="/readings">readings timed by hand</Link>, or bring in a folder of files as README.md says.
+          </>
+        ) : (
+          "One storm’s swell at all the stations that heard it, latest first."
+        )}
       </p>
+      {waiting.length > 0 && (
+        <WaitingArrivals
+          arrivals={waiting.map(({ id, revision, stationId, readings, actor, savedEpochSeconds }) => ({
+            id,
+            revision,
+            words: `${stationId}: ${readings.length === 0 ? "an estimate" : counted(readings.length, "reading")}, ${momentWords(savedEpochSeconds)}, ${actor}`,
+          }))}
+        />
+      )}
       {list.length > 0 && (
         <ol className={text.list}>
           {list.map((event) => (
             <li key={event.id} className={text.entry}>
               <h2 className={text.entryTitle}>
-                <Link href={`/events/${encodeURIComponent(event.id)}`}>{event.title}</Link>
+                <Link href={`/events/${encodeURIComponent(event.id)}`} prefetch={false}>{event.title}</Link>
               </h2>
               <p>{heardWords(event)}</p>
+              {event.latest !== null && <p>Kept answer {event.latest.number}: {keptPlaceWords(event.latest)}</p>}
               {event.note !== "" && <p className={text.note}>{event.note}</p>}
             </li>
           ))}

@@ -29,7 +29,7 @@ export interface Reply {
   readonly fileName?: string;
 }
 
-type Handler = (request: Request, context: { params: Promise<Record<string, string>> }) => Promise<Response>;
+type Handler = (request: Request, context: { params: Promise<Record<string, string> | undefined> }) => Promise<Response>;
 
 /**
  * The one door of the programming interface: every route is made here from its operation. The request must be meant for
@@ -88,8 +88,8 @@ function queryOf(request: Request): Record<string, string> {
   return Object.fromEntries(searchParams);
 }
 
-/** Parts of an address that mean no text name nothing that could be found. */
-function decoded(params: Readonly<Record<string, string>>): Record<string, string> {
+/** Parts of an address that mean no text name nothing that could be found. An address without parts comes with none. */
+function decoded(params: Readonly<Record<string, string>> = {}): Record<string, string> {
   return Object.fromEntries(Object.entries(params).map(([name, written]) => [name, decodedPart(written) ?? ""]));
 }
 

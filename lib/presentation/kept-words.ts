@@ -34,7 +34,7 @@ export function keptWords(kept: KeptAnswer, stations: readonly NumberedStation[]
   const { savedEpochSeconds, actor, choices } = kept;
   const readings = readingChoiceWords(choices);
   return {
-    what: whatWords(kept),
+    what: keptPlaceWords(kept),
     who: `${momentWords(savedEpochSeconds)}, ${actor}`,
     leftOut: leftOutWords(choices, stations),
     readings: readings === null ? null : `${startingSentence(readings)}.`,
@@ -48,7 +48,7 @@ export function leftOutWords({ leftOutStationIds }: ObservationChoices, stations
 }
 
 /** In the words of the answer's own headline. */
-function whatWords({ outcome, source }: KeptAnswer): string {
+export function keptPlaceWords({ outcome, source }: Pick<KeptAnswer, "outcome" | "source">): string {
   switch (outcome) {
     case "located":
       return source === null ? "No place yet" : placeWords(source);

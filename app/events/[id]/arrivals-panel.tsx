@@ -6,8 +6,9 @@ import { arrivalRows, type ArrivalInEvent, type ReadingOfArrival } from "#lib/pr
 import { DescribeForm } from "./describe-form.tsx";
 import { MergeForm } from "./merge-form.tsx";
 import { MoveForm } from "./move-form.tsx";
+import forms from "../../_components/forms.module.css";
 import styles from "./arrivals-panel.module.css";
-import { useEventList } from "./use-event-list.ts";
+import { useEventList } from "../../_components/use-event-list.ts";
 
 /** Asks the server for a change of the event, and shows the event as it is then. Gives whether it was made. */
 export type ChangeEvent = (path: string, method: string, body: unknown) => Promise<boolean>;
@@ -57,9 +58,9 @@ export function ArrivalsPanel(props: { event: EventInView; arrivals: readonly Ar
         )}
       </details>
       <div role="alert">
-        {report !== null && report.kind !== "done" && report.issues.map(({ message }) => <p key={message} className={styles.problem}>{message}</p>)}
+        {report !== null && report.kind !== "done" && report.issues.map(({ message }) => <p key={message} className={forms.problem}>{message}</p>)}
       </div>
-      {report?.kind === "overtaken" && <button type="button" className={styles.button} onClick={refresh}>Show the event as it is now</button>}
+      {report?.kind === "overtaken" && <button type="button" className={forms.button} onClick={refresh}>Show the event as it is now</button>}
     </section>
   );
 }

@@ -1,5 +1,5 @@
 import { useId, useState } from "react";
-import styles from "./arrivals-panel.module.css";
+import styles from "../../_components/forms.module.css";
 import type { EventInView } from "./arrivals-panel.tsx";
 
 /** Another title and note for the event. */

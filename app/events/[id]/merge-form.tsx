@@ -1,13 +1,13 @@
 import { useState } from "react";
-import styles from "./arrivals-panel.module.css";
+import styles from "../../_components/forms.module.css";
 import type { EventInView } from "./arrivals-panel.tsx";
-import { chosenEvent, EventSelect } from "./event-select.tsx";
-import type { OtherEvent } from "./use-event-list.ts";
+import { chosenEvent, EventSelect } from "../../_components/event-select.tsx";
+import type { EventList } from "../../_components/use-event-list.ts";
 
 /** Takes another event's arrivals into this one. */
-export function MergeForm({ event, others, onChange }: { event: EventInView; others: readonly OtherEvent[] | null; onChange: (body: unknown) => Promise<boolean> }) {
+export function MergeForm({ event, others, onChange }: { event: EventInView; others: EventList; onChange: (body: unknown) => Promise<boolean> }) {
   const [from, setFrom] = useState("");
-  const other = others?.find(({ id }) => id === chosenEvent(from));
+  const other = (typeof others === "string" ? [] : others).find(({ id }) => id === chosenEvent(from));
   return (
     <div className={styles.form}>
       <EventSelect label="Merge into this event all of" value={from} others={others} onChange={setFrom} />

@@ -1,13 +1,13 @@
 import { useId, useState } from "react";
 import { counted } from "#lib/presentation/numbers-in-words.ts";
 import type { ArrivalInEvent } from "#lib/presentation/arrival-rows.ts";
-import styles from "./arrivals-panel.module.css";
+import styles from "../../_components/forms.module.css";
 import type { ChangeEvent, EventInView } from "./arrivals-panel.tsx";
-import { chosenEvent, EventSelect } from "./event-select.tsx";
-import type { OtherEvent } from "./use-event-list.ts";
+import { chosenEvent, EventSelect } from "../../_components/event-select.tsx";
+import type { EventList } from "../../_components/use-event-list.ts";
 
 /** Moves the chosen arrivals to another event, to a new one, or out of all events. */
-export function MoveForm(props: { event: EventInView; arrivals: readonly ArrivalInEvent[]; isAll: boolean; others: readonly OtherEvent[] | null; onChange: ChangeEvent }) {
+export function MoveForm(props: { event: EventInView; arrivals: readonly ArrivalInEvent[]; isAll: boolean; others: EventList; onChange: ChangeEvent }) {
   const { event, arrivals, isAll, others, onChange } = props;
   const [to, setTo] = useState("");
   const [title, setTitle] = useState("");
