@@ -4,7 +4,6 @@ import type { CellPlace } from "./cells.ts";
 
 const WANTED = "legs seaward from the gauge as length_km:depth_m, separated by spaces, such as 12:40 35:90";
 const LEG = /^(\d+(?:\.\d+)?):(\d+(?:\.\d+)?)$/;
-const METRES_PER_KM = 1000;
 
 /** The legs of the way over the shelf; none where the cell is empty. */
 export function readShelf(place: CellPlace): readonly ShelfLeg[] {
@@ -19,6 +18,7 @@ export function readShelf(place: CellPlace): readonly ShelfLeg[] {
 
 function readLeg(text: string): ShelfLeg | null {
   const [, length = "", depth = ""] = LEG.exec(text) ?? [];
-  const leg = { lengthMetres: Number(length) * METRES_PER_KM, depthMetres: Number(depth) };
+  // The point is moved in the text: a product with 1000 would miss the length by its last binary digit now and then.
+  const leg = { lengthMetres: Number(`${length}e3`), depthMetres: Number(depth) };
   return leg.lengthMetres > 0 && leg.depthMetres > 0 && Number.isFinite(leg.lengthMetres + leg.depthMetres) ? leg : null;
 }

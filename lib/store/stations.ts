@@ -3,17 +3,18 @@ import type { Doing, StationToSave, StoredStation } from "#lib/application/ports
 import type { StationDescription } from "#lib/core/arrival/station-description.ts";
 import { Refusal } from "#lib/core/failures/refusal.ts";
 import { addToAudit } from "./audit.ts";
-import type { Prisma, PrismaClient } from "./generated/client.ts";
+import { Prisma, type PrismaClient } from "./generated/client.ts";
 import { deploymentRow } from "./observation-rows.ts";
 import { requireRevision } from "./stale.ts";
-import { descriptionFromRow, WHOLE_STATION } from "./station-from-row.ts";
+import { descriptionFromRow, inChunks, loadWholeStations, WHOLE_STATION } from "./station-from-row.ts";
 
 type Transaction = Prisma.TransactionClient;
 
 export async function listStations(reader: PrismaClient, only?: string): Promise<StoredStation[]> {
   return reader.$transaction(async (snapshot) => {
-    const where = only === undefined ? {} : { id: only };
-    const rows = await snapshot.station.findMany({ where, orderBy: { id: "asc" }, include: { ...WHOLE_STATION, _count: { select: { arrivals: true } } } });
+    const rows = await loadWholeStations(snapshot, only === undefined ? null : [only]);
+    const counts = await snapshot.arrival.groupBy({ by: ["stationId"], _count: true, ...(only === undefined ? {} : { where: { stationId: only } }) });
+    const countOf = new Map(counts.map(({ stationId, _count }) => [stationId, _count]));
     const last = await snapshot.$queryRaw<{ stationId: string; last: number }[]>`
       SELECT a.station_id AS stationId, MAX(r.arrival_epoch_seconds) AS last
       FROM arrivals a JOIN readings r ON r.arrival_id = a.id GROUP BY a.station_id`;
@@ -21,67 +22,107 @@ export async function listStations(reader: PrismaClient, only?: string): Promise
     return rows.map((row) => ({
       ...descriptionFromRow(row),
       revision: row.revision,
-      arrivalCount: row._count.arrivals,
+      arrivalCount: countOf.get(row.id) ?? 0,
       lastReadingEpochSeconds: lastOf.get(row.id) ?? null,
     }));
   });
 }
 
-/** Saves within a transaction that the caller has opened; see `StationStore.saveStations`. */
-export async function saveStations(transaction: Transaction, stations: readonly StationToSave[], doing: Doing): Promise<void> {
-  const before = new Map<string, { description: StationDescription; revision: number }>();
-  for (const { description, startedFrom } of stations) {
-    const row = await transaction.station.findUnique({ where: { id: description.id }, include: WHOLE_STATION });
-    if (row === null && startedFrom !== 0) throw new Refusal("conflict", `Station "${description.id}" is not stored any more.`);
-    if (row !== null && startedFrom === 0) throw new Refusal("conflict", `Station "${description.id}" is stored already.`);
-    if (row === null) continue;
-    requireRevision(`Station "${description.id}"`, row, startedFrom);
-    before.set(description.id, { description: descriptionFromRow(row), revision: row.revision });
-  }
-  await makeGroups(transaction, stations);
-  // All of them first, so that an alias may pass from one of these stations to another.
-  await transaction.stationAlias.deleteMany({ where: { stationId: { in: [...before.keys()] } } });
-  for (const { description } of stations) await saveStation(transaction, description, before.get(description.id) ?? null, doing);
+interface Before {
+  readonly description: StationDescription;
+  readonly revision: number;
 }
 
-async function makeGroups(transaction: Transaction, stations: readonly StationToSave[]): Promise<void> {
+/**
+ * Saves within a transaction that the caller has opened; see `StationStore.saveStations`. Rows of one table are written
+ * together: statement by statement, thousands of stations would hold up everybody else's writes.
+ */
+export async function saveStations(transaction: Transaction, stations: readonly StationToSave[], doing: Doing): Promise<void> {
+  const before = await loadBefore(transaction, stations);
+  for (const { description: { id }, startedFrom } of stations) {
+    const stored = before.get(id);
+    if (stored === undefined && startedFrom !== 0) throw new Refusal("conflict", `Station "${id}" is not stored any more.`);
+    if (stored !== undefined && startedFrom === 0) throw new Refusal("conflict", `Station "${id}" is stored already.`);
+    if (stored !== undefined) requireRevision(`Station "${id}"`, stored, startedFrom);
+  }
+  const descriptions = stations.map(({ description }) => description);
+  await makeGroups(transaction, descriptions);
+  await saveOwnRows(transaction, descriptions, before);
+  await saveAliases(transaction, descriptions, before);
+  await saveDeployments(transaction, descriptions.filter(({ id, deployments }) => !isDeepStrictEqual(before.get(id)?.description.deployments, deployments)));
+  await saveClockCorrections(transaction, descriptions, before);
+  await inChunks(descriptions.map((after) => auditRow(after, before.get(after.id) ?? null, doing)), (data) => transaction.auditEntry.createMany({ data }));
+}
+
+async function loadBefore(transaction: Transaction, stations: readonly StationToSave[]): Promise<Map<string, Before>> {
+  const rows = await loadWholeStations(transaction, stations.map(({ description }) => description.id));
+  return new Map(rows.map((row) => [row.id, { description: descriptionFromRow(row), revision: row.revision }]));
+}
+
+async function makeGroups(transaction: Transaction, descriptions: readonly StationDescription[]): Promise<void> {
   const known = new Set((await transaction.group.findMany()).map(({ id }) => id));
-  const named = new Set(stations.map(({ description }) => description.groupId));
+  const named = new Set(descriptions.map(({ groupId }) => groupId));
   await transaction.group.createMany({ data: [...named].filter((id) => !known.has(id)).map((id) => ({ id, name: id })) });
 }
 
-async function saveStation(transaction: Transaction, description: StationDescription, before: { description: StationDescription; revision: number } | null, doing: Doing): Promise<void> {
-  const { id, aliases, deployments, clockCorrections, ...plain } = description;
-  const revision = (before?.revision ?? 0) + 1;
-  if (before === null) await transaction.station.create({ data: { id, ...plain } });
-  else await transaction.station.update({ where: { id }, data: { ...plain, revision } });
+/** New rows and changed ones in one statement: the client's own way to change rows takes a statement for each. */
+async function saveOwnRows(transaction: Transaction, descriptions: readonly StationDescription[], before: ReadonlyMap<string, Before>): Promise<void> {
+  await inChunks(descriptions, (some) => {
+    const rows = some.map(({ id, groupId, licence, attribution, contact, doi, visibility, embargoUntilEpochSeconds, note }) => {
+      const revision = (before.get(id)?.revision ?? 0) + 1;
+      return Prisma.sql`(${id}, ${revision}, ${groupId}, ${licence}, ${attribution}, ${contact}, ${doi}, ${visibility}, ${embargoUntilEpochSeconds}, ${note})`;
+    });
+    return transaction.$executeRaw`
+      INSERT INTO stations (id, revision, group_id, licence, attribution, contact, doi, visibility, embargo_until_epoch_seconds, note)
+      VALUES ${Prisma.join(rows)}
+      ON CONFLICT (id) DO UPDATE SET revision = excluded.revision, group_id = excluded.group_id, licence = excluded.licence,
+        attribution = excluded.attribution, contact = excluded.contact, doi = excluded.doi, visibility = excluded.visibility,
+        embargo_until_epoch_seconds = excluded.embargo_until_epoch_seconds, note = excluded.note`;
+  });
+}
 
-  await requireFreeAliases(transaction, description);
-  await transaction.stationAlias.createMany({ data: aliases.map((alias, ordinal) => ({ stationId: id, ordinal, ...alias })) });
-  if (!isDeepStrictEqual(before?.description.deployments, deployments)) {
-    await transaction.deployment.deleteMany({ where: { stationId: id } });
-    await createDeployments(transaction, deployments);
+/** Those of all these stations go first, so that an alias may pass from one of them to another. */
+async function saveAliases(transaction: Transaction, descriptions: readonly StationDescription[], before: ReadonlyMap<string, Before>): Promise<void> {
+  await inChunks([...before.keys()], (ids) => transaction.stationAlias.deleteMany({ where: { stationId: { in: ids } } }));
+  const rows = descriptions.flatMap(({ id, aliases }) => aliases.map((alias, ordinal) => ({ stationId: id, ordinal, ...alias })));
+  const ownerOf = new Map<string, string>();
+  const nameOf = ({ scheme, value }: { scheme: string; value: string }): string => `${scheme}:${value}`;
+  await inChunks([...new Set(rows.map(({ value }) => value))], async (values) => {
+    for (const taken of await transaction.stationAlias.findMany({ where: { value: { in: values } } })) ownerOf.set(nameOf(taken), taken.stationId);
+  });
+  for (const row of rows) {
+    const owner = ownerOf.get(nameOf(row));
+    if (owner !== undefined) throw new Refusal("conflict", `The alias ${nameOf(row)} is station "${owner}"'s, and so cannot be "${row.stationId}"'s.`);
+    ownerOf.set(nameOf(row), row.stationId);
   }
-  await transaction.clockCorrection.deleteMany({ where: { stationId: id } });
-  await transaction.clockCorrection.createMany({ data: clockCorrections.map((correction, ordinal) => ({ ...correction, stationId: id, ordinal })) });
+  await inChunks(rows, (data) => transaction.stationAlias.createMany({ data }));
+}
+
+async function saveDeployments(transaction: Transaction, descriptions: readonly StationDescription[]): Promise<void> {
+  await inChunks(descriptions.map(({ id }) => id), (ids) => transaction.deployment.deleteMany({ where: { stationId: { in: ids } } }));
+  const parts = descriptions.flatMap(({ deployments }) => deployments.map(deploymentRow)).map(({ shelf, ...row }) => ({ shelf, row }));
+  await inChunks(parts.map(({ row }) => row), (data) => transaction.deployment.createMany({ data }));
+  const keyOf = ({ stationId, ordinal }: { stationId: string; ordinal: number }): string => JSON.stringify([stationId, ordinal]);
+  const withShelf = parts.filter(({ shelf }) => shelf.length > 0);
+  const idOf = new Map<string, number>();
+  await inChunks([...new Set(withShelf.map(({ row }) => row.stationId))], async (ids) => {
+    const stored = await transaction.deployment.findMany({ where: { stationId: { in: ids } }, select: { id: true, stationId: true, ordinal: true } });
+    for (const row of stored) idOf.set(keyOf(row), row.id);
+  });
+  const legs = withShelf.flatMap(({ row, shelf }) => shelf.map((leg, ordinal) => ({ deploymentId: idOf.get(keyOf(row)) ?? 0, ordinal, ...leg })));
+  await inChunks(legs, (data) => transaction.shelfLeg.createMany({ data }));
+}
+
+async function saveClockCorrections(transaction: Transaction, descriptions: readonly StationDescription[], before: ReadonlyMap<string, Before>): Promise<void> {
+  await inChunks([...before.keys()], (ids) => transaction.clockCorrection.deleteMany({ where: { stationId: { in: ids } } }));
+  const rows = descriptions.flatMap(({ id, clockCorrections }) => clockCorrections.map((correction, ordinal) => ({ ...correction, stationId: id, ordinal })));
+  await inChunks(rows, (data) => transaction.clockCorrection.createMany({ data }));
+}
+
+function auditRow(after: StationDescription, before: Before | null, { actor, savedEpochSeconds }: Doing) {
+  const detail = { revision: (before?.revision ?? 0) + 1, before: before?.description ?? null, after };
   const action = before === null ? "station made" : "station changed";
-  await addToAudit(transaction, doing, { action, subject: `station ${id}`, detail: { revision, before: before?.description ?? null, after: description } });
-}
-
-export async function createDeployments(transaction: Transaction, deployments: StationDescription["deployments"]): Promise<void> {
-  for (const [ordinal, deployment] of deployments.entries()) {
-    const { shelf, ...row } = deploymentRow(deployment, ordinal);
-    // Legs apart, and only where there are any: a create that nests them costs four statements.
-    const { id } = await transaction.deployment.create({ data: row });
-    if (shelf.length > 0) await transaction.shelfLeg.createMany({ data: shelf.map((leg, place) => ({ deploymentId: id, ordinal: place, ...leg })) });
-  }
-}
-
-async function requireFreeAliases(transaction: Transaction, { id, aliases }: StationDescription): Promise<void> {
-  if (aliases.length === 0) return;
-  const taken = await transaction.stationAlias.findFirst({ where: { OR: aliases.map(({ scheme, value }) => ({ scheme, value })), NOT: { stationId: id } } });
-  if (taken === null) return;
-  throw new Refusal("conflict", `The alias ${taken.scheme}:${taken.value} is station "${taken.stationId}"'s, and so cannot be "${id}"'s.`);
+  return { atEpochSeconds: savedEpochSeconds, actor, action, subject: `station ${after.id}`, detail: JSON.stringify(detail) };
 }
 
 export async function removeStation(transaction: Transaction, id: string, startedFrom: number, doing: Doing): Promise<void> {

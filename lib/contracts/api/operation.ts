@@ -1,4 +1,4 @@
-import type * as z from "zod/mini";
+import * as z from "zod/mini";
 import type { RefusalReason } from "#lib/core/failures/refusal.ts";
 
 /** Who may do what: readers see, contributors send their stations' data, analysts work on events, reviewers accept, keepers run the server. */
@@ -30,3 +30,28 @@ export interface Operation<Body, Query> {
 
 /** Choices and hand-made readings, not records. */
 export const MOST_JSON_BYTES = 1_000_000;
+
+const NO_QUERY = z.strictObject({});
+
+/** An operation that gives JSON, from its shapes. */
+export function operation<Body = null, Query = Record<string, never>>(parts: {
+  id: string;
+  method: Operation<Body, Query>["method"];
+  path: Operation<Body, Query>["path"];
+  role: Role;
+  summary: string;
+  query?: z.ZodMiniType<Query>;
+  body?: z.ZodMiniType<Body>;
+  status?: 200 | 201;
+  gives: z.ZodMiniType;
+  refusals?: readonly RefusalReason[];
+}): Operation<Body, Query> {
+  const { id, method, path, role, summary, query, body, status = 200, gives, refusals = [] } = parts;
+  const bodyShape: BodyShape<Body> = body === undefined ? null : { type: "application/json", schema: body };
+  return {
+    ...{ id, method, path, role, summary, refusals, mostBytes: MOST_JSON_BYTES },
+    query: query ?? (NO_QUERY as unknown as z.ZodMiniType<Query>),
+    body: bodyShape,
+    answer: { status, type: "application/json", schema: gives },
+  };
+}

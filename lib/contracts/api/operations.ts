@@ -1,36 +1,12 @@
 import * as z from "zod/mini";
-import type { RefusalReason } from "#lib/core/failures/refusal.ts";
 import { arrivalShape, movedArrivalShape, newArrivalShape } from "./arrivals.ts";
 import { describedEventShape, eventShape, eventSummaryShape, mergeShape, newEventShape, splitShape } from "./events.ts";
 import { choiceField, revisionField, timeField } from "./fields.ts";
 import { changesShape, localizationShape, localizationSummaryShape, newLocalizationShape } from "./localizations.ts";
-import { MOST_JSON_BYTES, type BodyShape, type Operation, type Role } from "./operation.ts";
+import { operation } from "./operation.ts";
 import { qualityField, readingShape } from "./readings.ts";
+import { STATION_OPERATIONS } from "./station-operations.ts";
 
-/** An operation that gives JSON, from its shapes. */
-function operation<Body = null, Query = Record<string, never>>(parts: {
-  id: string;
-  method: Operation<Body, Query>["method"];
-  path: Operation<Body, Query>["path"];
-  role: Role;
-  summary: string;
-  query?: z.ZodMiniType<Query>;
-  body?: z.ZodMiniType<Body>;
-  status?: 200 | 201;
-  gives: z.ZodMiniType;
-  refusals?: readonly RefusalReason[];
-}): Operation<Body, Query> {
-  const { id, method, path, role, summary, query, body, status = 200, gives, refusals = [] } = parts;
-  const bodyShape: BodyShape<Body> = body === undefined ? null : { type: "application/json", schema: body };
-  return {
-    ...{ id, method, path, role, summary, refusals, mostBytes: MOST_JSON_BYTES },
-    query: query ?? (NO_QUERY as unknown as z.ZodMiniType<Query>),
-    body: bodyShape,
-    answer: { status, type: "application/json", schema: gives },
-  };
-}
-
-const NO_QUERY = z.strictObject({});
 const LIMIT_WANTED = "a whole number from 1 to 99999";
 const limitField = z.optional(z.string().check(z.regex(/^[1-9]\d{0,4}$/, LIMIT_WANTED)).register(z.globalRegistry, { description: LIMIT_WANTED }));
 const stationFilter = z.optional(z.string().register(z.globalRegistry, { description: "a station's id" }));
@@ -43,6 +19,7 @@ const CHANGED = z.object({ revision: revisionField });
 const EDIT = ["not-found", "conflict"] as const;
 
 export const OPERATIONS = {
+  ...STATION_OPERATIONS,
   describeInterface: operation({
     id: "describeInterface", method: "GET", path: "/api/v1/openapi.json", role: "reader",
     summary: "This description of the interface: OpenAPI 3.1, as JSON.",
