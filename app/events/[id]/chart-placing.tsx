@@ -1,7 +1,7 @@
 import { DomEvent, type LatLngBounds, type Map as LeafletMap } from "leaflet";
 import { useCallback, useEffect, useRef } from "react";
 import { useMap, useMapEvents } from "react-leaflet";
-import styles from "./chart.module.css";
+import styles from "../../_components/chart/base.module.css";
 import type { ChangeView } from "./use-view.ts";
 import { placeText, type ChartPlace } from "./view.ts";
 

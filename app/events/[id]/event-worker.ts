@@ -1,10 +1,10 @@
-import type { GeometryCollection, Topology } from "topojson-specification";
 import { bandOverlaps } from "#lib/chart/band-overlaps.ts";
 import { baseMap } from "#lib/chart/base-map.ts";
 import { eventLayers } from "#lib/chart/event-layers.ts";
 import { buildLandMask } from "#lib/core/geodesy/land-mask.ts";
 import type { SightTable } from "#lib/core/geodesy/sight-table.ts";
 import { solveGathered } from "#lib/core/source/solve-gathered.ts";
+import { fetchLand } from "../../_components/chart/fetch-land.ts";
 import { sightOfStations } from "./sight-of-stations.ts";
 import type { Drawn, WorkerReport, WorkerRequest } from "./worker-messages.ts";
 
@@ -61,13 +61,6 @@ async function openEvent(opening: Opening): Promise<(question: Question) => void
       reportFailure(question.ask, error);
     }
   };
-}
-
-/** Fetched once and apart from the page's own scripts: land is as large as all of them. */
-async function fetchLand(): Promise<Topology<{ land: GeometryCollection }>> {
-  const response = await fetch(new URL("world-atlas/land-50m.json", import.meta.url));
-  if (!response.ok) throw new Error(`The base map could not be fetched (status ${response.status}).`);
-  return (await response.json()) as Topology<{ land: GeometryCollection }>;
 }
 
 function reportFailure(ask: number, error: unknown): void {

@@ -1,8 +1,5 @@
-/** The chart's layers from the sea up, with the height at which each is painted; station marks lie above them all. */
+/** The chart's layers from the coast up, with the height at which each is painted; station marks lie above them all. */
 export const PANES = {
-  graticule: 205,
-  land: 210,
-  coast: 220,
   bands: 300,
   overlap: 310,
   rings: 320,

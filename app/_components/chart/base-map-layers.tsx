@@ -4,8 +4,8 @@ import type { BaseMap } from "#lib/chart/base-map.ts";
 import type { ChartLine } from "#lib/chart/chart-point.ts";
 import { areaCopies, lineCopies } from "#lib/chart/copies.ts";
 import { EDGE_LATITUDE_DEGREES } from "#lib/chart/cut-at-edges.ts";
-import styles from "./chart.module.css";
-import { PANES } from "./panes.ts";
+import styles from "./base.module.css";
+import { BASE_PANES } from "./base-panes.ts";
 
 const STEP_DEGREES = 30;
 
@@ -13,15 +13,15 @@ const STEP_DEGREES = 30;
 export const BaseMapLayers = memo(function BaseMapLayers({ baseMap, middle }: { baseMap: BaseMap | null; middle: number }) {
   return (
     <>
-      <Pane name="graticule" style={{ zIndex: PANES.graticule }}>
+      <Pane name="graticule" style={{ zIndex: BASE_PANES.graticule }}>
         <Polyline positions={graticule(middle)} className={styles.graticule} interactive={false} />
       </Pane>
       {baseMap !== null && (
         <>
-          <Pane name="land" style={{ zIndex: PANES.land }}>
+          <Pane name="land" style={{ zIndex: BASE_PANES.land }}>
             <Polygon positions={areaCopies(baseMap.land)} className={styles.land} interactive={false} />
           </Pane>
-          <Pane name="coast" style={{ zIndex: PANES.coast }}>
+          <Pane name="coast" style={{ zIndex: BASE_PANES.coast }}>
             <Polyline positions={lineCopies(baseMap.coast)} className={styles.coast} interactive={false} />
           </Pane>
         </>

@@ -1,7 +1,7 @@
 import { useState } from "react";
 import { useMap, useMapEvents } from "react-leaflet";
 import { distanceFigure, type DistanceUnit } from "#lib/presentation/distances.ts";
-import styles from "./chart.module.css";
+import styles from "./base.module.css";
 
 const LONGEST_PIXELS = 120;
 const METRES_IN = { km: 1000, nmi: 1852 } as const satisfies Record<DistanceUnit, number>;
