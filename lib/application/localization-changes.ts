@@ -1,4 +1,4 @@
-import type { EventObservations, StationReading } from "#lib/core/arrival/observations.ts";
+import type { EventObservations } from "#lib/core/arrival/observations.ts";
 import { geodesicInverse } from "#lib/core/geodesy/geodesic.ts";
 import type { LocateJson } from "#lib/contracts/locate-json.ts";
 import type { LocalizationChanges } from "#lib/contracts/api/localizations.ts";
@@ -44,18 +44,17 @@ function heard({ deployments, readings, estimates }: EventObservations): string[
   return [...new Set(deployments.map(({ stationId }) => stationId))].filter((id) => ids.has(id));
 }
 
-/** A reading that was moved, or whose time was corrected, is one that went out and one that came in: it counts as changed. */
+/** A reading is known by its row; one that was moved, or whose time was corrected, is changed. */
 function readingChanges(station: string, had: EventObservations, has: EventObservations): LocalizationChanges["readings"] {
-  const [before, after] = [had, has].map(({ readings }) => readings.filter(({ stationId }) => stationId === station).map(keyOf));
-  const wentOut = (before ?? []).filter((key) => after?.includes(key) !== true).length;
-  const cameIn = (after ?? []).filter((key) => before?.includes(key) !== true).length;
-  const changed = Math.min(wentOut, cameIn);
-  return wentOut + cameIn === 0 ? [] : [{ station, changed, in: cameIn - changed, out: wentOut - changed }];
+  const [before, after] = [byRow(had, station), byRow(has, station)];
+  const wentOut = [...before.keys()].filter((row) => !after.has(row)).length;
+  const cameIn = [...after.keys()].filter((row) => !before.has(row)).length;
+  const changed = [...after].filter(([row, reading]) => before.has(row) && before.get(row) !== reading).length;
+  return wentOut + cameIn + changed === 0 ? [] : [{ station, changed, in: cameIn, out: wentOut }];
 }
 
-function keyOf({ reading }: StationReading): string {
-  const { arrivalEpochSeconds, frequencyHz, kind, arrivalSigmaSeconds, frequencySigmaHz } = reading;
-  return JSON.stringify([arrivalEpochSeconds, frequencyHz, kind, arrivalSigmaSeconds, frequencySigmaHz]);
+function byRow({ readings }: EventObservations, station: string): Map<number, string> {
+  return new Map(readings.filter(({ stationId }) => stationId === station).map(({ reading }) => [reading.row, JSON.stringify(reading)]));
 }
 
 /** Settings whose values differ, by their address. */

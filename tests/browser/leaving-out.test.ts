@@ -2,6 +2,7 @@ import type { Locator, Page } from "playwright-core";
 import { describe, expect, test } from "vitest";
 import { contrast } from "#tests/support/contrast.ts";
 import { demoBrowser, redrawn } from "#tests/support/demo-browser.ts";
+import { tabTo } from "#tests/support/tab-to.ts";
 
 const { open, openEvent, address, expectFault } = demoBrowser();
 
@@ -11,15 +12,6 @@ const included = (page: Page, name: string): Locator => page.getByRole("checkbox
 const rings = (page: Page): Promise<number> => page.locator(".leaflet-rings-pane path").count();
 const rowOf = async (page: Page, name: string): Promise<string> =>
   (await page.getByRole("row").filter({ has: page.getByRole("rowheader", { name }) }).innerText()).replace(/\s+/g, " ");
-
-/** Tabs on until a control of this name has the focus; every control must be in reach within this many steps. */
-async function tabTo(page: Page, target: Locator): Promise<void> {
-  for (let step = 0; step < 60; step++) {
-    await page.keyboard.press("Tab");
-    if (await target.evaluate((element) => element === document.activeElement)) return;
-  }
-  throw new Error("The keyboard does not reach it.");
-}
 
 describe("leaving a station out", () => {
   test("by mouse: the figures follow, its ring goes, and it comes back", async () => {

@@ -1,21 +1,10 @@
-import axe from "axe-core";
-import type { Page } from "playwright-core";
 import { describe, expect, test } from "vitest";
+import { axeFaults } from "#tests/support/axe-faults.ts";
 import { contrast, luminance } from "#tests/support/contrast.ts";
 import { demoBrowser, DESK, PHONE } from "#tests/support/demo-browser.ts";
 import { DEMO_EVENTS } from "#tests/support/simulator/demo-events.ts";
 
 const { open, openEvent, address, expectFault } = demoBrowser();
-
-/** One sentence for each thing that axe finds against the page, at every rule it has. */
-async function violations(page: Page): Promise<string[]> {
-  await page.evaluate(axe.source);
-  return page.evaluate(async () => {
-    const inPage = globalThis as unknown as { axe: { run: () => Promise<{ violations: { id: string; nodes: { html: string }[] }[] }> } };
-    const found = await inPage.axe.run();
-    return found.violations.flatMap(({ id, nodes }) => nodes.map(({ html }) => `${id}: ${html}`));
-  });
-}
 
 describe("the list of events", () => {
   test("names every event, latest first, and leads to each", async () => {
@@ -106,6 +95,6 @@ describe.each(["light", "dark"] as const)("in the %s", (colorScheme) => {
     if (path !== "") await page.locator("[data-drawn] .leaflet-rings-pane path").first().waitFor();
     const key = page.getByText("Key", { exact: true });
     if ((await key.count()) > 0) await key.click();
-    expect(await violations(page)).toStrictEqual([]);
+    expect(await axeFaults(page)).toStrictEqual([]);
   });
 });

@@ -60,10 +60,12 @@ export function EventSheet(props: EventSheetProps) {
   const focusOn = useCallback((focus: string | null) => { change({ focus }); }, [change]);
   useOverlap(view, worker);
 
-  // Without the worker the server works the new choice out; the address holds it by now.
+  // Without the worker the server works out which stations are left out, for the address holds that by now; of readings
+  // it knows what was kept alone.
+  const isServed = servedChoices.leftOutStationIds.join() === view.without.join();
   useEffect(() => {
-    if (isBehind && drawn === null && failure !== null) globalThis.location.reload();
-  }, [isBehind, drawn, failure]);
+    if (!isServed && drawn === null && failure !== null) globalThis.location.reload();
+  }, [isServed, drawn, failure]);
 
   const said = { solution: drawn?.solution ?? served, stations, settings, unit: view.unit, isBehind, isWorking: isBehind && failure === null };
   return (
@@ -80,7 +82,7 @@ export function EventSheet(props: EventSheetProps) {
             onFocus={toggleFocus}
             onChange={change}
           />
-          <ChartState isDrawn={drawn !== null} isWorking={said.isWorking} failure={failure} />
+          <ChartState isDrawn={drawn !== null} isWorking={said.isWorking} isBehind={isBehind} failure={failure} />
         </div>
         <ChartBar view={view} onChange={change} />
       </section>

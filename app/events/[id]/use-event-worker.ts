@@ -2,6 +2,7 @@ import { useCallback, useEffect, useRef, useState } from "react";
 import type { BaseMap } from "#lib/chart/base-map.ts";
 import type { ObservationChoices } from "#lib/core/arrival/observation-choices.ts";
 import type { ChartArea } from "#lib/chart/chart-point.ts";
+import { sameChoices } from "#lib/core/arrival/same-choices.ts";
 import type { Drawn, WorkerReport, WorkerRequest } from "./worker-messages.ts";
 
 export interface EventWorker {
@@ -65,11 +66,6 @@ export function useEventWorker(
 
   const isBehind = !sameChoices(choices, drawn?.choices ?? opening.choices);
   return { baseMap, drawn, overlap, failure, isBehind, findOverlap };
-}
-
-/** A copy that has been to the worker and back is another object that says the same. */
-export function sameChoices(some: ObservationChoices, others: ObservationChoices): boolean {
-  return some === others || JSON.stringify(some) === JSON.stringify(others);
 }
 
 function post(worker: Worker | null, request: WorkerRequest): void {

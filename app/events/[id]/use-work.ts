@@ -2,8 +2,8 @@ import { useCallback, useEffect, useMemo, useRef, useState } from "react";
 import type { GatheredObservations } from "#lib/core/arrival/gathered-observations.ts";
 import { knownChoices } from "#lib/core/arrival/known-choices.ts";
 import type { ObservationChoices } from "#lib/core/arrival/observation-choices.ts";
+import { sameChoices } from "#lib/core/arrival/same-choices.ts";
 import { draftKey, readDraft, writeDraft, type Draft } from "./draft.ts";
-import { sameChoices } from "./use-event-worker.ts";
 import type { ChangeView } from "./use-view.ts";
 import type { EventView } from "./view.ts";
 
@@ -44,7 +44,7 @@ export function useWork(start: Start, view: EventView, changeView: ChangeView): 
   const [past, setPast] = useState<readonly ReadingChoices[]>([]);
   const [reason, setReason] = useState("");
   const choices = useMemo(() => ({ ...readings, leftOutStationIds: view.without }), [readings, view.without]);
-  const isUnkept = reason !== "" || !sameChoices(sorted(choices), sorted(base));
+  const isUnkept = reason !== "" || !sameChoices(choices, base);
 
   const changeReadings = useCallback<ChangeReadings>((next) => {
     setPast((before) => [...before, readings]);
@@ -122,15 +122,4 @@ function useDraft(start: Start, work: Pick<Work, "choices" | "reason" | "isUnkep
 
 function withoutStations({ droppedReadingIds, movedReadings, addedReadings, usesSuspect }: ObservationChoices): ReadingChoices {
   return { droppedReadingIds, movedReadings, addedReadings, usesSuspect };
-}
-
-/** The order in which things were chosen makes no difference. */
-function sorted(choices: ObservationChoices): ObservationChoices {
-  return {
-    leftOutStationIds: choices.leftOutStationIds.toSorted(),
-    droppedReadingIds: choices.droppedReadingIds.toSorted((a, b) => a - b),
-    movedReadings: choices.movedReadings.toSorted((a, b) => a.readingId - b.readingId),
-    addedReadings: choices.addedReadings,
-    usesSuspect: choices.usesSuspect,
-  };
 }
