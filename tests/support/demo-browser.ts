@@ -1,4 +1,4 @@
-import { chromium, type Browser, type BrowserContextOptions, type Locator, type Page } from "playwright-core";
+import { chromium, type Browser, type BrowserContext, type BrowserContextOptions, type Locator, type Page } from "playwright-core";
 import { afterAll, afterEach, beforeAll, expect } from "vitest";
 import { CHROMIUM_FLAGS, findChromium } from "./chromium.ts";
 import { serveDemo, type ServedDemo } from "./served-demo.ts";
@@ -21,7 +21,7 @@ export function demoBrowser({ writeEvents }: { writeEvents?: (folder: string) =>
   const running: { demo: ServedDemo | null; browser: Browser | null } = { demo: null, browser: null };
   const faults: string[] = [];
   const expected: RegExp[] = [];
-  const pages: Page[] = [];
+  const contexts: BrowserContext[] = [];
 
   beforeAll(async () => {
     const executablePath = findChromium() ?? "";
@@ -32,7 +32,7 @@ export function demoBrowser({ writeEvents }: { writeEvents?: (folder: string) =>
     await running.demo?.stop();
   });
   afterEach(async () => {
-    for (const page of pages.splice(0)) await page.context().close();
+    for (const context of contexts.splice(0)) await context.close();
     const unforeseen = faults.splice(0).filter((fault) => !expected.some((words) => words.test(fault)));
     expected.length = 0;
     expect(unforeseen).toStrictEqual([]);
@@ -41,12 +41,13 @@ export function demoBrowser({ writeEvents }: { writeEvents?: (folder: string) =>
   const address = (path: string): string => `${running.demo?.address ?? ""}${path}`;
   const open: DemoBrowser["open"] = async (path, options = {}) => {
     if (running.browser === null) throw new Error("The browser is not running.");
-    const page = await running.browser.newPage({ viewport: DESK, reducedMotion: "reduce", ...options });
-    pages.push(page);
-    page.on("console", (message) => {
+    const context = await running.browser.newContext({ viewport: DESK, reducedMotion: "reduce", ...options });
+    contexts.push(context);
+    context.on("console", (message) => {
       if (message.type() === "error") faults.push(message.text());
     });
-    page.on("pageerror", (error) => faults.push(error.message));
+    context.on("weberror", (error) => faults.push(error.error().message));
+    const page = await context.newPage();
     await page.goto(address(path));
     return page;
   };

@@ -107,8 +107,8 @@ function useChoices(view: EventView, change: ChangeView) {
     [change, without],
   );
   useEffect(() => {
-    const drop = ({ key }: KeyboardEvent): void => {
-      if (key === "Escape") change({ focus: null });
+    const drop = ({ key, defaultPrevented }: KeyboardEvent): void => {
+      if (key === "Escape" && !defaultPrevented) change({ focus: null });
     };
     document.addEventListener("keydown", drop);
     return () => { document.removeEventListener("keydown", drop); };

@@ -33,7 +33,7 @@ export function FieldCell(props: {
     const steps = { ArrowUp: 1, ArrowDown: -1 }[event.key];
     if (event.key === "Enter") commit();
     if (event.key === "Escape" && typed !== null) {
-      event.stopPropagation();
+      event.preventDefault(); // here it takes back what was typed, and does not drop the focus
       setTyped(null);
     }
     if (steps === undefined || typed !== null) return;
