@@ -11,6 +11,9 @@ import { serveDemo } from "../support/served-demo.ts";
 /** Those of the demo's events that have five or six stations. */
 const EVENTS = ["petrel", "albatross", "gannet"];
 const CHANGES = 10;
+const VISITS = 5;
+/** A station of each whose readings are dropped and taken up again. */
+const FOCUS: Readonly<Record<string, string>> = { petrel: "lan", albatross: "tar", gannet: "umb" };
 
 function say(line: { bench: string; value: number; unit: string; target?: number; events?: number[] }): void {
   console.log(JSON.stringify(line));
@@ -24,12 +27,12 @@ async function openEvent(browser: Browser, address: string, id: string): Promise
   return page;
 }
 
-/** Runs in the page: ticks the box of one station and waits for the frame after the chart has changed. */
-function redrawMilliseconds(station: number): Promise<number> {
+/** Runs in the page: ticks the box that stands at a place of a table, and waits for the frame after the chart has changed. */
+function redrawMilliseconds({ table, place }: { table: string; place: number }): Promise<number> {
   return new Promise((answer) => {
     const map = document.querySelector("[data-drawn]");
-    const box = document.querySelectorAll<HTMLInputElement>("tbody input[type=checkbox]")[station];
-    if (map === null || box === undefined) throw new Error("The page has no chart, or no such station.");
+    const box = document.querySelectorAll<HTMLInputElement>(`${table} tbody input[type=checkbox]`)[place];
+    if (map === null || box === undefined) throw new Error("The page has no chart, or no such box.");
     let began = NaN;
     const watch = new MutationObserver(() => {
       watch.disconnect();
@@ -46,13 +49,41 @@ function redrawMilliseconds(station: number): Promise<number> {
   });
 }
 
-async function redraws(browser: Browser, address: string, id: string): Promise<number[]> {
-  const page = await openEvent(browser, address, id);
-  const times: number[] = [];
-  // Each station is left out and taken in again; the first pair warms the code up, as a reader's first touch does.
-  for (let change = 0; change < CHANGES + 2; change++) times.push(await page.evaluate(redrawMilliseconds, Math.floor(change / 2) % 5));
+interface Redraws {
+  readonly stations: number[];
+  readonly readings: number[];
+}
+
+async function redraws(browser: Browser, address: string, id: string): Promise<Redraws> {
+  const page = await openEvent(browser, address, `${id}?focus=${FOCUS[id] ?? ""}`);
+  const times = async (table: string): Promise<number[]> => {
+    const found: number[] = [];
+    // Each is left out and taken in again; the first pair warms the code up, as a reader's first touch does.
+    for (let change = 0; change < CHANGES + 2; change++) found.push(await page.evaluate(redrawMilliseconds, { table, place: Math.floor(change / 2) % 5 }));
+    return found.slice(2);
+  };
+  const found = { stations: await times("[aria-label=Evidence]"), readings: await times("section:has(form)") };
   await page.close();
-  return times.slice(2);
+  return found;
+}
+
+/** From asking for the page to the frame that shows rings and land, in a browser that has seen nothing of it before. */
+async function firstChartMilliseconds(browser: Browser, address: string, id: string): Promise<number> {
+  const context = await browser.newContext({ viewport: { width: 1280, height: 720 } });
+  const page = await context.newPage();
+  await page.addInitScript(() => {
+    const look = (): void => {
+      const isDrawn = document.querySelector("[data-drawn] .leaflet-rings-pane path") !== null && document.querySelector("[data-drawn] .leaflet-land-pane path") !== null;
+      if (isDrawn) document.documentElement.dataset["chartAt"] = String(performance.now());
+      else requestAnimationFrame(look);
+    };
+    requestAnimationFrame(look);
+  });
+  await page.goto(`${address}events/${id}`);
+  await page.waitForFunction(() => document.documentElement.dataset["chartAt"] !== undefined);
+  const at = await page.evaluate(() => Number(document.documentElement.dataset["chartAt"]));
+  await context.close();
+  return at;
 }
 
 /** Bytes on the wire of a fresh visit: the page's scripts, and those of its worker with the land that it fetches. */
@@ -85,9 +116,15 @@ async function loadedBytes(browser: Browser, address: string): Promise<{ page: n
 const demo = await serveDemo();
 const browser = await chromium.launch({ executablePath: findChromium() ?? "", args: CHROMIUM_FLAGS });
 try {
-  const times: number[][] = [];
+  const times: Redraws[] = [];
   for (const id of EVENTS) times.push(await redraws(browser, demo.address, id));
-  say({ bench: "page-redraw", value: Math.round(median(times.flat())), unit: "ms", target: 300, events: times.map((each) => Math.round(median(each))) });
+  for (const what of ["stations", "readings"] as const) {
+    const each = times.map((found) => found[what]);
+    say({ bench: `page-redraw-${what}`, value: Math.round(median(each.flat())), unit: "ms", target: 300, events: each.map((own) => Math.round(median(own))) });
+  }
+  const firsts: number[] = [];
+  for (let visit = 0; visit < VISITS; visit++) for (const id of EVENTS) firsts.push(await firstChartMilliseconds(browser, demo.address, id));
+  say({ bench: "page-first-chart", value: Math.round(median(firsts)), unit: "ms", target: 1500, events: [Math.round(Math.max(...firsts))] });
   const loaded = await loadedBytes(browser, demo.address);
   const kilobytes = (bytes: number): number => Number((bytes / 1000).toFixed(1));
   say({ bench: "page-scripts", value: kilobytes(loaded.page), unit: "kB gzip", target: 350 });

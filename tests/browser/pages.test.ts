@@ -1,3 +1,4 @@
+import type { Page } from "playwright-core";
 import { describe, expect, test } from "vitest";
 import { axeFaults } from "#tests/support/axe-faults.ts";
 import { contrast, luminance } from "#tests/support/contrast.ts";
