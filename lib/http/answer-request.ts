@@ -4,7 +4,6 @@ import type { BodyShape, Operation, Role } from "#lib/contracts/api/operation.ts
 import { REFUSAL_STATUS } from "#lib/contracts/api/refusal-status.ts";
 import { InputError } from "#lib/core/failures/input-error.ts";
 import { Refusal } from "#lib/core/failures/refusal.ts";
-import { decodedPart } from "./address-part.ts";
 import { isOwnHost } from "./own-host.ts";
 import { parseJson, readText } from "./read-body.ts";
 import { runningProgram, type RunningProgram } from "./running-program.ts";
@@ -12,6 +11,7 @@ import { whoAsks, type Person } from "./who-asks.ts";
 
 /** What a route is given: the request as its operation describes it, who asks, and what it is lent. */
 export interface Asked<Body, Query> {
+  /** Parts of the address, as they are meant: Next has decoded them, which it does for routes and not for pages. */
   readonly params: Readonly<Record<string, string>>;
   readonly query: Query;
   readonly body: Body;
@@ -45,7 +45,7 @@ export function route<Body, Query>(operation: Operation<Body, Query>, work: (ask
       const person = asks();
       requireRole(person, operation.role);
       const query = readShape(operation.query, queryOf(request));
-      const params = decoded(await context.params);
+      const params = (await context.params) ?? {}; // an address without parts comes with none
       const body = await readBody(request, operation);
       const doing = { actor: person.name, savedEpochSeconds: Date.now() / 1000 };
       return respond(operation.answer, await work({ params, query, body, program: await runningProgram(), doing }));
@@ -86,11 +86,6 @@ function queryOf(request: Request): Record<string, string> {
   const twice = [...new Set(names.filter((name, place) => names.indexOf(name) !== place))];
   if (twice.length > 0) throw new InputError(twice.map((path) => ({ code: "repeated", path, message: `${path}: found more than one; wanted it once.` })));
   return Object.fromEntries(searchParams);
-}
-
-/** Parts of an address that mean no text name nothing that could be found. An address without parts comes with none. */
-function decoded(params: Readonly<Record<string, string>> = {}): Record<string, string> {
-  return Object.fromEntries(Object.entries(params).map(([name, written]) => [name, decodedPart(written) ?? ""]));
 }
 
 function requireOwnHost(request: Request): void {

@@ -1,25 +1,24 @@
 import { InputError } from "#lib/core/failures/input-error.ts";
 import { Refusal } from "#lib/core/failures/refusal.ts";
 
+/** As much of a body that is too large is let run by, for a sender that is cut off while it sends never hears why. */
+const MOST_LET_BY = 100_000_000;
+
 /**
- * A request's body as text, read no further than it may be long.
+ * A request's body as text. No more of it is held than it may be long.
  *
  * @throws Refusal `too-large`; InputError `not-text` where the bytes are not UTF-8.
  */
 export async function readText(request: Request, mostBytes: number): Promise<string> {
-  const tooLarge = new Refusal("too-large", `The request holds more than ${mostBytes} bytes.`);
-  if (Number(request.headers.get("content-length") ?? "0") > mostBytes) throw tooLarge;
   const parts: Uint8Array[] = [];
   let length = 0;
   const reader = request.body?.getReader();
   for (let part = await reader?.read(); part?.done === false; part = await reader?.read()) {
     length += part.value.byteLength;
-    if (length > mostBytes) {
-      await reader?.cancel();
-      throw tooLarge;
-    }
-    parts.push(part.value);
+    if (length <= mostBytes) parts.push(part.value);
+    if (length > MOST_LET_BY) await reader?.cancel();
   }
+  if (length > mostBytes) throw new Refusal("too-large", `The request holds more than ${mostBytes} bytes.`);
   try {
     return new TextDecoder("utf-8", { fatal: true }).decode(Buffer.concat(parts));
   } catch {

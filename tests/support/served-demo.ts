@@ -9,6 +9,8 @@ const DEMO_EVENTS = fileURLToPath(new URL("../../fixtures/scenarios/demo", impor
 export interface ServedDemo {
   /** Ends in a slash. */
   readonly address: string;
+  /** Of the command that serves; the server is a process that it started. */
+  readonly processId: number;
   readonly stop: () => Promise<void>;
 }
 
@@ -37,7 +39,7 @@ export async function serveDemo(writeEvents?: (folder: string) => void): Promise
   for await (const part of server.stdout) {
     said += String(part);
     const address = /^Offing is at (http:\S+)$/m.exec(said)?.[1];
-    if (address !== undefined) return { address, stop };
+    if (address !== undefined) return { address, processId: server.pid ?? 0, stop };
   }
   await stop();
   throw new Error(`The pages are not served: ${said}`);

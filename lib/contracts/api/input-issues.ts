@@ -1,8 +1,6 @@
-import type * as z from "zod/v4/core";
+import * as z from "zod/v4/core";
 import { InputError, type InputIssue } from "#lib/core/failures/input-error.ts";
 
-/** What zod says where a shape brings no words of its own. */
-const UNSAID = "Invalid input";
 const FOUND_CHARACTERS_SHOWN = 60;
 /** As many as of a file: more would hide the first ones, which usually explain the rest. */
 const ISSUES_SHOWN = 50;
@@ -13,10 +11,10 @@ const ISSUES_SHOWN = 50;
  * @throws InputError with an issue for each field, by its address, such as `moved[2].time`.
  */
 export function readShape<Shape>(schema: z.$ZodType<Shape>, value: unknown): Shape {
-  const parsed = schema["~standard"].validate(value);
-  if (parsed instanceof Promise) throw new Error("Shapes of requests are read at once.");
-  if (parsed.issues === undefined) return parsed.value;
-  const issues = parsed.issues as unknown as z.$ZodIssue[];
+  // The words for a shape that brings none are given here: what zod would say itself depends on who else has loaded it.
+  const parsed = z.safeParse(schema, value, { error: wantedOf });
+  if (parsed.success) return parsed.data;
+  const { issues } = parsed.error;
   const shown = issues.slice(0, ISSUES_SHOWN).map((issue) => inputIssue(issue, value));
   const more = issues.length - shown.length;
   const rest = { code: "more-problems", path: "", message: `The request: ${more} more problems like these are not shown (${issues.length} in all).` };
@@ -31,7 +29,7 @@ function inputIssue(issue: z.$ZodIssue, value: unknown): InputIssue {
     return { code: "unknown-key", path, message: `${place}: found ${keys}; wanted only what it takes.` };
   }
   const found = valueAt(value, issue.path);
-  return { code: issue.code, path, message: `${place}: found ${shortly(found)}; wanted ${wantedOf(issue)}.` };
+  return { code: issue.code, path, message: `${place}: found ${shortly(found)}; wanted ${issue.message}.` };
 }
 
 function shortly(found: unknown): string {
@@ -46,8 +44,7 @@ export function addressOf(path: readonly PropertyKey[]): string {
   return path.map((key) => (typeof key === "number" ? `[${key}]` : `.${String(key)}`)).join("").replace(/^\./, "");
 }
 
-function wantedOf(issue: z.$ZodIssue): string {
-  if (issue.message !== UNSAID) return issue.message;
+function wantedOf(issue: z.$ZodRawIssue): string {
   if (issue.code === "invalid_type") return { array: "a list", object: "an object" }[String(issue.expected)] ?? `a value of the kind ${issue.expected}`;
   return "a value that this field takes";
 }
