@@ -36,6 +36,10 @@ export default async function RootLayout({ children }: { children: ReactNode }) 
             <Link className={styles.screen} href="/">
               Events
             </Link>
+            <Link className={styles.screen} href="/readings">Hand readings</Link>
+            <Link className={styles.screen} href="/stations">
+              Stations
+            </Link>
           </nav>
         </header>
         <main id="main" tabIndex={-1} className={styles.main}>

@@ -1,13 +1,16 @@
 import type { DispersionLine } from "#lib/core/arrival/line.ts";
 import { shortenedBy } from "#lib/core/arrival/line-at-frequency.ts";
+import { ringSigmas } from "#lib/core/source/ring-sigma.ts";
 import type { EstimationSettings } from "#lib/core/source/settings.ts";
 import { distanceWords, uncertainDistanceWords, type DistanceUnit } from "./distances.ts";
-import { figure, percentWords, pValueWords } from "./figures.ts";
+import { figure, percentWords, pValueWords, twoLeadingDigits } from "./figures.ts";
 import { counted, listWords } from "./numbers-in-words.ts";
 import { hoursFigure, plusMinusHours, uncertainMomentWords } from "./times.ts";
 
 /** One station's line in words: how far, when, how the two hang together, and how well the readings follow it. */
 export interface LineWords {
+  /** What the band on the map holds beyond the readings' own error. */
+  readonly band: string;
   readonly distance: string;
   readonly time: string;
   /** Neither error means much alone. */
@@ -22,11 +25,13 @@ const WORTH_SAYING = 0.05;
 const UNLIKELY = 0.05;
 
 export function lineWords(line: DispersionLine, { unit, settings }: { readonly unit: DistanceUnit; readonly settings: EstimationSettings }): LineWords {
+  const { distanceSigmaMetres } = ringSigmas({ estimate: line, settings, spreadRaisedBy: 1 });
   const { distanceVariance, originVariance } = line.covariance;
   const originSigma = Math.sqrt(originVariance);
   return {
     distance: uncertainDistanceWords(line.distanceMetres, Math.sqrt(distanceVariance), unit),
     time: `${uncertainMomentWords(line.originEpochSeconds, originSigma)} ${plusMinusHours(originSigma)}`,
+    band: `Errors are 1 sigma of the readings; the band on the map, ±\u00a0${distanceWords(twoLeadingDigits(distanceSigmaMetres), unit)}, has the storm’s size and life in it.`,
     together: togetherWords(line, unit),
     scatter: scatterWords(line),
     remarks: remarks(line, settings),
@@ -38,7 +43,9 @@ function togetherWords({ covariance }: DispersionLine, unit: DistanceUnit): stri
   const shiftSeconds = covariance.distanceOriginCovariance / distanceSigma;
   const correlation = shiftSeconds / Math.sqrt(covariance.originVariance);
   const sense = shiftSeconds < 0 ? "earlier" : "later";
-  return `Distance and time go together (correlation ${figure(correlation, 2)}): ${distanceWords(distanceSigma, unit)} farther is ${hoursFigure(Math.abs(shiftSeconds))}\u00a0h ${sense}.`;
+  // Two digits that read as certain would claim too much.
+  const said = Math.abs(correlation) >= 0.995 ? `beyond ${figure(0.99 * Math.sign(correlation), 2)}` : figure(correlation, 2);
+  return `Distance and time go together (correlation ${said}): ${distanceWords(twoLeadingDigits(distanceSigma), unit)} farther goes with ${hoursFigure(Math.abs(shiftSeconds))}\u00a0h ${sense}.`;
 }
 
 function scatterWords({ pValue }: DispersionLine): string {
