@@ -2,6 +2,7 @@ import type { EventObservations } from "#lib/core/arrival/observations.ts";
 import { geodesicInverse } from "#lib/core/geodesy/geodesic.ts";
 import type { LocateJson } from "#lib/contracts/locate-json.ts";
 import type { LocalizationChanges } from "#lib/contracts/api/localizations.ts";
+import { settingDifferences } from "#lib/contracts/setting-differences.ts";
 import type { StoredLocalization } from "./ports.ts";
 
 const METRES_PER_KM = 1000;
@@ -21,7 +22,7 @@ export function localizationChanges(before: StoredLocalization, after: StoredLoc
     stationsIn: stationsAfter.filter((id) => !stationsBefore.includes(id)),
     stationsOut: stationsBefore.filter((id) => !stationsAfter.includes(id)),
     readings: stationsAfter.filter((id) => stationsBefore.includes(id)).flatMap((id) => readingChanges(id, had, has)),
-    settings: differences(was.settings, is.settings),
+    settings: settingDifferences(was.settings, is.settings),
     program: { before: before.program, after: after.program },
   };
 }
@@ -55,20 +56,4 @@ function readingChanges(station: string, had: EventObservations, has: EventObser
 
 function byRow({ readings }: EventObservations, station: string): Map<number, string> {
   return new Map(readings.filter(({ stationId }) => stationId === station).map(({ reading }) => [reading.row, JSON.stringify(reading)]));
-}
-
-/** Settings whose values differ, by their address. */
-function differences(before: object, after: object): LocalizationChanges["settings"] {
-  const [was, is] = [leaves(before), leaves(after)];
-  return [...new Set([...was.keys(), ...is.keys()])].filter((name) => was.get(name) !== is.get(name)).map((name) => ({ name, before: was.get(name) ?? null, after: is.get(name) ?? null }));
-}
-
-function leaves(settings: object, before = ""): Map<string, number | boolean> {
-  const entries = Object.entries(settings) as [string, unknown][];
-  return new Map(
-    entries.flatMap(([name, value]): [string, number | boolean][] => {
-      if (typeof value === "number" || typeof value === "boolean") return [[before + name, value]];
-      return typeof value === "object" && value !== null ? [...leaves(value, `${before}${name}.`)] : [];
-    }),
-  );
 }

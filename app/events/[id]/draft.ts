@@ -4,14 +4,13 @@ import type { ObservationChoices } from "#lib/core/arrival/observation-choices.t
 
 /** Work on an event that nobody has kept yet, as this browser remembers it. */
 export interface Draft {
-  /** Number of the latest kept answer, and the event's revision, that it started from. */
+  /** Number of the latest kept answer that it started from. */
   readonly startedFrom: number;
-  readonly eventRevision: number;
   readonly choices: ObservationChoices;
   readonly reason: string;
 }
 
-const draftShape = z.object({ startedFrom: z.int(), eventRevision: z.int(), choices: choicesShape, reason: z.string() });
+const draftShape = z.object({ startedFrom: z.int(), choices: choicesShape, reason: z.string() });
 
 export const draftKey = (eventId: string): string => `offing.draft.${eventId}`;
 

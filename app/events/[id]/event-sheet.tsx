@@ -51,7 +51,7 @@ export function EventSheet(props: EventSheetProps) {
   const defaults = useMemo(() => ({ knownIds: stations.map(({ id }) => id), without: base.leftOutStationIds }), [stations, base]);
   const [view, change] = useView(defaults);
   const latestNumber = kept[0]?.number ?? 0;
-  const work = useWork({ eventId: event.id, eventRevision: event.revision, observations, number: latestNumber, base }, view, change);
+  const work = useWork({ eventId: event.id, observations, number: latestNumber, base }, view, change);
   const window = useMemo(() => windowAround(stations.map(({ position }) => position)), [stations]);
   const { solution: served, choices: servedChoices } = props;
   const worker = useEventWorker({ observations, settings, window, solution: served, choices: servedChoices }, work.choices);

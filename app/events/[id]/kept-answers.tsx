@@ -1,7 +1,10 @@
 import { useId } from "react";
+import { settingDifferences } from "#lib/contracts/setting-differences.ts";
+import { DEFAULT_PUBLIC_SETTINGS } from "#lib/contracts/settings.ts";
 import type { NumberedStation } from "#lib/core/arrival/numbered-stations.ts";
 import { auditWords, type AuditLine } from "#lib/presentation/audit-words.ts";
 import type { DistanceUnit } from "#lib/presentation/distances.ts";
+import { listWords } from "#lib/presentation/numbers-in-words.ts";
 import { keptWords, type KeptAnswer } from "#lib/presentation/kept-words.ts";
 import { KeepForm } from "./keep-form.tsx";
 import { KeptChanges } from "./kept-changes.tsx";
@@ -24,10 +27,16 @@ export function KeptAnswers(props: {
 }) {
   const { eventId, kept, stations, trail, work } = props;
   const heading = useId();
+  const differences = settingDifferences(DEFAULT_PUBLIC_SETTINGS, JSON.parse(props.settingsJson) as object);
   return (
     <section id="keep" className={styles.kept} aria-labelledby={heading}>
       <h2 id={heading} className={styles.heading}>Kept answers</h2>
       <KeepForm {...props} latestNumber={kept[0]?.number ?? 0} />
+      {differences.length > 0 && (
+        <p className={styles.none}>
+          The settings of number {kept[0]?.number} are used: {listWords(differences.map(({ name, before, after }) => `${name} ${String(after)} (${String(before)} by default)`))}.
+        </p>
+      )}
       {kept.length === 0 ? (
         <p className={styles.none}>None kept yet.</p>
       ) : (

@@ -30,7 +30,6 @@ export interface Work {
 
 interface Start {
   readonly eventId: string;
-  readonly eventRevision: number;
   readonly observations: GatheredObservations;
   /** Number and choices of the latest kept answer; 0 and none where there is none. */
   readonly number: number;
@@ -95,7 +94,7 @@ interface DraftKeeping {
 
 /** Brings a draft back when the page opens, and puts every change aside from then on. */
 function useDraft(start: Start, work: Pick<Work, "choices" | "reason" | "isUnkept">, keeping: DraftKeeping): void {
-  const { eventId, eventRevision, number } = start;
+  const { eventId, number } = start;
   const { choices, reason, isUnkept } = work;
   const isOpened = useRef(false);
   const atFirst = useRef(keeping);
@@ -107,17 +106,17 @@ function useDraft(start: Start, work: Pick<Work, "choices" | "reason" | "isUnkep
       if (draft !== null) atFirst.current.bringBack(draft);
       return;
     }
-    atFirst.current.onRemembered(writeDraft(eventId, isUnkept ? { startedFrom: number, eventRevision, choices, reason } : null));
-  }, [eventId, eventRevision, number, choices, reason, isUnkept]);
+    atFirst.current.onRemembered(writeDraft(eventId, isUnkept ? { startedFrom: number, choices, reason } : null));
+  }, [eventId, number, choices, reason, isUnkept]);
 
   // Another tab that keeps or drops its own work forgets the draft of both; this tab's is put aside again.
   useEffect(() => {
     const restore = ({ key, newValue }: StorageEvent): void => {
-      if (key === draftKey(eventId) && newValue === null && isUnkept) writeDraft(eventId, { startedFrom: number, eventRevision, choices, reason });
+      if (key === draftKey(eventId) && newValue === null && isUnkept) writeDraft(eventId, { startedFrom: number, choices, reason });
     };
     globalThis.addEventListener("storage", restore);
     return () => { globalThis.removeEventListener("storage", restore); };
-  }, [eventId, eventRevision, number, choices, reason, isUnkept]);
+  }, [eventId, number, choices, reason, isUnkept]);
 }
 
 function withoutStations({ droppedReadingIds, movedReadings, addedReadings, usesSuspect }: ObservationChoices): ReadingChoices {
