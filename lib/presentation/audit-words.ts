@@ -1,4 +1,5 @@
-import { counted, listWords } from "./numbers-in-words.ts";
+import { counted } from "./numbers-in-words.ts";
+import { QUALITY_WORDS } from "./quality-words.ts";
 import { momentWords } from "./times.ts";
 
 /** A line of an event's audit trail. */
@@ -47,8 +48,12 @@ function whatWords(action: string, detail: Detail, eventId: string): string {
     case "events merged":
       return into === eventId ? `took in ${counted(count, "arrival")} of ${from ?? "another event"}` : `merged it into ${into ?? "another event"}`;
     case "reading flagged":
-      return `flagged a reading of ${station} ${listWords([`${String(after)}, before ${String(before)}`])}`;
+      return `flagged a reading of ${station} ${flagWords(after)}, ${flagWords(before)} before`;
     default:
       return action;
   }
+}
+
+function flagWords(flag: unknown): string {
+  return QUALITY_WORDS.find(([value]) => value === flag)?.[1] ?? String(flag);
 }

@@ -1,3 +1,5 @@
+import { NOT_EVALUATED } from "#lib/core/arrival/quality.ts";
+import { QUALITY_WORDS } from "#lib/presentation/quality-words.ts";
 import { momentText, momentWords, parseMoment } from "#lib/presentation/times.ts";
 import { FieldCell } from "./field-cell.tsx";
 import { PERIOD_WORDS, parsePeriod, periodText } from "./period-text.ts";
@@ -58,10 +60,9 @@ export function ReadingRow({ row, onChange }: { row: ShownReading; onChange: Cha
   );
 }
 
-const FLAG_WORDS: Readonly<Record<number, string>> = { 1: "good", 3: "suspect", 4: "bad", 9: "missing" };
-
 function Remarks({ row, name, onChange }: { row: ShownReading; name: string; onChange: ChangeReadings }) {
-  const flag = row.quality === null ? undefined : FLAG_WORDS[row.quality];
+  // Hardly any reading is evaluated: saying so of each would say nothing.
+  const flag = row.quality === NOT_EVALUATED ? undefined : QUALITY_WORDS.find(([value]) => value === row.quality)?.[1];
   const said = [...(flag === undefined ? [] : [flag]), ...(row.isDropped ? ["dropped"] : []), ...(row.isDownweighted ? ["weight lowered"] : [])].join(", ");
   const { broughtIn, addedAt } = row;
   return (
