@@ -47,16 +47,18 @@ function Line({ findings: { fitted }, typed, settings, unit }: { findings: Findi
   const words = lineWords(line, { unit, settings });
   return (
     <>
-      <dl className={styles.figures} role="group" aria-label="Distance and time" aria-live="polite">
-        <div>
-          <dt>Distance L</dt>
-          <dd>{words.distance}</dd>
-        </div>
-        <div>
-          <dt>Left the storm t<sub>0</sub></dt>
-          <dd>{words.time}</dd>
-        </div>
-      </dl>
+      <div role="group" aria-label="Distance and time" aria-live="polite">
+        <dl className={styles.figures}>
+          <div>
+            <dt>Distance L</dt>
+            <dd>{words.distance}</dd>
+          </div>
+          <div>
+            <dt>Left the storm t<sub>0</sub></dt>
+            <dd>{words.time}</dd>
+          </div>
+        </dl>
+      </div>
       <div className={styles.words}>
         <p>{[words.together, words.scatter, words.band, ...words.remarks].join(" ")}</p>
       </div>
@@ -69,7 +71,8 @@ export function Summary({ findings: { fitted }, unit }: { findings: Findings; un
   if (fitted?.outcome.kind !== "fitted") return null;
   const { distance, time } = lineWords(fitted.outcome.line, { unit, settings: DEFAULT_SETTINGS });
   return (
-    <a className={styles.summary} href="#findings" aria-label="To what the readings say">
+    <a className={styles.summary} href="#findings">
+      <span className="for-screen-readers">To what the readings say: </span>
       <span>{distance}</span> <span>{time}</span>
     </a>
   );

@@ -8,7 +8,7 @@ import { useBaseMap } from "../_components/chart/use-base-map.ts";
 import { FindingsPart, Summary } from "./findings-part.tsx";
 import form from "./form.module.css";
 import styles from "./hand-readings.module.css";
-import { KeepPart, type EventChoice } from "./keep-part.tsx";
+import { DoneReport, KeepPart, type EventChoice } from "./keep-part.tsx";
 import { ReadingRows } from "./reading-rows.tsx";
 import type { StationChoice } from "./station-choice.ts";
 import { StationPart } from "./station-part.tsx";
@@ -51,8 +51,9 @@ export function HandReadings(props: { stations: readonly StationChoice[]; events
           <button type="button" className={form.button} disabled={!hasWork(draft)} onClick={startAnew}>Start anew</button>
         </div>
         <p role="status" className={form.hint}>
-          {isOld && hasWork(draft) && "What was typed here earlier and not brought in is back."}
+          {isOld && keeping.done === null && hasWork(draft) && "What was typed here earlier and not brought in is back."}
         </p>
+        <DoneReport done={keeping.done} />
         <StationPart
           {...{ draft, stations, change }}
           chosen={work.chosen}

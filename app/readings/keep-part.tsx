@@ -60,7 +60,9 @@ export function KeepPart(props: {
           {keeping.isBusy ? "Bringing in…" : "Bring in"}
         </button>
       </div>
-      <Report keeping={keeping} />
+      <div role="alert" className={keeping.refusals.length > 0 ? `${styles.report ?? ""} ${styles.refused ?? ""}` : ""}>
+        {keeping.refusals.map((message) => <p key={message}>{message}</p>)}
+      </div>
     </fieldset>
   );
 }
@@ -90,20 +92,16 @@ function EventBox({ value, events, message, onChange }: { value: string; events:
   );
 }
 
-function Report({ keeping: { refusals, done } }: { keeping: Keeping }) {
+/** What was brought in last: said where the next station's readings begin. */
+export function DoneReport({ done }: Pick<Keeping, "done">) {
   return (
-    <>
-      <div role="alert" className={refusals.length > 0 ? `${styles.report ?? ""} ${styles.refused ?? ""}` : ""}>
-        {refusals.map((message) => <p key={message}>{message}</p>)}
-      </div>
-      <div role="status" className={done === null ? "" : styles.report}>
-        {done !== null && (
-          <p>
-            {done.words}{" "}
-            {done.event !== null && <Link href={`/events/${encodeURIComponent(done.event.id)}`}>Open the event sheet: {done.event.title}</Link>}
-          </p>
-        )}
-      </div>
-    </>
+    <div role="status" className={done === null ? "" : styles.report}>
+      {done !== null && (
+        <p>
+          {done.words}{" "}
+          {done.event !== null && <Link href={`/events/${encodeURIComponent(done.event.id)}`}>Open the event sheet: {done.event.title}</Link>}
+        </p>
+      )}
+    </div>
   );
 }

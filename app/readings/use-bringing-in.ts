@@ -60,7 +60,9 @@ export function useBringingIn(given: {
     titleMessage: (left.isShown("title") ? faults.title : null) ?? keeping.refused.title,
     eventMessage: (left.isShown("event") ? faults.event : null) ?? keeping.refused.event,
     rowIssues: (row: DraftRow, read: ReadRow): readonly RowIssue[] => {
-      const own = isBlank(row) ? [] : read.issues.filter(({ field }) => left.isShown(`${row.key}-${field}`));
+      // A row that is blank but for its date is no reading, and yet a date that is none is told.
+      const told = isBlank(row) ? read.issues.filter(({ field }) => field === "date" && row.date.trim() !== "") : read.issues;
+      const own = told.filter(({ field }) => left.isShown(`${row.key}-${field}`));
       return [...own, ...keeping.refused.rows.filter(({ key, field }) => key === row.key && own.every((issue) => issue.field !== field))];
     },
     bringIn: () => { void bringIn(); },

@@ -2,7 +2,7 @@ import { useEffect, useState } from "react";
 import type { BaseMap } from "#lib/chart/base-map.ts";
 import type { BaseMapReport } from "./base-map-worker.ts";
 
-/** The land in the window with this middle, for charts without a worker of their own; null until it has come. A chart without land is still one. */
+/** The land in the window with this middle, drawn by a worker of its own beside whatever else a chart waits for; null until it has come. A chart without land is still one. */
 export function useBaseMap(centreLongitudeDegrees: number): { baseMap: BaseMap | null; failure: string | null } {
   const [drawn, setDrawn] = useState<{ centre: number; report: BaseMapReport } | null>(null);
   useEffect(() => {

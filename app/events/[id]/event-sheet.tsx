@@ -11,6 +11,7 @@ import type { EventSolution } from "#lib/core/source/solution.ts";
 import type { ArrivalInEvent } from "#lib/presentation/arrival-rows.ts";
 import type { AuditLine } from "#lib/presentation/audit-words.ts";
 import type { KeptAnswer } from "#lib/presentation/kept-words.ts";
+import { useBaseMap } from "../../_components/chart/use-base-map.ts";
 import { Answer } from "./answer.tsx";
 import { ArrivalsPanel, type EventInView } from "./arrivals-panel.tsx";
 import { ChartBar } from "./chart-bar.tsx";
@@ -56,6 +57,7 @@ export function EventSheet(props: EventSheetProps) {
   const { solution: served, choices: servedChoices } = props;
   const worker = useEventWorker({ observations, settings, window, solution: served, choices: servedChoices }, work.choices);
   const { drawn, isBehind, failure } = worker;
+  const { baseMap } = useBaseMap(window.centreLongitudeDegrees);
   const { toggleFocus, toggleStation } = useChoices(view, change);
   const focusOn = useCallback((focus: string | null) => { change({ focus }); }, [change]);
   useOverlap(view, worker);
@@ -75,7 +77,7 @@ export function EventSheet(props: EventSheetProps) {
           <Chart
             window={window}
             stations={stations}
-            baseMap={worker.baseMap}
+            baseMap={baseMap}
             layers={drawn?.layers ?? null}
             overlap={view.showsOverlap ? worker.overlap : []}
             view={view}

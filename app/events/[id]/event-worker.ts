@@ -1,5 +1,4 @@
 import { bandOverlaps } from "#lib/chart/band-overlaps.ts";
-import { baseMap } from "#lib/chart/base-map.ts";
 import { eventLayers } from "#lib/chart/event-layers.ts";
 import { buildLandMask } from "#lib/core/geodesy/land-mask.ts";
 import type { SightTable } from "#lib/core/geodesy/sight-table.ts";
@@ -35,7 +34,6 @@ function workOnEvents(): (request: WorkerRequest) => void {
 
 async function openEvent(opening: Opening): Promise<(question: Question) => void> {
   const topology = await fetchLand();
-  report({ kind: "base-map", baseMap: baseMap(opening.window, topology) });
   const land = buildLandMask(topology);
   const sightTables = opening.settings.sight ? sightOfStations(opening.observations, land) : new Map<string, SightTable>();
   const drawing = { window: opening.window, settings: opening.settings, sightTables };

@@ -1,12 +1,10 @@
 import { useCallback, useEffect, useRef, useState } from "react";
-import type { BaseMap } from "#lib/chart/base-map.ts";
 import type { ObservationChoices } from "#lib/core/arrival/observation-choices.ts";
 import type { ChartArea } from "#lib/chart/chart-point.ts";
 import { sameChoices } from "#lib/core/arrival/same-choices.ts";
 import type { Drawn, WorkerReport, WorkerRequest } from "./worker-messages.ts";
 
 export interface EventWorker {
-  readonly baseMap: BaseMap | null;
   readonly drawn: Drawn | null;
   readonly overlap: readonly ChartArea[];
   readonly failure: string | null;
@@ -26,7 +24,6 @@ export function useEventWorker(
   const worker = useRef<Worker | null>(null);
   const lastAsk = useRef({ solve: 0, overlap: 0, choices: opening.choices });
   const openedWith = useRef(opening);
-  const [baseMap, setBaseMap] = useState<BaseMap | null>(null);
   const [drawn, setDrawn] = useState<Drawn | null>(null);
   const [overlap, setOverlap] = useState<readonly ChartArea[]>([]);
   const [failure, setFailure] = useState<string | null>(null);
@@ -34,7 +31,6 @@ export function useEventWorker(
   useEffect(() => {
     const started = new Worker(new URL("./event-worker.ts", import.meta.url), { type: "module" });
     started.onmessage = ({ data }: MessageEvent<WorkerReport>) => {
-      if (data.kind === "base-map") setBaseMap(data.baseMap);
       if (data.kind === "failed") setFailure(data.message);
       if (data.kind === "overlap" && data.ask === lastAsk.current.overlap) setOverlap(data.areas);
       if (data.kind === "drawn" && data.ask === lastAsk.current.solve) {
@@ -65,7 +61,7 @@ export function useEventWorker(
   }, []);
 
   const isBehind = !sameChoices(choices, drawn?.choices ?? opening.choices);
-  return { baseMap, drawn, overlap, failure, isBehind, findOverlap };
+  return { drawn, overlap, failure, isBehind, findOverlap };
 }
 
 function post(worker: Worker | null, request: WorkerRequest): void {

@@ -1,5 +1,4 @@
 import type { EventLayers } from "#lib/chart/event-layers.ts";
-import type { BaseMap } from "#lib/chart/base-map.ts";
 import type { ChartArea } from "#lib/chart/chart-point.ts";
 import type { ChartWindow } from "#lib/chart/chart-window.ts";
 import type { GatheredObservations } from "#lib/core/arrival/gathered-observations.ts";
@@ -31,7 +30,6 @@ export interface Drawn {
 }
 
 export type WorkerReport =
-  | { readonly kind: "base-map"; readonly baseMap: BaseMap }
   | ({ readonly kind: "drawn" } & Drawn)
   | { readonly kind: "overlap"; readonly ask: number; readonly areas: readonly ChartArea[] }
   | { readonly kind: "failed"; readonly ask: number; readonly message: string };

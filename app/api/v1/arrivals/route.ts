@@ -4,8 +4,9 @@ import { readingsToSave } from "#lib/contracts/api/readings.ts";
 import { route } from "#lib/http/answer-request.ts";
 
 export const GET = route(OPERATIONS.listArrivals, async ({ query, program }) => {
-  const { station, event, waiting, limit = "200" } = query;
-  const arrivals = await program.arrivals.listArrivals({ stationId: station, eventId: waiting === "yes" ? null : event, limit: Number(limit) });
+  const { station, event, waiting, after, limit = "50" } = query;
+  const afterId = after === undefined ? undefined : Number(after);
+  const arrivals = await program.arrivals.listArrivals({ stationId: station, eventId: waiting === "yes" ? null : event, afterId, limit: Number(limit) });
   return { body: { arrivals: arrivals.map(arrivalJson) } };
 });
 
