@@ -67,21 +67,21 @@ async function redraws(browser: Browser, address: string, id: string): Promise<R
   return found;
 }
 
+/** As text, for it runs in the page as it stands: notes when rings and land are first there together. */
+const WATCH_CHART = `requestAnimationFrame(function look() {
+  const isThere = (pane) => document.querySelector("[data-drawn] .leaflet-" + pane + "-pane path") !== null;
+  if (isThere("rings") && isThere("land")) globalThis.chartAt = performance.now();
+  else requestAnimationFrame(look);
+});`;
+
 /** From asking for the page to the frame that shows rings and land, in a browser that has seen nothing of it before. */
 async function firstChartMilliseconds(browser: Browser, address: string, id: string): Promise<number> {
   const context = await browser.newContext({ viewport: { width: 1280, height: 720 } });
   const page = await context.newPage();
-  await page.addInitScript(() => {
-    const look = (): void => {
-      const isDrawn = document.querySelector("[data-drawn] .leaflet-rings-pane path") !== null && document.querySelector("[data-drawn] .leaflet-land-pane path") !== null;
-      if (isDrawn) document.documentElement.dataset["chartAt"] = String(performance.now());
-      else requestAnimationFrame(look);
-    };
-    requestAnimationFrame(look);
-  });
+  await page.addInitScript({ content: WATCH_CHART });
   await page.goto(`${address}events/${id}`);
-  await page.waitForFunction(() => document.documentElement.dataset["chartAt"] !== undefined);
-  const at = await page.evaluate(() => Number(document.documentElement.dataset["chartAt"]));
+  const drawn = await page.waitForFunction(() => (globalThis as { chartAt?: number }).chartAt);
+  const at = Number(await drawn.jsonValue());
   await context.close();
   return at;
 }
