@@ -97,7 +97,7 @@ function linesOf(estimate: ArrivalEstimate, readings: readonly Reading[], settin
   const moments = frequencies.map((hz) => ({ hz, ...lineAtFrequency(estimate, hz, gravity) }));
   const early = moments.map(({ hz, arrivalEpochSeconds, sigmaSeconds }) => pointAt(scales, arrivalEpochSeconds - sigmaSeconds, hz));
   const late = moments.map(({ hz, arrivalEpochSeconds, sigmaSeconds }) => pointAt(scales, arrivalEpochSeconds + sigmaSeconds, hz));
-  const stretch = 1 + shortenedBy(estimate.distanceMetres, { gravity, ...timed });
+  const stretch = 1 + shortenedBy(estimate, { gravity, ...timed });
   const pivotHz = readings.reduce((sum, { frequencyHz }) => sum + frequencyHz / readings.length, 0);
   const asRead = frequencies.map((hz) => pointAt(scales, lineAtFrequency(estimate, pivotHz + (hz - pivotHz) * stretch, gravity).arrivalEpochSeconds, hz));
   return {

@@ -57,7 +57,7 @@ function scatterWords({ pValue }: DispersionLine): string {
 }
 
 function remarks(line: DispersionLine, { gravity, timed }: EstimationSettings): string[] {
-  const shortened = shortenedBy(line.distanceMetres, { gravity, ...timed });
+  const shortened = shortenedBy(line, { gravity, ...timed });
   const rows = line.downweightedRows.map(String);
   return [
     ...(shortened >= WORTH_SAYING

@@ -22,8 +22,9 @@ export function lineAtFrequency(estimate: ArrivalEstimate, frequencyHz: number, 
   };
 }
 
-/** By what part a line's distance was shortened because its readings were timed at moments: 0 to 1 of the distance. */
-export function shortenedBy(distanceMetres: number, window: TimedWindow): number {
+/** By what part of its distance a line was shortened because readings of it were timed at moments: 0 to 1. */
+export function shortenedBy({ distanceMetres, sharedShifts }: ArrivalEstimate, window: TimedWindow): number {
+  if (sharedShifts.every(({ cause }) => cause !== "timed-readings")) return 0;
   // The largest apparent distance whose correction gives this one: L + K / L, K of timed-correction.ts.
   const rootK = (window.durationSeconds * window.gravity) / (4 * Math.PI * window.spectrumWidthHz);
   if (distanceMetres <= rootK) return 1;
