@@ -169,8 +169,18 @@ export interface ArrivalToSave {
   readonly estimate: ArrivalEstimate | null;
 }
 
+export interface ArrivalFilter {
+  readonly stationId?: string | undefined;
+  /** Null: those that wait for an event. */
+  readonly eventId?: string | null | undefined;
+  /** Those that were brought in after this one. */
+  readonly afterId?: number | undefined;
+  readonly limit: number;
+}
+
 export interface ReadingFilter {
   readonly stationId?: string | undefined;
+  readonly afterId?: number | undefined;
   /** On the station's own clock; the first moment counts, the last does not. */
   readonly fromEpochSeconds?: number | undefined;
   readonly toEpochSeconds?: number | undefined;
@@ -179,8 +189,8 @@ export interface ReadingFilter {
 
 /** Where arrivals and their readings are kept. Every change of one has a line in the audit trail. */
 export interface ArrivalStore {
-  /** In the order in which they were brought in. `eventId` null: those that wait for an event. */
-  listArrivals(filter: { readonly stationId?: string | undefined; readonly eventId?: string | null | undefined; readonly limit: number }): Promise<StoredArrival[]>;
+  /** In the order in which they were brought in. */
+  listArrivals(filter: ArrivalFilter): Promise<StoredArrival[]>;
 
   loadArrival(id: number): Promise<StoredArrival | null>;
 

@@ -1,4 +1,4 @@
-import type { ArrivalSummary, ArrivalToSave, Doing, ReadingFilter, StoredArrival } from "#lib/application/ports.ts";
+import type { ArrivalFilter, ArrivalSummary, ArrivalToSave, Doing, ReadingFilter, StoredArrival } from "#lib/application/ports.ts";
 import type { GatheredReading } from "#lib/core/arrival/gathered-observations.ts";
 import type { QualityFlag } from "#lib/core/arrival/quality.ts";
 import { InputError } from "#lib/core/failures/input-error.ts";
@@ -15,9 +15,9 @@ type Transaction = Prisma.TransactionClient;
 
 const WITH_OBSERVATIONS = { readings: { orderBy: { id: "asc" } }, estimates: { orderBy: { id: "asc" } } } as const satisfies Prisma.ArrivalInclude;
 
-export async function listArrivals(reader: PrismaClient, filter: { stationId?: string | undefined; eventId?: string | null | undefined; limit: number }): Promise<StoredArrival[]> {
-  const { stationId, eventId, limit } = filter;
-  const where = { ...(stationId === undefined ? {} : { stationId }), ...(eventId === undefined ? {} : { eventId }) };
+export async function listArrivals(reader: PrismaClient, filter: ArrivalFilter): Promise<StoredArrival[]> {
+  const { stationId, eventId, afterId, limit } = filter;
+  const where = { ...(stationId === undefined ? {} : { stationId }), ...(eventId === undefined ? {} : { eventId }), ...(afterId === undefined ? {} : { id: { gt: afterId } }) };
   const rows = await reader.arrival.findMany({ where, orderBy: { id: "asc" }, take: limit, include: WITH_OBSERVATIONS });
   return rows.map(arrivalFromRow);
 }
@@ -42,10 +42,11 @@ export function arrivalSummary(row: Prisma.ArrivalGetPayload<object>): ArrivalSu
 }
 
 export async function listReadings(reader: PrismaClient, filter: ReadingFilter): Promise<GatheredReading[]> {
-  const { stationId, fromEpochSeconds, toEpochSeconds, limit } = filter;
+  const { stationId, afterId, fromEpochSeconds, toEpochSeconds, limit } = filter;
   const rows = await reader.reading.findMany({
     where: {
       ...(stationId === undefined ? {} : { arrival: { stationId } }),
+      ...(afterId === undefined ? {} : { id: { gt: afterId } }),
       arrivalEpochSeconds: { ...(fromEpochSeconds === undefined ? {} : { gte: fromEpochSeconds }), ...(toEpochSeconds === undefined ? {} : { lt: toEpochSeconds }) },
     },
     orderBy: { id: "asc" },

@@ -6,44 +6,53 @@ import { placedSummary } from "./localizations.ts";
 import { estimateFromRow, readingFromRow } from "./observations-from-rows.ts";
 import { descriptionFromRow, WHOLE_STATION } from "./station-from-row.ts";
 
-interface Counts {
+interface SummaryRow {
   readonly id: string;
-  readonly stations: bigint;
-  readonly readings: bigint;
-  readonly estimates: bigint;
-  readonly first: number | null;
+  readonly title: string;
+  readonly note: string;
+  readonly revision: bigint;
+  readonly savedEpochSeconds: number;
+  readonly stationCount: bigint | null;
+  readonly readingCount: bigint | null;
+  readonly estimateCount: bigint | null;
+  readonly firstArrivalEpochSeconds: number | null;
+  readonly number: bigint | null;
+  readonly outcome: string | null;
+  readonly latitudeDegrees: number | null;
+  readonly longitudeDegrees: number | null;
+  readonly originEpochSeconds: number | null;
 }
 
 export async function listEvents(reader: PrismaClient): Promise<EventSummary[]> {
-  const [events, counts, latest] = await Promise.all([
-    reader.event.findMany({ where: { mergedInto: null }, orderBy: { id: "asc" } }),
-    // Joined in the database: an answer of thousands of rows would be counted here otherwise.
-    reader.$queryRaw<Counts[]>`
-      SELECT a.event_id AS id, COUNT(DISTINCT a.station_id) AS stations, SUM(r.readings) AS readings, SUM(e.estimates) AS estimates, MIN(r.first) AS first
-      FROM arrivals a
-      LEFT JOIN (SELECT arrival_id, COUNT(*) AS readings, MIN(arrival_epoch_seconds) AS first FROM readings GROUP BY arrival_id) r ON r.arrival_id = a.id
-      LEFT JOIN (SELECT arrival_id, COUNT(*) AS estimates FROM estimates GROUP BY arrival_id) e ON e.arrival_id = a.id
-      WHERE a.event_id IS NOT NULL GROUP BY a.event_id`,
-    reader.localization.findMany({
-      where: { id: { in: (await reader.localization.groupBy({ by: ["eventId"], _max: { id: true } })).flatMap(({ _max }) => _max.id ?? []) } },
-      select: { eventId: true, number: true, outcome: true, latitudeDegrees: true, longitudeDegrees: true, originEpochSeconds: true },
-    }),
-  ]);
-  const countsOf = new Map(counts.map((row) => [row.id, row]));
-  const latestOf = new Map(latest.map((row) => [row.eventId, placedSummary(row)]));
+  // One statement, counted and joined in the database: all of it is of one moment, and no reading leaves it to be counted.
+  const rows = await reader.$queryRaw<SummaryRow[]>`
+    SELECT e.id, e.title, e.note, e.revision, e.saved_epoch_seconds AS savedEpochSeconds,
+      c.stationCount, c.readingCount, c.estimateCount, c.firstArrivalEpochSeconds,
+      l.number, l.outcome, l.latitude_degrees AS latitudeDegrees, l.longitude_degrees AS longitudeDegrees, l.origin_epoch_seconds AS originEpochSeconds
+    FROM events e
+    LEFT JOIN (
+      SELECT a.event_id, COUNT(DISTINCT a.station_id) AS stationCount,
+        SUM((SELECT COUNT(*) FROM readings r WHERE r.arrival_id = a.id)) AS readingCount,
+        SUM((SELECT COUNT(*) FROM estimates s WHERE s.arrival_id = a.id)) AS estimateCount,
+        MIN((SELECT MIN(r.arrival_epoch_seconds) FROM readings r WHERE r.arrival_id = a.id)) AS firstArrivalEpochSeconds
+      FROM arrivals a WHERE a.event_id IS NOT NULL GROUP BY a.event_id
+    ) c ON c.event_id = e.id
+    LEFT JOIN localizations l ON l.event_id = e.id AND l.number = (SELECT MAX(k.number) FROM localizations k WHERE k.event_id = e.id)
+    WHERE e.merged_into IS NULL
+    ORDER BY firstArrivalEpochSeconds DESC NULLS LAST, e.id`;
+  return rows.map(summaryFromRow);
+}
 
-  const summaries = events.map(({ id, title, note, revision, savedEpochSeconds }) => ({
-    ...{ id, title, note, revision },
-    stationCount: Number(countsOf.get(id)?.stations ?? 0),
-    readingCount: Number(countsOf.get(id)?.readings ?? 0),
-    estimateCount: Number(countsOf.get(id)?.estimates ?? 0),
-    firstArrivalEpochSeconds: countsOf.get(id)?.first ?? null,
-    savedEpochSeconds,
-    latest: latestOf.get(id) ?? null,
-  }));
-  return summaries.sort(
-    (a, b) => (b.firstArrivalEpochSeconds ?? Number.MIN_SAFE_INTEGER) - (a.firstArrivalEpochSeconds ?? Number.MIN_SAFE_INTEGER),
-  );
+function summaryFromRow(row: SummaryRow): EventSummary {
+  const { id, title, note, revision, savedEpochSeconds, stationCount, readingCount, estimateCount, firstArrivalEpochSeconds, number, outcome, ...placed } = row;
+  return {
+    ...{ id, title, note, savedEpochSeconds, firstArrivalEpochSeconds },
+    revision: Number(revision),
+    stationCount: Number(stationCount ?? 0),
+    readingCount: Number(readingCount ?? 0),
+    estimateCount: Number(estimateCount ?? 0),
+    latest: number === null || outcome === null ? null : placedSummary({ number: Number(number), outcome, ...placed }),
+  };
 }
 
 export async function loadEvent(reader: PrismaClient, id: string): Promise<StoredEvent | null> {

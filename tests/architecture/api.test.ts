@@ -135,6 +135,6 @@ describe("the published description", () => {
     });
     expect(JSON.stringify(bringIn?.responses)).not.toContain("additionalProperties");
     const query = describedOperations.find(({ operationId }) => operationId === "listReadings")?.parameters;
-    expect(query).toMatchObject([{ name: "station", in: "query" }, { name: "from" }, { name: "to", schema: { description: expect.stringContaining("ISO 8601") as string } }, { name: "limit" }]);
+    expect(query).toMatchObject([{ name: "station", in: "query" }, { name: "from" }, { name: "to", schema: { description: expect.stringContaining("ISO 8601") as string } }, { name: "after" }, { name: "limit" }]);
   });
 });

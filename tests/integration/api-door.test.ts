@@ -1,10 +1,11 @@
-import { spawnSync } from "node:child_process";
+import { setTimeout as pause } from "node:timers/promises";
 import { afterAll, beforeAll, describe, expect, test } from "vitest";
 import * as z from "zod/mini";
 import { problemsShape } from "#lib/contracts/api/api-document.ts";
 import { MOST_JSON_BYTES } from "#lib/contracts/api/operation.ts";
 import { OPERATIONS } from "#lib/contracts/api/operations.ts";
 import { send, type ApiAnswer } from "#tests/support/api-client.ts";
+import { processFamily } from "#tests/support/process-family.ts";
 import { serveDemo, type ServedDemo } from "#tests/support/served-demo.ts";
 
 let demo: ServedDemo;
@@ -160,10 +161,6 @@ describe("the programming interface", () => {
 
 /** Memory that the server holds, with the processes that it started. */
 async function serversMegabytes(): Promise<number> {
-  await new Promise((later) => setTimeout(later, 300));
-  const { stdout } = spawnSync("ps", ["-eo", "pid=,ppid=,rss="], { encoding: "utf8" });
-  const rows = stdout.trim().split("\n").map((line) => line.trim().split(/\s+/).map(Number));
-  const family = new Set([demo.processId]);
-  for (const [pid = 0, parent = 0] of rows) if (family.has(parent)) family.add(pid);
-  return rows.filter(([pid = 0]) => family.has(pid)).reduce((sum, [, , kilobytes = 0]) => sum + kilobytes / 1000, 0);
+  await pause(300);
+  return processFamily(demo.processId).reduce((sum, { megabytes }) => sum + megabytes, 0);
 }

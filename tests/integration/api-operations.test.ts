@@ -54,7 +54,18 @@ test("readings are brought in as an arrival, with the errors that were given or 
   const waiting = (await succeed("listArrivals", { query: { waiting: "yes", station: "wic" } })).body["arrivals"];
   expect(waiting).toStrictEqual([made.body]);
   expect((await succeed("listArrivals", { query: { event: "tern" } })).body["arrivals"]).toMatchObject([{ station: "wic" }, { station: "fen" }]);
-  expect((await succeed("listArrivals", { query: { limit: "2" } })).body["arrivals"]).toHaveLength(2);
+
+  // Page by page, every one comes once and none is missed.
+  const paged: number[] = [];
+  for (let after = "0"; ; after = String(paged.at(-1))) {
+    const page = (await succeed("listArrivals", { query: { limit: "7", after } })).body["arrivals"] as { id: number }[];
+    paged.push(...page.map((arrival) => arrival.id));
+    if (page.length < 7) break;
+  }
+  const whole = (await succeed("listArrivals", { query: { limit: "99999" } })).body["arrivals"] as { id: number }[];
+  expect(paged).toStrictEqual(whole.map((arrival) => arrival.id));
+  const [second] = (await succeed("listReadings", { query: { after: "1", limit: "1" } })).body["readings"] as { id: number }[];
+  expect(second?.id).toBe(2);
 });
 
 test("an estimate is brought in with the errors that are taken where none are given", async () => {

@@ -9,6 +9,8 @@ import { STATION_OPERATIONS } from "./station-operations.ts";
 
 const LIMIT_WANTED = "a whole number from 1 to 99999";
 const limitField = z.optional(z.string().check(z.regex(/^[1-9]\d{0,4}$/, LIMIT_WANTED)).register(z.globalRegistry, { description: LIMIT_WANTED }));
+const AFTER_WANTED = "the id of the last one that is known already; those after it are given";
+const afterField = z.optional(z.string().check(z.regex(/^\d{1,9}$/, AFTER_WANTED)).register(z.globalRegistry, { description: AFTER_WANTED }));
 const stationFilter = z.optional(z.string().register(z.globalRegistry, { description: "a station's id" }));
 const eventFilter = z.optional(z.string().register(z.globalRegistry, { description: "an event's id" }));
 /** An arrival that waits has no event to be found by. */
@@ -28,7 +30,7 @@ export const OPERATIONS = {
   listReadings: operation({
     id: "listReadings", method: "GET", path: "/api/v1/readings", role: "reader",
     summary: "Readings in the order in which they were brought in, by station and time (the first moment counts, the last does not); 1000 unless limit says otherwise.",
-    query: z.strictObject({ station: stationFilter, from: z.optional(timeField), to: z.optional(timeField), limit: limitField }),
+    query: z.strictObject({ station: stationFilter, from: z.optional(timeField), to: z.optional(timeField), after: afterField, limit: limitField }),
     gives: z.object({ readings: z.array(readingShape) }),
   }),
   flagReading: operation({
@@ -39,8 +41,8 @@ export const OPERATIONS = {
   }),
   listArrivals: operation({
     id: "listArrivals", method: "GET", path: "/api/v1/arrivals", role: "reader",
-    summary: "Arrivals in the order in which they were brought in, by station and event (waiting=yes: those of no event); 200 unless limit says otherwise.",
-    query: z.strictObject({ station: stationFilter, event: eventFilter, waiting: z.optional(choiceField(["yes"])), limit: limitField }).check(notOfEvent),
+    summary: "Arrivals in the order in which they were brought in, by station and event (waiting=yes: those of no event); 50 unless limit says otherwise.",
+    query: z.strictObject({ station: stationFilter, event: eventFilter, waiting: z.optional(choiceField(["yes"])), after: afterField, limit: limitField }).check(notOfEvent),
     gives: z.object({ arrivals: z.array(arrivalShape) }),
   }),
   bringInArrival: operation({

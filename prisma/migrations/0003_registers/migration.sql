@@ -92,7 +92,8 @@ ORDER BY r.event_id, r.ordinal;
 
 DROP TABLE readings;
 ALTER TABLE readings_of_arrivals RENAME TO readings;
-CREATE INDEX readings_arrival_id_idx ON readings (arrival_id);
+-- With the time in it: an event's first arrival and a station's last reading are found without touching the readings.
+CREATE INDEX readings_arrival_id_arrival_epoch_seconds_idx ON readings (arrival_id, arrival_epoch_seconds);
 
 CREATE TABLE estimates_of_arrivals (
   id INTEGER NOT NULL PRIMARY KEY AUTOINCREMENT,
