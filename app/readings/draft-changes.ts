@@ -71,19 +71,21 @@ function restored(rows: readonly DraftRow[], { row, index }: { row: DraftRow; in
 function withPasted(rows: readonly DraftRow[], { key, rows: pasted }: { key: number; rows: readonly PastedRow[] }): DraftRow[] {
   const at = rows.findIndex((row) => row.key === key);
   const into = rows[at];
-  let date = into?.date ?? "";
+  if (into === undefined) return [...rows];
+  let { date } = into;
   const first = nextKey(rows);
   const made = pasted.map((row, i): DraftRow => {
     date = row.date ?? date;
     return { ...EMPTY_ROW, ...row, date, key: first + i };
   });
-  const kept = into === undefined || isBlank(into) ? [] : [into];
+  const kept = isBlank(into) ? [] : [into];
   return [...rows.slice(0, at), ...kept, ...made, ...rows.slice(at + 1)];
 }
 
 function withColumn(rows: readonly DraftRow[], { key, field, values }: { key: number; field: RowField; values: readonly string[] }): DraftRow[] {
   const at = rows.findIndex((row) => row.key === key);
   const all = [...rows];
+  if (at < 0) return all;
   while (all.length < at + values.length) all.push(newRow(all));
   return all.map((row, i) => (i < at || i >= at + values.length ? row : changedRow(row, { [field]: values[i - at] ?? "" })));
 }

@@ -56,7 +56,7 @@ export function useBringingIn(given: {
   };
   return {
     ...{ stations, events, keeping: keeping as Keeping & { forget: () => void } },
-    stationMessage: (left.isShown("station") ? faults.station : null) ?? keeping.refused.station,
+    stationMessage: (left.isShown("station") || draft.station.id !== "" ? faults.station : null) ?? keeping.refused.station,
     titleMessage: (left.isShown("title") ? faults.title : null) ?? keeping.refused.title,
     eventMessage: (left.isShown("event") ? faults.event : null) ?? keeping.refused.event,
     rowIssues: (row: DraftRow, read: ReadRow): readonly RowIssue[] => {

@@ -60,7 +60,8 @@ function remarks(line: DispersionLine, { gravity, timed }: EstimationSettings): 
   const shortened = shortenedBy(line, { gravity, ...timed });
   const rows = line.downweightedRows.map(String);
   return [
-    ...(shortened >= WORTH_SAYING
+    // Where the distance is weak by it, the line's own note says so at more length.
+    ...(shortened >= WORTH_SAYING && line.notes.every(({ code }) => code !== "timed-distance-weak")
       ? [`Periods timed at a moment make a storm look too far; the line as read (dashed) gave ${percentWords(shortened)} more.`]
       : []),
     ...(rows.length > 0 ? [`${rows.length === 1 ? "Reading" : "Readings"} ${listWords(rows)} lie${rows.length === 1 ? "s" : ""} off the line and count${rows.length === 1 ? "s" : ""} less.`] : []),
