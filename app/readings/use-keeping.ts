@@ -13,7 +13,14 @@ export interface Keeping {
   readonly done: { readonly words: string; readonly event: { readonly id: string; readonly title: string } | null } | null;
 }
 
-const NOTHING: readonly Issue[] = [];
+interface Said {
+  readonly issues: readonly Issue[];
+  /** Of the rows that were sent. */
+  readonly keys: readonly number[];
+  readonly done: Keeping["done"];
+}
+
+const UNSAID: Said = { issues: [], keys: [], done: null };
 
 /** Brings readings in, once: a try that was not answered is taken up again where it broke off. */
 export function useKeeping(): Keeping & {
@@ -25,7 +32,7 @@ export function useKeeping(): Keeping & {
 } {
   const router = useRouter();
   const [isBusy, setIsBusy] = useState(false);
-  const [state, setState] = useState<{ issues: readonly Issue[]; keys: readonly number[]; done: Keeping["done"] }>({ issues: NOTHING, keys: [], done: null });
+  const [state, setState] = useState(UNSAID);
   const [tried, setTried] = useState<{ what: string; progress: Progress }>({ what: "", progress: NO_PROGRESS });
   const refused = placeIssues(state.issues, state.keys);
   return {
@@ -34,11 +41,11 @@ export function useKeeping(): Keeping & {
     refusals: refused.others,
     done: state.done,
     hold: (sentence) => { setState({ issues: [{ path: "", message: sentence }], keys: [], done: null }); },
-    forget: () => { setState((before) => (before.issues === NOTHING && before.done === null ? before : { issues: NOTHING, keys: [], done: null })); },
+    forget: () => { setState(UNSAID); },
     start: async (bringing, keys, words) => {
       if (isBusy) return null;
       setIsBusy(true);
-      setState({ issues: NOTHING, keys, done: null });
+      setState(UNSAID);
       const what = JSON.stringify([bringing.stationId, bringing.placed, bringing.readings]);
       const outcome = await bringIn(bringing, what === tried.what ? tried.progress : NO_PROGRESS);
       setIsBusy(false);
@@ -48,7 +55,7 @@ export function useKeeping(): Keeping & {
         return null;
       }
       setTried({ what: "", progress: NO_PROGRESS });
-      setState({ issues: NOTHING, keys, done: { words: words.done, event: outcome.event && { id: outcome.event.id, title: outcome.event.title === "" ? words.eventTitle : outcome.event.title } } });
+      setState({ ...UNSAID, done: { words: words.done, event: outcome.event && { id: outcome.event.id, title: outcome.event.title === "" ? words.eventTitle : outcome.event.title } } });
       router.refresh();
       return outcome;
     },
