@@ -2,11 +2,12 @@ import { ListMessage, TextField } from "./issues.tsx";
 import { nextRow, type AliasDraft } from "./station-draft.ts";
 import styles from "./station-form.module.css";
 
-/** Other names that the station goes by, such as its WMO number. */
+/** Other names that the station goes by. */
 export function AliasFields({ aliases, onChange }: { aliases: readonly AliasDraft[]; onChange: (aliases: readonly AliasDraft[]) => void }) {
   return (
-    <section className={styles.section} aria-label="Other names">
-      <h2 className={styles.heading}>Other names</h2>
+    <section className={styles.section} aria-label="Aliases">
+      <h2 className={styles.heading}>Aliases</h2>
+      <p className={styles.hint}>Other names that it goes by, such as its WMO number; each belongs to one station.</p>
       <ListMessage path="aliases" />
       {aliases.map((alias, place) => {
         const of = (key: "scheme" | "value") => ({
@@ -16,14 +17,14 @@ export function AliasFields({ aliases, onChange }: { aliases: readonly AliasDraf
         });
         return (
           <fieldset key={alias.row} className={styles.line}>
-            <legend className="for-screen-readers">Other name {place + 1}</legend>
+            <legend className="for-screen-readers">Alias {place + 1}</legend>
             <TextField {...of("scheme")} label="Kind" hint="as wmo" className={styles.narrow} />
             <TextField {...of("value")} label="Name or number" />
-            <button type="button" className={styles.button} aria-label={`Remove other name ${place + 1}`} onClick={() => { onChange(aliases.filter(({ row }) => row !== alias.row)); }}>Remove</button>
+            <button type="button" className={styles.button} aria-label={`Remove alias ${place + 1}`} onClick={() => { onChange(aliases.filter(({ row }) => row !== alias.row)); }}>Remove</button>
           </fieldset>
         );
       })}
-      <button type="button" className={styles.button} onClick={() => { onChange([...aliases, { row: nextRow(aliases), scheme: aliases.length === 0 ? "wmo" : "", value: "" }]); }}>Add another name</button>
+      <button type="button" className={styles.button} onClick={() => { onChange([...aliases, { row: nextRow(aliases), scheme: aliases.length === 0 ? "wmo" : "", value: "" }]); }}>Add an alias</button>
     </section>
   );
 }

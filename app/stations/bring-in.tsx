@@ -4,7 +4,7 @@ import type { StationsReportJson } from "#lib/contracts/api/stations.ts";
 import { counted } from "#lib/presentation/numbers-in-words.ts";
 import { askToTakeIn, type TakenIn } from "./ask-to-take-in.ts";
 import styles from "./bring-in.module.css";
-import { Preview } from "./preview.tsx";
+import { Preview, previewWords } from "./preview.tsx";
 
 interface ChosenFile {
   readonly name: string;
@@ -58,10 +58,16 @@ export function BringIn() {
           Columns that it lacks leave what is stored; empty cells clear it. A station’s deployments become all those of the file; stations that it does not name stay.
         </p>
       </div>
-      <p role="status" className={state.kind === "asking" ? styles.busy : undefined}>{state.kind === "asking" && state.words}</p>
+      <p role="status" className={state.kind === "asking" ? styles.busy : "for-screen-readers"}>{statusWords(state)}</p>
       {state.kind === "answered" && <Answered {...state} onStore={store} onLook={look} onPutAway={() => { setState({ kind: "waiting" }); }} />}
     </div>
   );
+}
+
+/** What has come about, for who does not see the page change; problems are an alert of their own. */
+function statusWords(state: State): string {
+  if (state.kind === "asking") return state.words;
+  return state.kind === "answered" && state.answer.kind === "report" ? `${previewWords(state.file.name, state.answer.report)}.` : "";
 }
 
 function Answered(props: { file: ChosenFile; answer: TakenIn; onStore: (file: ChosenFile, report: StationsReportJson) => Promise<void>; onLook: (file: ChosenFile) => Promise<void>; onPutAway: () => void }) {

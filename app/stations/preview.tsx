@@ -17,7 +17,7 @@ export function Preview({ fileName, report, onStore, onPutAway }: { fileName: st
   const isIdle = added.length + changed.length === 0;
   return (
     <section aria-label={stored ? "What was stored" : "Preview"} className={styles.preview}>
-      <h2 className={styles.heading} role="status">{stored ? `${fileName} is stored` : isIdle ? `${fileName} says nothing new` : `${fileName}: nothing is stored yet`}</h2>
+      <h2 className={styles.heading}>{previewWords(fileName, report)}</h2>
       <p className={styles.sums}>
         {counted(added.length, "new station")}, {changed.length} changed, {unchanged.length} unchanged.
       </p>
@@ -33,6 +33,11 @@ export function Preview({ fileName, report, onStore, onPutAway }: { fileName: st
       {unchanged.length > 0 && <Named heading="Unchanged" ids={unchanged} isLinked />}
     </section>
   );
+}
+
+export function previewWords(fileName: string, { stored, added, changed }: StationsReportJson): string {
+  if (stored) return `${fileName} is stored`;
+  return added.length + changed.length === 0 ? `${fileName} says nothing new` : `${fileName}: nothing is stored yet`;
 }
 
 function Named({ heading, ids, isLinked }: { heading: string; ids: readonly string[]; isLinked: boolean }) {

@@ -19,7 +19,7 @@ const HEADS: readonly { readonly column: RegisterColumn; readonly words: string 
   { column: "position", words: "position" },
   { column: "sensor", words: "sensor" },
   { column: "deployments", words: "deployments" },
-  { column: "aliases", words: "other names" },
+  { column: "aliases", words: "aliases" },
   { column: "group", words: "group" },
   { column: "visibility", words: "seen by" },
   { column: "last-reading", words: "last reading" },

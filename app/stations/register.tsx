@@ -3,7 +3,7 @@
 import dynamic from "next/dynamic";
 import Link from "next/link";
 import { useCallback, useDeferredValue, useId, useMemo } from "react";
-import { counted } from "#lib/presentation/numbers-in-words.ts";
+import { figure } from "#lib/presentation/figures.ts";
 import { positionWords } from "#lib/presentation/positions.ts";
 import { chosenRows, type RegisterRow } from "#lib/presentation/register-rows.ts";
 import { addressOf } from "./address.ts";
@@ -53,7 +53,7 @@ export function Register({ rows }: { rows: readonly RegisterRow[] }) {
           <>
             <div className={styles.filter}>
               <label htmlFor={filterId}>Filter</label>
-              <input id={filterId} type="search" value={view.filter} placeholder="id, name, other name or group" autoComplete="off" spellCheck={false} onChange={({ target }) => { change({ filter: target.value }); }} />
+              <input id={filterId} type="search" value={view.filter} placeholder="id, name, alias or group" autoComplete="off" spellCheck={false} onChange={({ target }) => { change({ filter: target.value }); }} />
             </div>
             <RegisterTable rows={shown} chosenId={view.chosen} order={view.order} onChoose={choose} onOrder={(order) => { change({ order }); }} />
           </>
@@ -73,5 +73,6 @@ function Empty() {
 }
 
 function countWords(all: number, shown: number): string {
-  return shown === all ? counted(all, "station") : `${shown} of ${counted(all, "station")}`;
+  const total = all === 1 ? "1 station" : `${figure(all)} stations`;
+  return shown === all ? total : `${figure(shown)} of ${total}`;
 }

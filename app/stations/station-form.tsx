@@ -65,9 +65,9 @@ export function StationForm({ station }: { station: StationJson | null }) {
     <form ref={form} className={styles.form} noValidate onSubmit={(event) => { void save(event); }}>
       <IssuesOf issues={issues}>
         {station === null && (
-          <section className={styles.section} aria-label="Id">
+          <div className={styles.section}>
             <TextField path="id" label="Id" hint="by which files and programs name the station; it cannot be changed later" value={draft.id} onChange={(id) => { change({ id }); }} className={styles.narrow} />
-          </section>
+          </div>
         )}
         <DeploymentFields deployments={draft.deployments} onChange={(deployments) => { change({ deployments }); }} />
         <AliasFields aliases={draft.aliases} onChange={(aliases) => { change({ aliases }); }} />

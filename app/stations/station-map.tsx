@@ -72,7 +72,8 @@ function Dots({ window, shown, chosenId, onChoose }: Omit<MapProps, "all"> & { w
   const choose = useRef(onChoose);
   useEffect(() => { choose.current = onChoose; }, [onChoose]);
   useEffect(() => {
-    const own = new Map(shown.map((row) => [row.id, dot(window, row, (id) => { choose.current(id); })]));
+    const radius = shown.length > MANY ? 3 : 5;
+    const own = new Map(shown.map((row) => [row.id, dot(window, row, radius, (id) => { choose.current(id); })]));
     const layer = layerGroup([...own.values()]).addTo(map);
     for (const { id, name } of shown) nameDot(own.get(id)?.getElement(), `${name}, ${id}`);
     dots.current = own;
@@ -87,8 +88,11 @@ function Dots({ window, shown, chosenId, onChoose }: Omit<MapProps, "all"> & { w
   return null;
 }
 
-function dot(window: ChartWindow, { id, position }: RegisterRow, choose: (id: string) => void): CircleMarker {
-  const marker = circleMarker(pointInWindow(window, position), { radius: 5, className: styles.dot ?? "", bubblingMouseEvents: false });
+/** Of more stations than this, dots of the usual size would hide one another. */
+const MANY = 300;
+
+function dot(window: ChartWindow, { id, position }: RegisterRow, radius: number, choose: (id: string) => void): CircleMarker {
+  const marker = circleMarker(pointInWindow(window, position), { radius, className: styles.dot ?? "", bubblingMouseEvents: false });
   return marker.on("click", () => { choose(id); });
 }
 

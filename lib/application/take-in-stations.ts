@@ -82,7 +82,7 @@ function requireFreeAliases({ stations, problems }: StationRegister, all: readon
       const found = `${scheme}:${value}`;
       const owner = ownerOf.get(found);
       if (owner === undefined) continue;
-      problems.add({ code: "alias-taken", row: aliasRow, column: "aliases", found, wanted: `other names that no other station has; this one is the stored station "${owner}"'s` });
+      problems.add({ code: "alias-taken", row: aliasRow, column: "aliases", found, wanted: `aliases that no other station has; this one is the stored station "${owner}"'s` });
     }
   }
   problems.throwIfAny();

@@ -16,7 +16,6 @@ const FIELD_WORDS: Readonly<Record<string, string>> = {
   embargo_until: "embargo until",
   clock_corrections: "clock corrections",
   doi: "DOI",
-  aliases: "other names",
 };
 
 /** "licence", or "depth, m, of deployment 2". */

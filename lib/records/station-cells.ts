@@ -30,7 +30,7 @@ export function readDoi(place: CellPlace): string | null {
 
 /** Other names as `scheme:value`, each once. */
 export function readAliases(place: CellPlace): StationAlias[] | null {
-  const wanted = `at most ${MOST_ALIASES} other names as scheme:value, each once, separated by spaces, such as wmo:46001 port:OTT-2`;
+  const wanted = `at most ${MOST_ALIASES} aliases as scheme:value, each once, separated by spaces, such as wmo:46001 port:OTT-2`;
   return readOwn(place, wanted, (text) => {
     const aliases = text.split(/\s+/).map(readAlias);
     const good = aliases.filter((alias) => alias !== null);

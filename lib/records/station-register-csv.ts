@@ -143,7 +143,7 @@ function reportSharedAliases(stations: readonly RegisterStation[], problems: Pro
       const found = `${scheme}:${value}`;
       const owner = ownerOf.get(found);
       if (owner === undefined) ownerOf.set(found, station);
-      else problems.add({ code: "alias-taken", row: station.aliasRow, column: "aliases", found, wanted: `other names that no other station has; row ${owner.aliasRow} gives this one to "${owner.id}"` });
+      else problems.add({ code: "alias-taken", row: station.aliasRow, column: "aliases", found, wanted: `aliases that no other station has; row ${owner.aliasRow} gives this one to "${owner.id}"` });
     }
   }
 }

@@ -1,8 +1,10 @@
+import fc from "fast-check";
 import { describe, expect, test } from "vitest";
 import { exportStations } from "#lib/application/export-stations.ts";
 import { previewStations, takeInStations } from "#lib/application/take-in-stations.ts";
 import { InputError } from "#lib/core/failures/input-error.ts";
 import type { Store } from "#lib/store/open-store.ts";
+import { describedStations } from "#tests/support/described-stations.ts";
 import { inventedEvent } from "#tests/support/invented-event.ts";
 import { inventedStationFile, inventedStations } from "#tests/support/station-file.ts";
 import { temporaryStore } from "#tests/support/temporary-store.ts";
@@ -37,6 +39,17 @@ describe("stations taken in from a file", () => {
     expect(await take(store, text)).toMatchObject({ added: [], changed: [], unchanged: stored.map(({ id }) => id) });
     expect((await store.listStations()).map(({ revision }) => revision)).toStrictEqual(stored.map(() => 1));
     expect(await store.listAudit({ subject: "station st0001", limit: 9 })).toHaveLength(1);
+  });
+
+  test("come back from the database to the last digit and letter, whatever they hold", async () => {
+    for (const described of fc.sample(describedStations, { numRuns: 12, seed: 7 })) {
+      const { store } = await temporaryStore();
+      await store.saveStations(described.map((description) => ({ description, startedFrom: 0 })), DOING);
+      const byId = described.toSorted((a, b) => (a.id < b.id ? -1 : 1));
+      const stored = await store.listStations();
+      expect(stored.toSorted((a, b) => (a.id < b.id ? -1 : 1))).toStrictEqual(byId.map((one) => ({ ...one, revision: 1, arrivalCount: 0, lastReadingEpochSeconds: null })));
+      expect(await take(store, await exportStations(store))).toMatchObject({ added: [], changed: [] });
+    }
   });
 
   test("are told field by field before anything is stored, and stored as told", async () => {

@@ -30,7 +30,7 @@ const FAST_WANTED = `by how many seconds the clock was fast, up to ${MOST_FAST_B
 
 const aliasShape = z.strictObject({
   scheme: testedField(`what kind of name this is, such as wmo, in 1 to ${STATION_LETTERS.aliasScheme} small letters, digits and hyphens, a letter first`, (text) => ALIAS_SCHEME.test(text) && text.length <= STATION_LETTERS.aliasScheme),
-  value: testedField(`the other name, 1 to ${STATION_LETTERS.aliasValue} letters without a space`, (text) => ALIAS_VALUE.test(text) && text.length <= STATION_LETTERS.aliasValue),
+  value: testedField(`an alias, 1 to ${STATION_LETTERS.aliasValue} letters without a space`, (text) => ALIAS_VALUE.test(text) && text.length <= STATION_LETTERS.aliasValue),
 });
 
 const legShape = z.strictObject({
@@ -102,7 +102,7 @@ const eachAliasOnce = z.check<{ scheme: string; value: string }[]>(({ value, iss
   const seen = new Set<string>();
   for (const [place, alias] of value.entries()) {
     const name = `${alias.scheme}:${alias.value}`;
-    if (seen.has(name)) issues.push({ code: "custom", path: [place, "value"], message: "each other name once", input: value });
+    if (seen.has(name)) issues.push({ code: "custom", path: [place, "value"], message: "each alias once", input: value });
     seen.add(name);
   }
 });
@@ -111,7 +111,7 @@ const eachAliasOnce = z.check<{ scheme: string; value: string }[]>(({ value, iss
 export const newStationShape = z.strictObject({
   revision: countField({ wanted: "the revision that the change starts from, 0 for a new station", from: 0 }),
   deployments: listField(deploymentShape, { wanted: `a list of 1 to ${MOST_DEPLOYMENTS} deployments`, least: 1, most: MOST_DEPLOYMENTS }).check(apart("deployments")),
-  aliases: z.optional(listField(aliasShape, { wanted: `a list of at most ${MOST_ALIASES} other names`, most: MOST_ALIASES }).check(eachAliasOnce)),
+  aliases: z.optional(listField(aliasShape, { wanted: `a list of at most ${MOST_ALIASES} aliases`, most: MOST_ALIASES }).check(eachAliasOnce)),
   clockCorrections: z.optional(listField(correctionShape, { wanted: `a list of at most ${MOST_CLOCK_CORRECTIONS} clock corrections`, most: MOST_CLOCK_CORRECTIONS }).check(apart("clock corrections"))),
   group: lineOrNothing(STATION_LETTERS.group),
   licence: lineOrNothing(STATION_LETTERS.licence),
