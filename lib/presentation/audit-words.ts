@@ -1,4 +1,4 @@
-import { counted } from "./numbers-in-words.ts";
+import { counted, listWords } from "./numbers-in-words.ts";
 import { QUALITY_WORDS } from "./quality-words.ts";
 import { momentWords } from "./times.ts";
 
@@ -24,6 +24,7 @@ interface Detail {
   readonly arrivals?: readonly number[] | number;
   readonly number?: number;
   readonly readings?: number;
+  readonly stations?: readonly string[];
   readonly before?: unknown;
   readonly after?: unknown;
 }
@@ -47,6 +48,8 @@ function whatWords(action: string, detail: Detail, eventId: string): string {
       return `moved ${counted(count, "arrival")} to ${to ?? "another event"}`;
     case "events merged":
       return into === eventId ? `took in ${counted(count, "arrival")} of ${from ?? "another event"}` : `merged it into ${into ?? "another event"}`;
+    case "stations described anew":
+      return `described ${listWords(detail.stations ?? [])} anew`;
     case "reading flagged":
       return `flagged a reading of ${station} ${flagWords(after)}, ${flagWords(before)} before`;
     default:

@@ -3,6 +3,7 @@ import type { Doing, StationToSave, StoredStation } from "#lib/application/ports
 import type { StationDescription } from "#lib/core/arrival/station-description.ts";
 import { Refusal } from "#lib/core/failures/refusal.ts";
 import { addToAudit } from "./audit.ts";
+import { changeEvent } from "./event-change.ts";
 import { Prisma, type PrismaClient } from "./generated/client.ts";
 import { deploymentRow } from "./observation-rows.ts";
 import { requireRevision } from "./stale.ts";
@@ -51,6 +52,7 @@ export async function saveStations(transaction: Transaction, stations: readonly 
   await saveAliases(transaction, descriptions, before);
   await saveDeployments(transaction, descriptions.filter(({ id, deployments }) => !isDeepStrictEqual(before.get(id)?.description.deployments, deployments)));
   await saveClockCorrections(transaction, descriptions, before);
+  await tellEvents(transaction, descriptions.filter((after) => changesAnswers(before.get(after.id), after)), doing);
   const lines = descriptions.map((after) => auditRow(after, before.get(after.id) ?? null, doing));
   await insertRows(transaction, "audit_entries (at_epoch_seconds, actor, action, subject, detail_json)", lines.map((line) => [line.atEpochSeconds, line.actor, line.action, line.subject, line.detail]));
 }
@@ -134,6 +136,23 @@ async function saveClockCorrections(transaction: Transaction, descriptions: read
   await inChunks([...before.keys()], (ids) => transaction.clockCorrection.deleteMany({ where: { stationId: { in: ids } } }));
   const rows = descriptions.flatMap(({ id, clockCorrections }) => clockCorrections.map((correction, ordinal) => ({ ...correction, stationId: id, ordinal })));
   await inChunks(rows, (data) => transaction.clockCorrection.createMany({ data }));
+}
+
+/** Whether answers that this station has a part in come out otherwise than before. */
+function changesAnswers(before: Before | undefined, after: StationDescription): boolean {
+  if (before === undefined) return false;
+  const { deployments, clockCorrections } = before.description;
+  return !isDeepStrictEqual([deployments, clockCorrections], [after.deployments, after.clockCorrections]);
+}
+
+/** Counts the revision of every event that these stations have a part in up, so that whoever works on one is told. */
+async function tellEvents(transaction: Transaction, descriptions: readonly StationDescription[], doing: Doing): Promise<void> {
+  const stationsOf = new Map<string, string[]>();
+  await inChunks(descriptions.map(({ id }) => id), async (ids) => {
+    const parts = await transaction.arrival.findMany({ where: { stationId: { in: ids }, eventId: { not: null } }, distinct: ["eventId", "stationId"], select: { eventId: true, stationId: true } });
+    for (const { eventId, stationId } of parts) if (eventId !== null) stationsOf.set(eventId, [...(stationsOf.get(eventId) ?? []), stationId]);
+  });
+  for (const [id, stations] of stationsOf) await changeEvent(transaction, { id, action: "stations described anew", detail: { stations } }, doing);
 }
 
 function auditRow(after: StationDescription, before: Before | null, { actor, savedEpochSeconds }: Doing) {

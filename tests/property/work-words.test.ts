@@ -125,6 +125,7 @@ test("an event's audit trail says what was done, from the event's own side", () 
   expect(said("events merged", { into: "petrel", from: "tern", arrivals: [1, 2] })).toBe("1 Jan 1970 00:00 UTC, me: took in 2 arrivals of tern.");
   expect(said("events merged", { into: "heron", from: "petrel", arrivals: [1] })).toBe("1 Jan 1970 00:00 UTC, me: merged it into heron.");
   expect(said("event split", { to: "x", arrivals: [3] })).toBe("1 Jan 1970 00:00 UTC, me: moved 1 arrival to x.");
+  expect(said("stations described anew", { stations: ["ott", "lan"] })).toBe("1 Jan 1970 00:00 UTC, me: described ott and lan anew.");
   expect(said("localization saved", { number: 4 })).toBe("1 Jan 1970 00:00 UTC, me: kept answer 4.");
   expect(said("reading flagged", { station: "ott", before: 2, after: 4 })).toBe("1 Jan 1970 00:00 UTC, me: flagged a reading of ott bad, not evaluated before.");
 });
