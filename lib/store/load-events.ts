@@ -44,14 +44,18 @@ export async function listEvents(reader: PrismaClient): Promise<EventSummary[]> 
 }
 
 function summaryFromRow(row: SummaryRow): EventSummary {
-  const { id, title, note, revision, savedEpochSeconds, stationCount, readingCount, estimateCount, firstArrivalEpochSeconds, number, outcome, ...placed } = row;
+  const { number, outcome, latitudeDegrees, longitudeDegrees, originEpochSeconds } = row;
   return {
-    ...{ id, title, note, savedEpochSeconds, firstArrivalEpochSeconds },
-    revision: Number(revision),
-    stationCount: Number(stationCount ?? 0),
-    readingCount: Number(readingCount ?? 0),
-    estimateCount: Number(estimateCount ?? 0),
-    latest: number === null || outcome === null ? null : placedSummary({ number: Number(number), outcome, ...placed }),
+    id: row.id,
+    title: row.title,
+    note: row.note,
+    revision: Number(row.revision),
+    stationCount: Number(row.stationCount ?? 0),
+    readingCount: Number(row.readingCount ?? 0),
+    estimateCount: Number(row.estimateCount ?? 0),
+    firstArrivalEpochSeconds: row.firstArrivalEpochSeconds,
+    savedEpochSeconds: row.savedEpochSeconds,
+    latest: number === null || outcome === null ? null : placedSummary({ number: Number(number), outcome, latitudeDegrees, longitudeDegrees, originEpochSeconds }),
   };
 }
 

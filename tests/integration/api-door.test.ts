@@ -146,6 +146,9 @@ describe("the programming interface", () => {
     for (const [written, id] of [["a%2Fb", "a/b"], ["%C3%A9%F0%9F%8C%8A", "é🌊"], ["..%2F..%2Fstations", "../../stations"], ["%22%3B--", '";--'], ["a%20b", "a b"], ["100%25", "100%"], ["a%252Fb", "a%2Fb"]] as const) {
       expect(await ask({ method: "GET", path: `/api/v1/events/${written}` }), written).toMatchObject({ status: 404, issues: [{ message: `No event "${id}" is stored.` }] });
     }
+    for (const broken of ["%E0%A4%A", "%", "a%zz", "%C3"]) {
+      expect(await ask({ method: "GET", path: `/api/v1/events/${broken}` }), broken).toMatchObject({ status: 400, issues: [{ code: "address", message: "The address holds a percent sign that spells no letter." }] });
+    }
     for (const id of ["0", "-1", "1.5", "1e3", "x", "99999999999999999999", "999999999"]) {
       for (const path of [`/api/v1/arrivals/${id}`, `/api/v1/events/tern/localizations/${id}`]) expect((await ask({ method: "GET", path })).status, path).toBe(404);
     }

@@ -37,7 +37,7 @@ export function choiceField<const Choices extends readonly string[]>(choices: Ch
   return described(z.enum(choices, wanted), wanted);
 }
 
-export const TIME_WANTED = "an ISO 8601 time with Z or an offset, such as 2024-02-28T14:30Z";
+const TIME_WANTED = "an ISO 8601 time with Z or an offset, such as 2024-02-28T14:30Z";
 
 /** A moment; `epochOf` gives it as seconds since 1970. */
 export const timeField = described(z.string(TIME_WANTED).check(z.refine(isTime, TIME_WANTED)), TIME_WANTED);
@@ -72,7 +72,7 @@ export function distinctField<Item extends z.ZodMiniType>(item: Item, { wanted, 
   return described(z.array(item, wanted).check(z.minLength(least, wanted), z.maxLength(most, wanted), eachOnce), wanted);
 }
 
-export const STARTED_FROM_WANTED = "the revision, a whole number, that the change starts from";
+const STARTED_FROM_WANTED = "the revision, a whole number, that the change starts from";
 /** The revision that its maker had seen. */
 export const revisionField = countField({ wanted: STARTED_FROM_WANTED, from: 1 });
 

@@ -40,7 +40,7 @@ function shortly(found: unknown): string {
 }
 
 /** `leftOut[2].time` */
-export function addressOf(path: readonly PropertyKey[]): string {
+function addressOf(path: readonly PropertyKey[]): string {
   return path.map((key) => (typeof key === "number" ? `[${key}]` : `.${String(key)}`)).join("").replace(/^\./, "");
 }
 
