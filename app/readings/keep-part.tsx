@@ -1,4 +1,3 @@
-import Link from "next/link";
 import { useId } from "react";
 import type { Draft } from "#lib/contracts/hand-readings/draft.ts";
 import { dayWords } from "#lib/presentation/times.ts";
@@ -99,7 +98,8 @@ export function DoneReport({ done }: Pick<Keeping, "done">) {
       {done !== null && (
         <p>
           {done.words}{" "}
-          {done.event !== null && <Link href={`/events/${encodeURIComponent(done.event.id)}`}>Open the event sheet: {done.event.title}</Link>}
+          {/* The browser's own way, so that coming back finds the lists of stations and events as they are by then. */}
+          {done.event !== null && <a href={`/events/${encodeURIComponent(done.event.id)}`}>Open the event sheet: {done.event.title}</a>}
         </p>
       )}
     </div>

@@ -1,7 +1,7 @@
 import { useState } from "react";
 import { flushSync } from "react-dom";
 import type { Draft, DraftRow } from "#lib/contracts/hand-readings/draft.ts";
-import type { ReadRow, RowField, RowIssue } from "#lib/contracts/hand-readings/hand-row.ts";
+import { isBlank, type ReadRow, type RowField, type RowIssue } from "#lib/contracts/hand-readings/hand-row.ts";
 import { suggestedDate } from "#lib/contracts/hand-readings/next-day.ts";
 import { pastedColumn, pastedRows } from "#lib/contracts/hand-readings/pasted-rows.ts";
 import type { DraftChange } from "./draft-changes.ts";
@@ -108,8 +108,9 @@ function useRowHandlers(given: {
     },
     onEnter: (key, field) => {
       const next = rows[rows.findIndex((row) => row.key === key) + 1];
-      if (next === undefined) addRow(change);
-      else document.querySelector<HTMLElement>(`[data-cell="${next.key}-${field}"]`)?.focus();
+      const last = rows.at(-1);
+      if (next === undefined && last !== undefined && !isBlank(last)) addRow(change);
+      else if (next !== undefined) document.querySelector<HTMLElement>(`[data-cell="${next.key}-${field}"]`)?.focus();
     },
     onPaste: (key, field, text) => {
       const pasted = pastedRows(text, zone);

@@ -57,7 +57,6 @@ export function StationBox(props: { stations: readonly StationChoice[]; chosen: 
         aria-invalid={said !== null}
         aria-describedby={said === null ? undefined : `${id}-message`}
         placeholder="Name, id or number"
-        data-station
         value={text ?? (chosen === null ? "" : stationLabel(chosen))}
         onChange={({ target }) => {
           setText(target.value);

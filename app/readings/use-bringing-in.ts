@@ -23,7 +23,7 @@ export function useBringingIn(given: {
 }) {
   const { draft, left } = given;
   const keeping = useKeeping();
-  // What was made here is known here at once; the page's own lists follow.
+  // What was made here is added here. Asking for the page anew, once its address has changed, would make the form anew as well.
   const [made, setMade] = useState<{ stations: readonly StationChoice[]; events: readonly EventChoice[] }>({ stations: [], events: [] });
   const stations = joined(given.stations, made.stations);
   const events = joined(given.events, made.events);
@@ -52,7 +52,7 @@ export function useBringingIn(given: {
     }));
     left.forget();
     change({ kind: "next", event: outcome.event?.id ?? null });
-    requestAnimationFrame(() => { document.querySelector<HTMLElement>("[data-station]")?.focus(); });
+    requestAnimationFrame(() => { document.querySelector<HTMLElement>("form fieldset input:not([type=radio])")?.focus(); });
   };
   return {
     ...{ stations, events, keeping: keeping as Keeping & { forget: () => void } },

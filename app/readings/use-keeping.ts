@@ -1,4 +1,3 @@
-import { useRouter } from "next/navigation";
 import { useState } from "react";
 import type { Issue } from "../_components/ask-server.ts";
 import { bringIn, NO_PROGRESS, type Bringing, type BroughtIn, type Progress } from "./bring-in.ts";
@@ -30,7 +29,6 @@ export function useKeeping(): Keeping & {
   readonly hold: (sentence: string) => void;
   readonly forget: () => void;
 } {
-  const router = useRouter();
   const [isBusy, setIsBusy] = useState(false);
   const [state, setState] = useState(UNSAID);
   const [tried, setTried] = useState<{ what: string; progress: Progress }>({ what: "", progress: NO_PROGRESS });
@@ -56,7 +54,6 @@ export function useKeeping(): Keeping & {
       }
       setTried({ what: "", progress: NO_PROGRESS });
       setState({ ...UNSAID, done: { words: words.done, event: outcome.event && { id: outcome.event.id, title: outcome.event.title === "" ? words.eventTitle : outcome.event.title } } });
-      router.refresh();
       return outcome;
     },
   };

@@ -1,10 +1,12 @@
 import type { Page } from "playwright-core";
-import { describe, expect, test } from "vitest";
+import { describe, expect, onTestFinished, test } from "vitest";
 import { axeFaults } from "#tests/support/axe-faults.ts";
 import { demoBrowser, DESK, PHONE } from "#tests/support/demo-browser.ts";
 import { cell, described, findings, paste, row, station, timedRows } from "#tests/support/hand-readings-page.ts";
 import { legBetween } from "#tests/support/simulator/ellipsoid.ts";
 import { regionContains } from "#tests/support/coverage/region-contains.ts";
+import { serveFolder } from "#tests/support/served-folder.ts";
+import { temporaryDirectory } from "#tests/support/temporary-directory.ts";
 import { tabTo } from "#tests/support/tab-to.ts";
 
 const { open, address, expectFault } = demoBrowser();
@@ -59,7 +61,12 @@ test("three stations by hand become a region on the map that holds the storm, an
   await page.getByRole("button", { name: "Keep this answer" }).click();
   await page.getByText("Kept as number 1.").waitFor();
 
-  const id = new URL(page.url()).pathname.split("/").at(-1) ?? "";
+  const { pathname } = new URL(page.url());
+  await page.goBack();
+  await station(page).waitFor();
+  expect(await page.getByRole("combobox", { name: "Event" }).locator("option:checked").innerText()).toBe("March storm by hand, first swell 5 Mar 2031");
+
+  const id = pathname.split("/").at(-1) ?? "";
   const kept = (await (await fetch(address(`api/v1/events/${id}/localizations/1`))).json()) as { answer: Located };
   const widest = kept.answer.regions.find(({ probability }) => probability === 0.95);
   expect(widest !== undefined && regionContains(widest.geometry, STORM.position)).toBe(true);
@@ -297,6 +304,39 @@ test("what was typed outlives the tab, until it is started anew; the address hol
   await station(again).waitFor();
   expect(await row(again, 2).count()).toBe(0);
   expect(await station(again).inputValue()).toBe("");
+});
+
+test("with nothing stored yet the first station is placed, and with long names nothing runs over the side", async () => {
+  const empty = await serveFolder(temporaryDirectory());
+  onTestFinished(() => empty.stop());
+  const page = await open("", { viewport: PHONE });
+  await page.goto(`${empty.address}readings`);
+  expect(await page.getByRole("radio", { name: "A new one" }).isChecked()).toBe(true);
+  await page.getByRole("radio", { name: "A stored one" }).check();
+  await page.getByText("No station is stored yet. Place a new one.").waitFor();
+  await page.getByRole("radio", { name: "An event there is" }).check();
+  expect(await page.getByRole("combobox", { name: "Event" }).innerText()).toBe("no event is stored yet");
+  expect(await axeFaults(page)).toStrictEqual([]);
+  await page.getByRole("radio", { name: "A new one" }).check();
+  await page.getByRole("radio", { name: "A new event" }).check();
+  const long = "Längste".repeat(28);
+  for (const [name, text] of [["Id", long], ["Name (optional)", long], ["Latitude, degrees", "21.6"], ["Longitude, degrees", "-158.1"], ["Title of the event", long]] as const) {
+    await page.getByRole("textbox", { name }).fill(text);
+  }
+  await pasteRows(page, timedRows(STORM, { latitudeDegrees: 21.6, longitudeDegrees: -158.1 }, [18, 16, 14]));
+  await bringIn(page);
+  await page.getByRole("link", { name: `Open the event sheet: ${long}` }).waitFor();
+  // The next one is most likely placed as well: its fields are empty, and the first of them is at hand.
+  await page.waitForFunction(() => document.activeElement instanceof HTMLInputElement && document.activeElement.value === "");
+  expect(await page.getByRole("textbox", { name: "Id" }).evaluate((element) => element === document.activeElement)).toBe(true);
+  await page.getByRole("radio", { name: "A stored one" }).check();
+  await station(page).fill("läng");
+  await page.getByRole("option").first().waitFor();
+  expect(await sideways(page)).toBe(0);
+  await page.keyboard.press("Enter");
+  await pasteRows(page, timedRows(STORM, { latitudeDegrees: 21.6, longitudeDegrees: -158.1 }, [17, 15]));
+  expect(await sideways(page)).toBe(0);
+  expect(await axeFaults(page)).toStrictEqual([]);
 });
 
 describe.each(["light", "dark"] as const)("in the %s", (colorScheme) => {
