@@ -15,12 +15,18 @@ export async function askToTakeIn(bytes: ArrayBuffer, token: string | null): Pro
     const response = await fetch(`/api/v1/stations.csv?${query}`, { method: "POST", headers: { "content-type": "text/csv" }, body: bytes });
     const reply = (await response.json()) as StationsReportJson & { issues?: readonly { message: string }[] };
     if (response.ok) return { kind: "report", report: reply };
-    const messages = (reply.issues ?? []).map(({ message }) => rowFirst(message));
+    const messages = (reply.issues ?? []).map(({ message }) => rowFirst(message)).sort((a, b) => rowOf(a) - rowOf(b));
     if (messages.length === 0) return UNHEARD;
     return { kind: response.status === 409 ? "overtaken" : "faulty", messages };
   } catch {
     return UNHEARD;
   }
+}
+
+/** What names no row stands first where it is about the whole file, and last where it only counts the rest. */
+function rowOf(message: string): number {
+  const row = /^Row (\d+)/.exec(message)?.[1];
+  return row !== undefined ? Number(row) : message.includes(" more problems ") ? Number.MAX_SAFE_INTEGER : 0;
 }
 
 /** The page shows one file, and names it above: "Row 3, column to: ..." */

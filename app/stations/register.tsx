@@ -30,7 +30,7 @@ export function Register({ rows }: { rows: readonly RegisterRow[] }) {
           <StationMap all={rows} shown={shown} chosenId={view.chosen} onChoose={choose} />
         </div>
         <p className={styles.chosen} role="status">
-          {chosen === null ? <span className={styles.soft}>No station is chosen.</span> : (
+          {chosen === null ? rows.length > 0 && <span className={styles.soft}>No station is chosen.</span> : (
             <>
               <Link href={addressOf(chosen.id)} prefetch={false}>{chosen.name}</Link> <span className={styles.soft}>{chosen.id}, {positionWords(chosen.position)}</span>
             </>

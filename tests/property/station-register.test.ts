@@ -2,6 +2,7 @@ import fc from "fast-check";
 import { expect, test } from "vitest";
 import { UNDESCRIBED, type StationDescription } from "#lib/core/arrival/station-description.ts";
 import { inOrderOfTime, overlappingSpans } from "#lib/core/arrival/overlapping-spans.ts";
+import { InputError } from "#lib/core/failures/input-error.ts";
 import { guarded, unguarded } from "#lib/records/formula-guard.ts";
 import { readStationRegister } from "#lib/records/station-register-csv.ts";
 import { readStationsCsv } from "#lib/records/stations-csv.ts";
@@ -63,4 +64,39 @@ test("spans overlap where a moment lies in two of them, whichever way they are l
       expect(starts).toStrictEqual(starts.toSorted((a, b) => a - b));
     }),
   );
+});
+
+/** What people and programs do to files: pieces cut out, doubled or written over. */
+/** Anywhere alike: drawn as they come, numbers lie near the ends, and every harm would be one of the header. */
+const anywhere = fc.integer({ min: 1, max: 99_999 }).map((number) => (number * 0.618_033_988_75) % 1);
+const harm = fc.tuple(anywhere, fc.integer({ min: 0, max: 3 }), fc.oneof(fc.string({ maxLength: 6 }), fc.constantFrom("\"", ",", "\n", "-", "e5", "0", ":", " | ", "..", "/", "\u0000", "\ud800", "9999-12-31T23:59-12:00", "1000-01-01T00:00+12:00")));
+
+/** Null where the file is refused, which it has to be by place and in whole sentences. */
+function readOrRefused(text: string): StationDescription[] | null {
+  try {
+    return readBack(text);
+  } catch (error) {
+    if (!(error instanceof InputError)) throw error;
+    expect(error.issues.every(({ path, message }) => path.startsWith("s.csv") && message.endsWith("."))).toBe(true);
+    return null;
+  }
+}
+
+test("a harmed file is refused by row, or read as something that can be written and read again", () => {
+  let taken = 0;
+  fc.assert(
+    fc.property(describedStations, fc.array(harm, { minLength: 1, maxLength: 2 }), (stations, harms) => {
+      const text = harms.reduce((before, [where, cut, instead]) => {
+        const at = Math.floor(where * before.length);
+        return before.slice(0, at) + instead + before.slice(at + cut);
+      }, writeStationRegister(stations));
+      const described = readOrRefused(text);
+      if (described === null) return;
+      taken += 1;
+      expect(JSON.stringify(readBack(writeStationRegister(described)))).toBe(JSON.stringify(described));
+    }),
+    { numRuns: 400 },
+  );
+  // Both happen: a test of refusals alone, or of none, would say little.
+  expect(taken).toBeGreaterThan(40);
 });
