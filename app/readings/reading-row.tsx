@@ -130,12 +130,14 @@ function Turns({ row, turns, onChange }: { row: DraftRow; turns: NonNullable<Rea
     { turn: "earlier", label: "the first", epochSeconds: turns.earlierEpochSeconds },
     { turn: "later", label: "the second", epochSeconds: turns.laterEpochSeconds },
   ] as const;
+  const question = useId();
   return (
-    <div role="radiogroup" aria-label="Which of the two it was" className={styles.choices}>
+    <div role="radiogroup" aria-labelledby={question} className={styles.choices}>
+      <span id={question} className={styles.question}>The clocks went back here. Was it</span>
       {ways.map(({ turn, label, epochSeconds }) => (
         <label key={turn} className={styles.choice}>
           <input type="radio" name={`turn-${row.key}`} checked={row.turn === turn} onChange={() => { onChange(row.key, { turn }); }} />
-          {label}, {momentWords(epochSeconds)}
+          {label} {row.time.trim()}, {momentWords(epochSeconds)}
         </label>
       ))}
     </div>
