@@ -7,23 +7,34 @@ const MOST_LET_BY = 100_000_000;
 /**
  * A request's body as text. No more of it is held than it may be long.
  *
- * @throws Refusal `too-large`; InputError `not-text` where the bytes are not UTF-8.
+ * @throws Refusal `too-large`; InputError `not-whole` where its sender went away, `not-text` where the bytes are not UTF-8.
  */
 export async function readText(request: Request, mostBytes: number): Promise<string> {
+  const bytes = await readBytes(request, mostBytes);
+  try {
+    return new TextDecoder("utf-8", { fatal: true }).decode(bytes);
+  } catch {
+    throw new InputError([{ code: "not-text", path: "", message: "The request's body is no UTF-8 text." }]);
+  }
+}
+
+async function readBytes(request: Request, mostBytes: number): Promise<Buffer> {
   const parts: Uint8Array[] = [];
   let length = 0;
   const reader = request.body?.getReader();
-  for (let part = await reader?.read(); part?.done === false; part = await reader?.read()) {
+  const next = () => reader?.read().catch(() => cutOff());
+  for (let part = await next(); part?.done === false; part = await next()) {
     length += part.value.byteLength;
     if (length <= mostBytes) parts.push(part.value);
     if (length > MOST_LET_BY) await reader?.cancel();
   }
   if (length > mostBytes) throw new Refusal("too-large", `The request holds more than ${mostBytes} bytes.`);
-  try {
-    return new TextDecoder("utf-8", { fatal: true }).decode(Buffer.concat(parts));
-  } catch {
-    throw new InputError([{ code: "not-text", path: "", message: "The request's body is no UTF-8 text." }]);
-  }
+  return Buffer.concat(parts);
+}
+
+/** No fault of the program's, and nobody is left to read this; it keeps the log to real ones. */
+function cutOff(): never {
+  throw new InputError([{ code: "not-whole", path: "", message: "The request's body ended before it was whole." }]);
 }
 
 /** No request has a fifth of it; a value nested without end would overflow whatever walks through it. */

@@ -1,9 +1,10 @@
 /**
  * Reads of the programming interface with 1,000 events of five or six stations, 200 stations and 400 kept answers: how
  * long the server takes from a request to the end of its answer, one after another, each reading operation at least 200
- * times after warming up. Needs `npm run build` first.
+ * times after warming up. Beside it stands what each cost the server's processors, which a busy machine does not change
+ * as much. Needs `npm run build` first.
  */
-import { mkdtempSync, readFileSync, rmSync } from "node:fs";
+import { existsSync, mkdtempSync, readFileSync, rmSync } from "node:fs";
 import { Agent, get } from "node:http";
 import { tmpdir } from "node:os";
 import { join } from "node:path";
@@ -17,7 +18,8 @@ import { openStore } from "#lib/store/open-store.ts";
 import { pathOf, type ApiCall, type OperationId } from "../support/api-client.ts";
 import { fillRegister } from "../support/fill-register.ts";
 import { MIGRATIONS_DIRECTORY } from "../support/migrations-directory.ts";
-import { serveFolder } from "../support/served-folder.ts";
+import { processFamily } from "../support/process-family.ts";
+import { serveFolder, type ServedFolder } from "../support/served-folder.ts";
 
 const SIZE = { stations: 200, events: 1000, keptEvery: 5, keptCount: 2 };
 const TARGET_MILLISECONDS = 30;
@@ -70,17 +72,31 @@ function millisecondsOf(address: string): Promise<{ milliseconds: number; bytes:
   });
 }
 
-async function measure(address: string, id: OperationId, asked: (turn: number) => ApiCall): Promise<void> {
+/** Where the system tells it (Linux), in its ticks of 10 ms. */
+function processorMilliseconds(processId: number): number {
+  return processFamily(processId).reduce((sum, { id }) => {
+    const file = `/proc/${id}/stat`;
+    if (!existsSync(file)) return NaN;
+    // The name of the program, which may hold anything, stands in brackets before the fields that are counted here.
+    const fields = readFileSync(file, "utf8").split(") ").at(-1)?.split(" ") ?? [];
+    return sum + (Number(fields[11]) + Number(fields[12])) * 10;
+  }, 0);
+}
+
+async function measure({ address, processId }: ServedFolder, id: OperationId, asked: (turn: number) => ApiCall): Promise<void> {
   const taken: number[] = [];
   let bytes = 0;
+  let processorBefore = NaN;
   for (let turn = 0; turn < WARMING_UP + COUNTED; turn += 1) {
+    if (turn === WARMING_UP) processorBefore = processorMilliseconds(processId);
     const one = await millisecondsOf(new URL(pathOf(id, asked(turn)), address).href);
     bytes = Math.max(bytes, one.bytes);
     if (turn >= WARMING_UP) taken.push(one.milliseconds);
   }
+  const processor = Number(((processorMilliseconds(processId) - processorBefore) / COUNTED).toFixed(1));
   taken.sort((a, b) => a - b);
   const at = (part: number): number => Number((taken[Math.ceil(part * taken.length) - 1] ?? NaN).toFixed(1));
-  console.log(JSON.stringify({ bench: `api-${id}`, value: at(0.95), unit: "ms p95", target: TARGET_MILLISECONDS, p50: at(0.5), kilobytes: Number((bytes / 1000).toFixed(1)) }));
+  console.log(JSON.stringify({ bench: `api-${id}`, value: at(0.95), unit: "ms p95", target: TARGET_MILLISECONDS, p50: at(0.5), processor, kilobytes: Number((bytes / 1000).toFixed(1)) }));
 }
 
 const dataDirectory = mkdtempSync(join(tmpdir(), "offing-api-"));
@@ -92,7 +108,7 @@ try {
       if (method !== "GET") continue;
       const asked = ASKED[id as OperationId];
       if (asked === undefined) throw new Error(`Nothing says what ${id} is asked.`);
-      await measure(server.address, id as OperationId, asked);
+      await measure(server, id as OperationId, asked);
     }
   } finally {
     agent.destroy();

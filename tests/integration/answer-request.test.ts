@@ -70,6 +70,21 @@ describe("a route turns failures into statuses", () => {
     expect(await answer.json()).toStrictEqual({ issues });
   });
 
+  test("a sender that goes away in the middle of its body is no fault of the program", async () => {
+    const log = vi.spyOn(console, "error").mockImplementation(() => undefined);
+    const body = new ReadableStream({
+      pull(controller) {
+        controller.error(new Error("aborted"));
+      },
+    });
+    const request = new Request("http://127.0.0.1/api/v1/x", { method: "POST", body, duplex: "half", headers: { host: "127.0.0.1", "content-type": "application/json" } } as RequestInit);
+    const answer = await route(OPERATIONS.openEvent, () => Promise.resolve({ body: null }))(request, context);
+    expect(answer.status).toBe(400);
+    expect(await answer.json()).toMatchObject({ issues: [{ code: "not-whole" }] });
+    expect(log).not.toHaveBeenCalled();
+    log.mockRestore();
+  });
+
   test("failures are known by their name, for a bundle may hold the class twice", async () => {
     const copy = Object.assign(new Error("No."), { name: "Refusal", reason: "conflict" });
     expect((await failing(copy)).status).toBe(409);
