@@ -107,11 +107,13 @@ function nameDot(element: Element | undefined, words: string): void {
 function Chosen({ window, row }: { window: ChartWindow; row: RegisterRow }) {
   const map = useMap();
   const [latitude, longitude] = pointInWindow(window, row.position);
+  // Towards the middle, where there is room for it.
+  const side = (longitude > window.centreLongitudeDegrees ? styles.west : styles.east) ?? "";
   const icon = useMemo(() => {
     const label = document.createElement("span");
     label.textContent = row.name;
-    return divIcon({ html: label, className: styles.name ?? "", iconSize: [0, 0] });
-  }, [row.name]);
+    return divIcon({ html: label, className: `${styles.name ?? ""} ${side}`, iconSize: [0, 0] });
+  }, [row.name, side]);
   useEffect(() => {
     const at = { lat: latitude, lng: longitude };
     if (!map.getBounds().pad(-0.05).contains(at)) map.panTo(at, { animate: false });
