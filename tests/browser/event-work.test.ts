@@ -23,6 +23,9 @@ async function keep(page: Page, number: number): Promise<void> {
   await kept(page).getByRole("button", { name: "Keep this answer" }).click();
   await kept(page).getByText(`Kept as number ${number}.`).waitFor();
   await kept(page).getByRole("listitem").filter({ hasText: new RegExp(`^${number}`) }).first().waitFor();
+  // The fresh list comes into the page as it stands, and does not make it anew.
+  await page.waitForTimeout(300);
+  expect(await kept(page).getByText(`Kept as number ${number}.`).count()).toBe(1);
 }
 
 /** Asks the programming interface as another program would. */
