@@ -38,6 +38,8 @@ export function PlaceChart({ window, station, baseMap, ring, unit, onPlace }: Pl
       ref={nameTheChart}
       className={base.chart ?? ""}
       bounds={opensOn}
+      maxBounds={[[-86, middle - 200], [86, middle + 200]]}
+      maxBoundsViscosity={1}
       minZoom={0}
       maxZoom={8}
       zoomSnap={0.25}

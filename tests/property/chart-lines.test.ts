@@ -121,6 +121,20 @@ describe("a region on the chart", () => {
   });
 });
 
+describe("copies within reach", () => {
+  it("are those of all copies that come into it, in the same order", () => {
+    const line = fc.array(fc.tuple(fc.double({ min: -85, max: 85, noNaN: true }), fc.double({ min: -190, max: 190, noNaN: true })), { minLength: 1, maxLength: 4 });
+    fc.assert(
+      fc.property(fc.array(line, { maxLength: 6 }), fc.integer({ min: -180, max: 180 }), fc.integer({ min: 1, max: 300 }), (lines, middleDegrees, degrees) => {
+        const comesIn = (piece: readonly (readonly number[])[]): boolean => piece.some(([, longitude = NaN]) => Math.abs(longitude - middleDegrees) <= degrees);
+        expect(lineCopies(lines, { middleDegrees, degrees })).toStrictEqual(lineCopies(lines).filter(comesIn));
+        const area = lines.map((outer) => [outer, [[0, 0] as [number, number]]]);
+        expect(areaCopies(area, { middleDegrees, degrees })).toStrictEqual(areaCopies(area).filter((polygon) => polygon.some(comesIn)));
+      }),
+    );
+  });
+});
+
 describe("an event's layers", () => {
   const window = { centreLongitudeDegrees: 170 };
   const station = at(-17, 178);

@@ -8,9 +8,12 @@ import styles from "./base.module.css";
 import { BASE_PANES } from "./base-panes.ts";
 
 const STEP_DEGREES = 30;
+/** Charts are held within 200 degrees of their middle. Land takes most of the time in which a chart first comes up. */
+const REACH_DEGREES = 230;
 
 /** Natural Earth's land and coast, over a net of meridians and parallels. It never changes, so it is drawn once. */
 export const BaseMapLayers = memo(function BaseMapLayers({ baseMap, middle }: { baseMap: BaseMap | null; middle: number }) {
+  const reach = { middleDegrees: middle, degrees: REACH_DEGREES };
   return (
     <>
       <Pane name="graticule" style={{ zIndex: BASE_PANES.graticule }}>
@@ -19,10 +22,10 @@ export const BaseMapLayers = memo(function BaseMapLayers({ baseMap, middle }: { 
       {baseMap !== null && (
         <>
           <Pane name="land" style={{ zIndex: BASE_PANES.land }}>
-            <Polygon positions={areaCopies(baseMap.land)} className={styles.land} interactive={false} />
+            <Polygon positions={areaCopies(baseMap.land, reach)} className={styles.land} interactive={false} />
           </Pane>
           <Pane name="coast" style={{ zIndex: BASE_PANES.coast }}>
-            <Polyline positions={lineCopies(baseMap.coast)} className={styles.coast} interactive={false} />
+            <Polyline positions={lineCopies(baseMap.coast, reach)} className={styles.coast} interactive={false} />
           </Pane>
         </>
       )}
