@@ -42,7 +42,7 @@ export function keptWords(kept: KeptAnswer, stations: readonly NumberedStation[]
 }
 
 /** "Left out: 4 Thornholm."; null where no station was. */
-export function leftOutWords({ leftOutStationIds }: ObservationChoices, stations: readonly NumberedStation[]): string | null {
+export function leftOutWords({ leftOutStationIds }: Pick<ObservationChoices, "leftOutStationIds">, stations: readonly NumberedStation[]): string | null {
   const out = stations.filter(({ id }) => leftOutStationIds.includes(id)).map(({ number, name }) => `${number}\u00a0${name}`);
   return out.length === 0 ? null : `Left out: ${listWords(out)}.`;
 }

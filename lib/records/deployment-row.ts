@@ -13,8 +13,8 @@ export const DEPLOYMENT_COLUMNS = [
 export const STATION_COLUMNS = [
   "aliases", "group", "licence", "attribution", "contact", "doi", "visibility", "embargo_until", "clock_corrections", "note",
 ] as const;
-export const SENSORS = ["surface", "pressure", "ground"] as const;
-export const STAMPS = ["start", "middle", "end"] as const;
+const SENSORS = ["surface", "pressure", "ground"] as const;
+const STAMPS = ["start", "middle", "end"] as const;
 
 export type CellOf = (column: string, required?: boolean) => CellPlace;
 

@@ -3,7 +3,7 @@ import type { EstimationSettings } from "#lib/core/source/settings.ts";
 import type { EventSolution } from "#lib/core/source/solution.ts";
 import { answerWords, type AnswerWords } from "#lib/presentation/answer-words.ts";
 import type { DistanceUnit } from "#lib/presentation/distances.ts";
-import { listWords } from "#lib/presentation/numbers-in-words.ts";
+import { leftOutWords } from "#lib/presentation/kept-words.ts";
 import styles from "./answer.module.css";
 
 /** The answer first: place and time large, then what was found in a sentence. */
@@ -22,7 +22,7 @@ export function Answer(props: {
   isWorking: boolean;
 }) {
   const words = answerWords(props);
-  const leftOut = props.stations.filter(({ id }) => props.without.includes(id));
+  const leftOut = leftOutWords({ leftOutStationIds: props.without }, props.stations);
   return (
     <section className={styles.answer} aria-label="Answer">
       <h1 className={styles.title}>{props.title}</h1>
@@ -33,9 +33,7 @@ export function Answer(props: {
             <strong>{words.verdict}</strong> {words.sentence}
           </p>
         </div>
-        {leftOut.length > 0 && (
-          <p className={styles.sentence}>Left out: {listWords(leftOut.map(({ number, name }) => `${number}\u00a0${name}`))}.</p>
-        )}
+        {leftOut !== null && <p className={styles.sentence}>{leftOut}</p>}
       </div>
       {props.note !== "" && <p className={styles.note}>{props.note}</p>}
     </section>
