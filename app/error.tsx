@@ -1,5 +1,6 @@
 "use client";
 
+import forms from "./_components/forms.module.css";
 import text from "./page-text.module.css";
 
 /** A bug of ours: the reader gets a reference to quote, and nothing of the inside. */
@@ -13,7 +14,7 @@ export default function ErrorPage({ error, retry }: { error: unknown; retry: () 
         that was stored is lost.
       </p>
       <p className={text.action}>
-        <button type="button" className={text.button} onClick={retry}>
+        <button type="button" className={forms.button} onClick={retry}>
           Try again
         </button>
       </p>

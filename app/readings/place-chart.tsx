@@ -1,19 +1,15 @@
 "use client";
 
-import "leaflet/dist/leaflet.css";
-import { divIcon, DomEvent, latLngBounds, type LatLngBounds, type Map as LeafletMap } from "leaflet";
+import { divIcon, latLngBounds, type LatLngBounds } from "leaflet";
 import { useCallback, useEffect, useMemo, useRef, useState } from "react";
-import { MapContainer, Marker, Pane, Polygon, Polyline, useMap, useMapEvents, ZoomControl } from "react-leaflet";
+import { Marker, Pane, Polygon, Polyline, useMap, useMapEvents } from "react-leaflet";
 import type { BaseMap } from "#lib/chart/base-map.ts";
 import type { ChartPoint } from "#lib/chart/chart-point.ts";
 import { pointInWindow, type ChartWindow } from "#lib/chart/chart-window.ts";
 import { wrapLongitudeDegrees, type Position } from "#lib/core/units/position.ts";
 import type { DistanceUnit } from "#lib/presentation/distances.ts";
-import { BaseMapLayers } from "../_components/chart/base-map-layers.tsx";
-import base from "../_components/chart/base.module.css";
-import { ExactLines } from "../_components/chart/exact-lines.tsx";
-import { ScaleBar } from "../_components/chart/scale-bar.tsx";
-import { SmallestScale } from "../_components/chart/smallest-scale.tsx";
+import { ShowAll } from "../_components/chart/show-all.tsx";
+import { WorldChart } from "../_components/chart/world-chart.tsx";
 import styles from "./place-chart.module.css";
 import type { DrawnRing } from "./ring-worker.ts";
 
@@ -27,32 +23,20 @@ export interface PlaceChartProps {
   readonly onPlace: ((position: Position) => void) | null;
 }
 
-/** The station with its ring and band. It has the map library's own keys: arrows move it, plus and minus change its scale. */
+/** The station with its ring and band. */
 export function PlaceChart({ window, station, baseMap, ring, unit, onPlace }: PlaceChartProps) {
   const middle = window.centreLongitudeDegrees;
-  const glides = !globalThis.matchMedia("(prefers-reduced-motion: reduce)").matches;
   const whole = useMemo(() => extent(window, station?.position ?? null, ring), [window, station, ring]);
   const [opensOn] = useState(whole);
   return (
-    <MapContainer
-      ref={nameTheChart}
-      className={base.chart ?? ""}
+    <WorldChart
       bounds={opensOn}
-      maxBounds={[[-86, middle - 200], [86, middle + 200]]}
-      maxBoundsViscosity={1}
-      minZoom={0}
-      maxZoom={8}
-      zoomSnap={0.25}
-      zoomAnimation={glides}
-      fadeAnimation={glides}
-      inertia={glides}
-      zoomControl={false}
-      attributionControl={false}
+      middle={middle}
+      baseMap={baseMap}
+      unit={unit}
+      name="Map of the station and its ring."
+      placing={<Placing whole={whole} middle={middle} onPlace={onPlace} />}
     >
-      <ExactLines />
-      <SmallestScale />
-      <Placing whole={whole} middle={middle} onPlace={onPlace} />
-      <BaseMapLayers baseMap={baseMap} middle={middle} />
       <Pane name="bands" style={{ zIndex: 300 }}>
         {ring !== null && <Polygon positions={ring.band} className={styles.band} interactive={false} smoothFactor={0} />}
       </Pane>
@@ -60,9 +44,7 @@ export function PlaceChart({ window, station, baseMap, ring, unit, onPlace }: Pl
         {ring !== null && <Polyline positions={ring.line} className={styles.ring} interactive={false} smoothFactor={0} />}
       </Pane>
       {station !== null && <Marker position={pointInWindow(window, station.position)} icon={MARK} title={station.name} alt={station.name} keyboard={false} interactive={false} />}
-      <ZoomControl position="topleft" />
-      <ScaleBar unit={unit} />
-    </MapContainer>
+    </WorldChart>
   );
 }
 
@@ -103,17 +85,7 @@ function Placing({ whole, middle, onPlace }: { whole: LatLngBounds; middle: numb
     isMoved.current = false;
     show(whole);
   };
-  return <button ref={keepClicks} type="button" className={base.showAll} onClick={showAll}>Show all</button>;
-}
-
-function keepClicks(button: HTMLButtonElement | null): void {
-  if (button !== null) DomEvent.disableClickPropagation(button);
-}
-
-function nameTheChart(map: LeafletMap | null): void {
-  const container = map?.getContainer();
-  container?.setAttribute("role", "region");
-  container?.setAttribute("aria-label", "Map of the station and its ring. Arrow keys move it, plus and minus change its scale.");
+  return <ShowAll onShow={showAll} />;
 }
 
 /** The station with its whole ring; without a ring what lies around it, and without a station the world. */

@@ -1,18 +1,14 @@
 "use client";
 
-import "leaflet/dist/leaflet.css";
-import { circleMarker, divIcon, DomEvent, latLngBounds, layerGroup, type CircleMarker, type LatLngBounds, type Map as LeafletMap } from "leaflet";
+import { circleMarker, divIcon, latLngBounds, layerGroup, type CircleMarker, type LatLngBounds } from "leaflet";
 import { useEffect, useMemo, useRef, useState } from "react";
-import { MapContainer, Marker, useMap, ZoomControl } from "react-leaflet";
+import { Marker, useMap } from "react-leaflet";
 import type { ChartPoint } from "#lib/chart/chart-point.ts";
 import { pointInWindow, windowAround, type ChartWindow } from "#lib/chart/chart-window.ts";
 import type { RegisterRow } from "#lib/presentation/register-rows.ts";
-import { BaseMapLayers } from "../_components/chart/base-map-layers.tsx";
-import base from "../_components/chart/base.module.css";
-import { ExactLines } from "../_components/chart/exact-lines.tsx";
-import { ScaleBar } from "../_components/chart/scale-bar.tsx";
-import { SmallestScale } from "../_components/chart/smallest-scale.tsx";
 import { useBaseMap } from "../_components/chart/use-base-map.ts";
+import { ShowAll } from "../_components/chart/show-all.tsx";
+import { WorldChart } from "../_components/chart/world-chart.tsx";
 import styles from "./station-map.module.css";
 
 interface MapProps {
@@ -33,33 +29,13 @@ function PlacedMap({ all, shown, chosenId, onChoose, window }: MapProps & { wind
   const { baseMap, failure } = useBaseMap(middle);
   const [opensOn] = useState(() => extent(window, all));
   const chosen = all.find(({ id }) => id === chosenId) ?? null;
-  const glides = !globalThis.matchMedia("(prefers-reduced-motion: reduce)").matches;
   return (
     <>
-      <MapContainer
-        ref={nameTheMap}
-        className={base.chart ?? ""}
-        bounds={opensOn}
-        maxBounds={[[-86, middle - 200], [86, middle + 200]]}
-        maxBoundsViscosity={1}
-        minZoom={0}
-        maxZoom={10}
-        zoomSnap={0.25}
-        zoomAnimation={glides}
-        fadeAnimation={glides}
-        inertia={glides}
-        zoomControl={false}
-        attributionControl={false}
-      >
-        <ExactLines />
-        <SmallestScale />
-        <BaseMapLayers baseMap={baseMap} middle={middle} />
+      <WorldChart bounds={opensOn} middle={middle} baseMap={baseMap} unit="km" name="Map of stations; they are chosen in the table." maxZoom={10}>
         <Dots window={window} shown={shown} chosenId={chosenId} onChoose={onChoose} />
         {chosen !== null && <Chosen key={chosen.id} window={window} row={chosen} />}
-        <ZoomControl position="topleft" />
-        <ShowAll window={window} shown={shown} />
-        <ScaleBar unit="km" />
-      </MapContainer>
+        <ShowAllStations window={window} shown={shown} />
+      </WorldChart>
       {failure !== null && <p className={styles.failure} role="status">The land could not be drawn: {failure} The stations stand where they are.</p>}
     </>
   );
@@ -121,24 +97,9 @@ function Chosen({ window, row }: { window: ChartWindow; row: RegisterRow }) {
   return <Marker position={{ lat: latitude, lng: longitude }} icon={icon} interactive={false} keyboard={false} />;
 }
 
-function ShowAll({ window, shown }: { window: ChartWindow; shown: readonly RegisterRow[] }) {
+function ShowAllStations({ window, shown }: { window: ChartWindow; shown: readonly RegisterRow[] }) {
   const map = useMap();
-  return (
-    <button ref={keepClicks} type="button" className={base.showAll} onClick={() => { map.fitBounds(extent(window, shown), { animate: false, padding: [28, 28] }); }}>
-      Show all
-    </button>
-  );
-}
-
-/** A second quick click on the button is none on the map below it. */
-function keepClicks(button: HTMLButtonElement | null): void {
-  if (button !== null) DomEvent.disableClickPropagation(button);
-}
-
-function nameTheMap(map: LeafletMap | null): void {
-  const container = map?.getContainer();
-  container?.setAttribute("role", "region");
-  container?.setAttribute("aria-label", "Map of stations. Arrow keys move it, plus and minus change its scale; stations are chosen in the table.");
+  return <ShowAll onShow={() => { map.fitBounds(extent(window, shown), { animate: false, padding: [28, 28] }); }} />;
 }
 
 /** All of the rows with some sea around them, and for one station the coast that it stands at; a good part of the window where there are none. */

@@ -2,6 +2,7 @@ import { useId, useRef, useState } from "react";
 import { parseMoment } from "#lib/presentation/times.ts";
 import { PERIOD_WORDS, parsePeriod } from "./period-text.ts";
 import type { ShownReading } from "./reading-rows.ts";
+import forms from "../../_components/forms.module.css";
 import styles from "./readings-panel.module.css";
 import type { ChangeReadings } from "./use-work.ts";
 
@@ -44,7 +45,7 @@ export function AddReading({ stationId, rows, onChange }: { stationId: string; r
       <input ref={first} id={ids.time} className={styles.time} autoComplete="off" placeholder="2024-02-28 14:30" value={time} aria-invalid={isFaulty && parseMoment(time) === null} aria-describedby={isFaulty ? ids.problem : ids.hint} onChange={({ target }) => { setTime(target.value); }} />
       <label htmlFor={ids.period}>period, s</label>
       <input id={ids.period} className={styles.period} inputMode="decimal" autoComplete="off" value={period} aria-invalid={isFaulty && parsePeriod(period) === null} aria-describedby={isFaulty ? ids.problem : ids.hint} onChange={({ target }) => { setPeriod(target.value); }} />
-      <button type="submit" className={styles.button}>Add</button>
+      <button type="submit" className={forms.button}>Add</button>
       <p id={ids.hint} className="for-screen-readers">It takes the kind and the errors of the reading that is nearest in time.</p>
       <div id={ids.problem} role="alert" className={isFaulty ? styles.problem : ""}>
         {problems.map((problem) => <p key={problem}>{problem}</p>)}

@@ -1,7 +1,7 @@
-import { DomEvent, type LatLngBounds, type Map as LeafletMap } from "leaflet";
+import type { LatLngBounds, Map as LeafletMap } from "leaflet";
 import { useCallback, useEffect, useRef } from "react";
 import { useMap, useMapEvents } from "react-leaflet";
-import styles from "../../_components/chart/base.module.css";
+import { ShowAll } from "../../_components/chart/show-all.tsx";
 import type { ChangeView } from "./use-view.ts";
 import { placeText, type ChartPlace } from "./view.ts";
 
@@ -45,19 +45,10 @@ export function ChartPlacing({ whole, place, onChange }: { whole: LatLngBounds; 
     }
   }, [map, place, whole, showWhole]);
 
-  return (
-    <button ref={keepClicks} type="button" className={styles.showAll} onClick={() => { showWhole(whole); }}>
-      Show all
-    </button>
-  );
+  return <ShowAll onShow={() => { showWhole(whole); }} />;
 }
 
 function placeOf(map: LeafletMap): ChartPlace {
   const { lat, lng } = map.getCenter();
   return { latitudeDegrees: lat, longitudeDegrees: lng, zoom: map.getZoom() };
-}
-
-/** A second quick click on the button is none on the map below it. */
-function keepClicks(button: HTMLButtonElement | null): void {
-  if (button !== null) DomEvent.disableClickPropagation(button);
 }

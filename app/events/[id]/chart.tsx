@@ -1,19 +1,13 @@
 "use client";
 
-import "leaflet/dist/leaflet.css";
-import { latLngBounds, type LatLngBounds, type Map as LeafletMap } from "leaflet";
+import { latLngBounds, type LatLngBounds } from "leaflet";
 import { useMemo, useState } from "react";
-import { MapContainer, ZoomControl } from "react-leaflet";
 import type { BaseMap } from "#lib/chart/base-map.ts";
 import type { ChartArea, ChartPoint } from "#lib/chart/chart-point.ts";
 import { pointInWindow, type ChartWindow } from "#lib/chart/chart-window.ts";
 import type { EventLayers } from "#lib/chart/event-layers.ts";
 import type { NumberedStation } from "#lib/core/arrival/numbered-stations.ts";
-import { BaseMapLayers } from "../../_components/chart/base-map-layers.tsx";
-import styles from "../../_components/chart/base.module.css";
-import { ExactLines } from "../../_components/chart/exact-lines.tsx";
-import { ScaleBar } from "../../_components/chart/scale-bar.tsx";
-import { SmallestScale } from "../../_components/chart/smallest-scale.tsx";
+import { WorldChart } from "../../_components/chart/world-chart.tsx";
 import { ChartPlacing } from "./chart-placing.tsx";
 import { RingLayers } from "./ring-layers.tsx";
 import { SourceLayers } from "./source-layers.tsx";
@@ -33,7 +27,7 @@ export interface ChartProps {
   readonly onChange: ChangeView;
 }
 
-/** The chart of one event. It has the map library's own keys: arrows move it, plus and minus change its scale. */
+/** The chart of one event. */
 export function Chart(props: ChartProps) {
   const { window, stations, layers } = props;
   if (layers === null) return null;
@@ -45,41 +39,20 @@ function DrawnChart(props: ChartProps & { layers: EventLayers }) {
   const whole = useMemo(() => extent(window, stations, layers), [window, stations, layers]);
   // Where the chart opens. Later answers leave it where it is.
   const [opensOn] = useState(whole);
-  const middle = window.centreLongitudeDegrees;
-  const glides = !globalThis.matchMedia("(prefers-reduced-motion: reduce)").matches;
   return (
-    <MapContainer
-      ref={nameTheChart}
-      className={styles.chart ?? ""}
+    <WorldChart
       bounds={opensOn}
-      maxBounds={[[-86, middle - 200], [86, middle + 200]]}
-      maxBoundsViscosity={1}
-      minZoom={0}
-      maxZoom={8}
-      zoomSnap={0.25}
-      zoomAnimation={glides}
-      fadeAnimation={glides}
-      inertia={glides}
-      zoomControl={false}
-      attributionControl={false}
+      middle={window.centreLongitudeDegrees}
+      baseMap={props.baseMap}
+      unit={view.unit}
+      name="Map of stations, rings and sources."
+      placing={<ChartPlacing whole={whole} place={view.place} onChange={props.onChange} />}
     >
-      <ExactLines />
-      <SmallestScale />
-      <ChartPlacing whole={whole} place={view.place} onChange={props.onChange} />
-      <BaseMapLayers baseMap={props.baseMap} middle={middle} />
       <RingLayers layers={layers} overlap={props.overlap} view={view} />
       <SourceLayers layers={layers} showsSight={view.showsSight} />
       <StationMarks window={window} stations={stations} view={view} onFocus={props.onFocus} />
-      <ZoomControl position="topleft" />
-      <ScaleBar unit={view.unit} />
-    </MapContainer>
+    </WorldChart>
   );
-}
-
-function nameTheChart(map: LeafletMap | null): void {
-  const container = map?.getContainer();
-  container?.setAttribute("role", "region");
-  container?.setAttribute("aria-label", "Map of stations, rings and sources. Arrow keys move it, plus and minus change its scale.");
 }
 
 /** What must be seen at first: every station, and every place where the storm may have been. */

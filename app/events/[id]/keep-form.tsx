@@ -2,6 +2,7 @@ import { useRouter } from "next/navigation";
 import { useId, useState, useTransition } from "react";
 import { askServer, type Asked } from "../../_components/ask-server.ts";
 import { choicesJson } from "#lib/contracts/api/choices.ts";
+import forms from "../../_components/forms.module.css";
 import styles from "./kept-answers.module.css";
 import type { Work } from "./use-work.ts";
 
@@ -51,7 +52,7 @@ export function KeepForm(props: { eventId: string; eventRevision: number; latest
         onChange={({ target }) => { work.setReason(target.value); }}
       />
       <div className={styles.action}>
-        <button type="button" className={styles.button} disabled={isKeeping || isFetching || isBehind} onClick={() => { void keep(); }}>
+        <button type="button" className={forms.button} disabled={isKeeping || isFetching || isBehind} onClick={() => { void keep(); }}>
           {isKeeping ? "Keeping…" : "Keep this answer"}
         </button>
         <p role="status">{report?.kind === "done" && `Kept as number ${report.reply.number}.`}</p>
@@ -68,7 +69,7 @@ function Refused({ report, onShow }: { report: Exclude<Asked<unknown>, { kind: "
         {report.issues.map(({ message }) => <p key={message}>{message}</p>)}
       </div>
       {report.kind === "overtaken" && (
-        <button type="button" className={styles.button} onClick={onShow}>
+        <button type="button" className={forms.button} onClick={onShow}>
           Show what was kept
         </button>
       )}

@@ -8,6 +8,7 @@ import { listWords } from "#lib/presentation/numbers-in-words.ts";
 import { keptWords, type KeptAnswer } from "#lib/presentation/kept-words.ts";
 import { KeepForm } from "./keep-form.tsx";
 import { KeptChanges } from "./kept-changes.tsx";
+import forms from "../../_components/forms.module.css";
 import styles from "./kept-answers.module.css";
 import type { Work } from "./use-work.ts";
 
@@ -67,7 +68,7 @@ function Entry({ kept, isLatest, stations, work }: { kept: KeptAnswer; isLatest:
         {readings !== null && <p>{readings}</p>}
         {kept.reason !== "" && <p className={styles.reason}>{kept.reason}</p>}
         {!isLatest && (
-          <button type="button" className={styles.plain} onClick={() => { work.takeUp(kept.choices); }}>
+          <button type="button" className={forms.plain} onClick={() => { work.takeUp(kept.choices); }}>
             Take up number {kept.number} again
           </button>
         )}

@@ -3,6 +3,7 @@ import { askServer, type Asked } from "../../_components/ask-server.ts";
 import type { NumberedStation } from "#lib/core/arrival/numbered-stations.ts";
 import { changeWords, type KeptDifference } from "#lib/presentation/change-words.ts";
 import type { DistanceUnit } from "#lib/presentation/distances.ts";
+import forms from "../../_components/forms.module.css";
 import styles from "./kept-answers.module.css";
 
 /** What is different between any two kept answers; the latest and the one before it to begin with. */
@@ -39,7 +40,7 @@ function Choice({ label, value, numbers, onChange }: { label: string; value: num
   return (
     <>
       <label htmlFor={id}>{label}</label>
-      <select id={id} className={styles.select} value={value} onChange={({ target }) => { onChange(Number(target.value)); }}>
+      <select id={id} className={forms.choice} value={value} onChange={({ target }) => { onChange(Number(target.value)); }}>
         {numbers.map((number) => <option key={number}>{number}</option>)}
       </select>
     </>

@@ -4,6 +4,7 @@ import { momentText, momentWords, parseMoment } from "#lib/presentation/times.ts
 import { FieldCell } from "./field-cell.tsx";
 import { PERIOD_WORDS, parsePeriod, periodText } from "./period-text.ts";
 import type { ShownReading } from "./reading-rows.ts";
+import forms from "../../_components/forms.module.css";
 import styles from "./readings-panel.module.css";
 import type { ChangeReadings, ReadingChoices } from "./use-work.ts";
 
@@ -71,7 +72,7 @@ function Remarks({ row, name, onChange }: { row: ShownReading; name: string; onC
       {broughtIn !== null && (
         <button
           type="button"
-          className={styles.plain}
+          className={forms.plain}
           title={`It was brought in at ${momentWords(broughtIn.arrivalEpochSeconds)} with ${periodText(broughtIn.frequencyHz)} s.`}
           aria-label={`Put ${name} back where it was brought in`}
           onClick={() => { onChange((before) => ({ ...before, movedReadings: before.movedReadings.filter(({ readingId }) => readingId !== row.readingId) })); }}
@@ -82,7 +83,7 @@ function Remarks({ row, name, onChange }: { row: ShownReading; name: string; onC
       {addedAt !== null && (
         <button
           type="button"
-          className={styles.plain}
+          className={forms.plain}
           aria-label={`Take ${name} out`}
           onClick={() => { onChange((before) => ({ ...before, addedReadings: before.addedReadings.filter((__, place) => place !== addedAt) })); }}
         >

@@ -5,6 +5,7 @@ import type { EventSolution } from "#lib/core/source/solution.ts";
 import { AddReading } from "./add-reading.tsx";
 import { readingRows } from "./reading-rows.ts";
 import { ReadingRow } from "./reading-row.tsx";
+import forms from "../../_components/forms.module.css";
 import styles from "./readings-panel.module.css";
 import type { Work } from "./use-work.ts";
 
@@ -26,7 +27,7 @@ export function ReadingsPanel(props: {
       <h2 id={heading} className={styles.heading}>Readings</h2>
       <p className={styles.choose}>
         <label htmlFor={choose}>Station</label>
-        <select id={choose} className={styles.select} value={focus ?? ""} onChange={({ target }) => { onFocus(target.value === "" ? null : target.value); }}>
+        <select id={choose} className={forms.choice} value={focus ?? ""} onChange={({ target }) => { onFocus(target.value === "" ? null : target.value); }}>
           <option value="">choose one, here, in the table or on the chart</option>
           {stations.map(({ id, number, name }) => <option key={id} value={id}>{number} {name}</option>)}
         </select>

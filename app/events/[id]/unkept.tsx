@@ -1,5 +1,6 @@
 import { readingChoiceWords } from "#lib/presentation/choice-words.ts";
 import { startingSentence } from "#lib/presentation/numbers-in-words.ts";
+import forms from "../../_components/forms.module.css";
 import styles from "./unkept.module.css";
 import type { Work } from "./use-work.ts";
 
@@ -15,8 +16,8 @@ export function Unkept({ work, latestNumber }: { work: Work; latestNumber: numbe
         <p className={styles.actions}>
           <span>Not kept yet.</span>
           <a href="#keep">Keep it</a>
-          {work.canUndo && <button type="button" className={styles.plain} onClick={work.undo}>Undo the last change</button>}
-          <button type="button" className={styles.plain} onClick={work.discard}>
+          {work.canUndo && <button type="button" className={forms.plain} onClick={work.undo}>Undo the last change</button>}
+          <button type="button" className={forms.plain} onClick={work.discard}>
             {latestNumber > 0 ? `Back to number ${latestNumber}` : "Back to what was brought in"}
           </button>
         </p>
