@@ -47,6 +47,8 @@ export async function keepLocalization({ events, localizations, host }: Keeping,
   requireUnchanged(event, wanted.eventRevision);
   const { eventId, startedFrom, savedEpochSeconds, actor, reason, choices, settings } = wanted;
   requireKnown(event.observations, choices);
+  // The store asks this again; it is asked here so that no answer is worked out in vain.
+  await localizations.requireLatest(eventId, startedFrom);
   const observations = chosenObservations(event.observations, choices);
   const { solution, answer } = locateEvent({ observations, settings, notes: gatheringNotes(event.observations, choices), host });
   if (answer === null) {

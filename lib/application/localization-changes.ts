@@ -1,4 +1,5 @@
 import type { EventObservations } from "#lib/core/arrival/observations.ts";
+import type { Reading } from "#lib/core/arrival/reading.ts";
 import { geodesicInverse } from "#lib/core/geodesy/geodesic.ts";
 import type { LocateJson } from "#lib/contracts/locate-json.ts";
 import type { LocalizationChanges } from "#lib/contracts/api/localizations.ts";
@@ -45,15 +46,30 @@ function heard({ deployments, readings, estimates }: EventObservations): string[
   return [...new Set(deployments.map(({ stationId }) => stationId))].filter((id) => ids.has(id));
 }
 
-/** A reading is known by its row; one that was moved, or whose time was corrected, is changed. */
+/**
+ * Readings that say the same are the same, whatever their rows. Of the rest those of one row are one reading that was
+ * changed: moved by hand, or its time corrected.
+ */
 function readingChanges(station: string, had: EventObservations, has: EventObservations): LocalizationChanges["readings"] {
-  const [before, after] = [byRow(had, station), byRow(has, station)];
-  const wentOut = [...before.keys()].filter((row) => !after.has(row)).length;
-  const cameIn = [...after.keys()].filter((row) => !before.has(row)).length;
-  const changed = [...after].filter(([row, reading]) => before.has(row) && before.get(row) !== reading).length;
-  return wentOut + cameIn + changed === 0 ? [] : [{ station, changed, in: cameIn, out: wentOut }];
+  const [before, after] = [had, has].map(({ readings }) => readings.filter(({ stationId }) => stationId === station).map(({ reading }) => reading));
+  const wentOut = withoutAlike(before ?? [], after ?? []);
+  const cameIn = withoutAlike(after ?? [], before ?? []);
+  const rows = new Set(wentOut.map(({ row }) => row));
+  const changed = cameIn.filter(({ row }) => rows.has(row)).length;
+  return wentOut.length + cameIn.length === 0 ? [] : [{ station, changed, in: cameIn.length - changed, out: wentOut.length - changed }];
 }
 
-function byRow({ readings }: EventObservations, station: string): Map<number, string> {
-  return new Map(readings.filter(({ stationId }) => stationId === station).map(({ reading }) => [reading.row, JSON.stringify(reading)]));
+/** Those of `some` for which `others` has no counterpart, each counterpart counted once. */
+function withoutAlike(some: readonly Reading[], others: readonly Reading[]): Reading[] {
+  const left = new Map<string, number>();
+  for (const reading of others) left.set(contentOf(reading), (left.get(contentOf(reading)) ?? 0) + 1);
+  return some.filter((reading) => {
+    const count = left.get(contentOf(reading)) ?? 0;
+    left.set(contentOf(reading), count - 1);
+    return count <= 0;
+  });
+}
+
+function contentOf({ arrivalEpochSeconds, frequencyHz, arrivalSigmaSeconds, frequencySigmaHz, kind, bearing }: Reading): string {
+  return JSON.stringify([arrivalEpochSeconds, frequencyHz, arrivalSigmaSeconds, frequencySigmaHz, kind, bearing]);
 }

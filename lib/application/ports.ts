@@ -251,6 +251,9 @@ export interface LocalizationStore {
 
   loadLocalization(eventId: string, number: number): Promise<StoredLocalization | null>;
 
+  /** @throws Refusal `conflict` where another was saved since `startedFrom`. */
+  requireLatest(eventId: string, startedFrom: number): Promise<void>;
+
   /**
    * Keeps an answer as its event's next number, with a line in the audit trail: both or nothing. Gives the number.
    *

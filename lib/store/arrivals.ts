@@ -90,6 +90,7 @@ export async function flagReading(transaction: Transaction, flag: { readingId: n
   const reading = await transaction.reading.findUnique({ where: { id: readingId } });
   if (reading === null) throw new Refusal("not-found", `No reading ${readingId} is stored.`);
   const { id, eventId, stationId, revision } = await requireArrival(transaction, reading.arrivalId, startedFrom);
+  if (reading.quality === quality) return revision;
   await transaction.reading.update({ where: { id: readingId }, data: { quality } });
   await transaction.arrival.update({ where: { id }, data: { revision: revision + 1 } });
   const detail = { reading: readingId, arrival: id, station: stationId, before: reading.quality, after: quality };

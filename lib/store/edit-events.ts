@@ -24,6 +24,7 @@ export async function openEvent(transaction: Transaction, event: EventToOpen, do
 export async function editEvent(transaction: Transaction, edit: { id: string; startedFrom: number; title: string; note: string }, doing: Doing): Promise<number> {
   const { id, startedFrom, title, note } = edit;
   const before = await requireVersion(transaction, { id, startedFrom });
+  if (before.title === title && before.note === note) return before.revision;
   const detail = { before: { title: before.title, note: before.note }, after: { title, note } };
   return changeEvent(transaction, { id, action: "event described", detail, data: { title, note } }, doing);
 }

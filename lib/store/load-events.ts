@@ -1,5 +1,5 @@
 import type { EventSummary, StoredEvent } from "#lib/application/ports.ts";
-import type { ClockCorrection, GatheredEstimate, GatheredReading } from "#lib/core/arrival/gathered-observations.ts";
+import type { ClockCorrection, GatheredReading } from "#lib/core/arrival/gathered-observations.ts";
 import { arrivalSummary } from "./arrivals.ts";
 import type { PrismaClient } from "./generated/client.ts";
 import { placedSummary } from "./localizations.ts";
@@ -77,7 +77,8 @@ export async function loadEvent(reader: PrismaClient, id: string): Promise<Store
       arrivals: event.arrivals.map(arrivalSummary),
       observations: {
         deployments: inOrder.flatMap(({ deployments }) => deployments),
-        ...withDistinctRows(readings, estimates),
+        readings: withDistinctRows(readings, event.arrivals),
+        estimates,
         clockCorrections: inOrder.flatMap(({ clockCorrections }): readonly ClockCorrection[] => clockCorrections),
       },
     };
@@ -86,17 +87,21 @@ export async function loadEvent(reader: PrismaClient, id: string): Promise<Store
 
 /**
  * Messages name a station's readings by their rows. Where a station has readings of two arrivals, each numbered from its
- * own file, they are numbered through.
+ * own file, those of the arrival that joined the event later are numbered on from the last row of the earlier one, which
+ * keeps its own: rows say which reading is which in the answers that were kept before.
  */
-function withDistinctRows(readings: readonly GatheredReading[], estimates: readonly GatheredEstimate[]) {
-  const arrivalsOf = new Map<string, Set<number>>();
-  for (const { stationId, arrivalId } of readings) arrivalsOf.set(stationId, (arrivalsOf.get(stationId) ?? new Set()).add(arrivalId));
-  const lastRow = new Map<string, number>();
-  const numbered = readings.map((item) => {
-    if ((arrivalsOf.get(item.stationId)?.size ?? 0) < 2) return item;
-    const row = (lastRow.get(item.stationId) ?? 0) + 1;
-    lastRow.set(item.stationId, row);
-    return { ...item, reading: { ...item.reading, row } };
+function withDistinctRows(readings: readonly GatheredReading[], arrivals: readonly { readonly id: number; readonly stationId: string }[]): GatheredReading[] {
+  const lastOfArrival = new Map<number, number>();
+  for (const { arrivalId, reading } of readings) lastOfArrival.set(arrivalId, Math.max(lastOfArrival.get(arrivalId) ?? 0, reading.row));
+  const lastOfStation = new Map<string, number>();
+  const before = new Map<number, number>();
+  for (const { id, stationId } of arrivals) {
+    const rows = lastOfStation.get(stationId) ?? 0;
+    before.set(id, rows);
+    lastOfStation.set(stationId, rows + (lastOfArrival.get(id) ?? 0));
+  }
+  return readings.map((item) => {
+    const rows = before.get(item.arrivalId) ?? 0;
+    return rows === 0 ? item : { ...item, reading: { ...item.reading, row: item.reading.row + rows } };
   });
-  return { readings: numbered, estimates };
 }

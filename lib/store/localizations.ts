@@ -15,9 +15,8 @@ export async function saveLocalization(transaction: Prisma.TransactionClient, lo
   const { leftOutStationIds: leftOut, ...others } = choices;
   const event = await requireEvent(transaction, eventId);
   requireUnmerged(event);
-  const latest = await transaction.localization.findFirst({ where: { eventId }, orderBy: { number: "desc" } });
-  const number = (latest?.number ?? 0) + 1;
-  if (number !== startedFrom + 1) throw stale(eventId, startedFrom, latest);
+  await requireLatest(transaction, eventId, startedFrom);
+  const number = startedFrom + 1;
   requireRevision(`Event "${eventId}"`, event, plain.eventRevision);
 
   await transaction.localization.create({
@@ -40,7 +39,12 @@ export async function saveLocalization(transaction: Prisma.TransactionClient, lo
   return number;
 }
 
-function stale(eventId: string, startedFrom: number, latest: Localization | null): Refusal {
+export async function requireLatest(reader: Pick<PrismaClient, "localization">, eventId: string, startedFrom: number): Promise<void> {
+  const latest = await reader.localization.findFirst({ where: { eventId }, orderBy: { number: "desc" }, select: { number: true, savedEpochSeconds: true, actor: true } });
+  if ((latest?.number ?? 0) !== startedFrom) throw stale(eventId, startedFrom, latest);
+}
+
+function stale(eventId: string, startedFrom: number, latest: Pick<Localization, "number" | "savedEpochSeconds" | "actor"> | null): Refusal {
   if (latest === null || latest.number < startedFrom) {
     return new Refusal("conflict", `Event "${eventId}" has ${String(latest?.number ?? 0)} localizations; this one says it started from number ${String(startedFrom)}.`);
   }

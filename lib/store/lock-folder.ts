@@ -10,7 +10,8 @@ import Database from "better-sqlite3";
 export function lockFolder(dataDirectory: string): () => void {
   const lock = new Database(join(dataDirectory, "offing.lock"), { timeout: 0 });
   try {
-    lock.exec("BEGIN EXCLUSIVE");
+    // Written to as well, and never committed: a file that may only be read can be locked by any number of programs.
+    lock.exec("BEGIN EXCLUSIVE; CREATE TABLE IF NOT EXISTS held (by INTEGER)");
   } catch (error) {
     lock.close();
     throw error;

@@ -3,11 +3,12 @@ import { join } from "node:path";
 import type { ArrivalStore, AuditTrail, EventStore, LocalizationStore, StationStore } from "#lib/application/ports.ts";
 import { flagReading, listArrivals, listReadings, loadArrival, moveArrival, saveArrival } from "./arrivals.ts";
 import { listAudit } from "./audit.ts";
+import { asRefusal } from "./cannot-store.ts";
 import { openClient } from "./client.ts";
 import { editEvent, mergeEvents, openEvent, splitEvent } from "./edit-events.ts";
 import type { Prisma } from "./generated/client.ts";
 import { listEvents, loadEvent } from "./load-events.ts";
-import { listLocalizations, loadLocalization, saveLocalization } from "./localizations.ts";
+import { listLocalizations, loadLocalization, requireLatest, saveLocalization } from "./localizations.ts";
 import { lockFolder } from "./lock-folder.ts";
 import { migrate } from "./migrate.ts";
 import { saveEvent } from "./save-event.ts";
@@ -41,7 +42,9 @@ export async function openStore(place: Place): Promise<Store> {
   const reader = await openClient(databasePath);
   const gate = createWriteGate();
   const write: Store["write"] = (work) =>
-    gate.through(() => writer.$transaction(work));
+    gate.through(() => writer.$transaction(work)).catch((error: unknown) => {
+      throw asRefusal(error);
+    });
 
   return {
     write,
@@ -64,6 +67,7 @@ export async function openStore(place: Place): Promise<Store> {
     flagReading: (flag, doing) => write((transaction) => flagReading(transaction, flag, doing)),
     listLocalizations: (eventId) => listLocalizations(reader, eventId),
     loadLocalization: (eventId, number) => loadLocalization(reader, eventId, number),
+    requireLatest: (eventId, startedFrom) => requireLatest(reader, eventId, startedFrom),
     saveLocalization: (localization) => write((transaction) => saveLocalization(transaction, localization)),
     listAudit: (filter) => listAudit(reader, filter),
     async close() {

@@ -1,4 +1,5 @@
 import { isDeepStrictEqual } from "node:util";
+import { z } from "zod";
 import type { Doing, StationToSave, StoredStation } from "#lib/application/ports.ts";
 import type { StationDescription } from "#lib/core/arrival/station-description.ts";
 import { Refusal } from "#lib/core/failures/refusal.ts";
@@ -39,21 +40,25 @@ interface Before {
  * together: statement by statement, thousands of stations would hold up everybody else's writes.
  */
 export async function saveStations(transaction: Transaction, stations: readonly StationToSave[], doing: Doing): Promise<void> {
-  const before = await loadBefore(transaction, stations);
+  const stored = await loadBefore(transaction, stations);
   for (const { description: { id }, startedFrom } of stations) {
-    const stored = before.get(id);
-    if (stored === undefined && startedFrom !== 0) throw new Refusal("conflict", `Station "${id}" is not stored any more.`);
-    if (stored !== undefined && startedFrom === 0) throw new Refusal("conflict", `Station "${id}" is stored already.`);
-    if (stored !== undefined) requireRevision(`Station "${id}"`, stored, startedFrom);
+    const one = stored.get(id);
+    if (one === undefined && startedFrom !== 0) throw new Refusal("conflict", `Station "${id}" is not stored any more.`);
+    if (one !== undefined && startedFrom === 0) throw new Refusal("conflict", `Station "${id}" is stored already.`);
+    if (one !== undefined) requireRevision(`Station "${id}"`, one, startedFrom);
   }
-  const descriptions = stations.map(({ description }) => description);
+  // What says nothing new is no change, and makes nobody's work stale.
+  const descriptions = stations.map(({ description }) => description).filter((after) => !isDeepStrictEqual(stored.get(after.id)?.description, after));
+  const changed = new Set(descriptions.map(({ id }) => id));
+  const before = new Map([...stored].filter(([id]) => changed.has(id)));
+  const revisions = await nextRevisions(transaction, descriptions, before);
   await makeGroups(transaction, descriptions);
-  await saveOwnRows(transaction, descriptions, before);
+  await saveOwnRows(transaction, descriptions, revisions);
   await saveAliases(transaction, descriptions, before);
   await saveDeployments(transaction, descriptions.filter(({ id, deployments }) => !isDeepStrictEqual(before.get(id)?.description.deployments, deployments)));
   await saveClockCorrections(transaction, descriptions, before);
   await tellEvents(transaction, descriptions.filter((after) => changesAnswers(before.get(after.id), after)), doing);
-  const lines = descriptions.map((after) => auditRow(after, before.get(after.id) ?? null, doing));
+  const lines = descriptions.map((after) => auditRow(after, { before: before.get(after.id) ?? null, revision: revisions.get(after.id) ?? 1 }, doing));
   await insertRows(transaction, "audit_entries (at_epoch_seconds, actor, action, subject, detail_json)", lines.map((line) => [line.atEpochSeconds, line.actor, line.action, line.subject, line.detail]));
 }
 
@@ -61,6 +66,23 @@ async function loadBefore(transaction: Transaction, stations: readonly StationTo
   const rows = await loadWholeStations(transaction, stations.map(({ description }) => description.id));
   return new Map(rows.map((row) => [row.id, { description: descriptionFromRow(row), revision: row.revision }]));
 }
+
+/** A station that was removed and is made anew goes on from where it was: its old revisions are stale for good. */
+async function nextRevisions(transaction: Transaction, descriptions: readonly StationDescription[], before: ReadonlyMap<string, Before>): Promise<Map<string, number>> {
+  const next = new Map([...before].map(([id, { revision }]) => [id, revision + 1]));
+  await inChunks(descriptions.map(({ id }) => `station ${id}`), async (subjects) => {
+    const removed = await transaction.auditEntry.findMany({ where: { subject: { in: subjects }, action: REMOVED }, select: { subject: true, detail: true } });
+    for (const { subject, detail } of removed) {
+      const id = subject.slice("station ".length);
+      const { revision } = Removal.parse(JSON.parse(detail));
+      next.set(id, Math.max(next.get(id) ?? 1, revision + 1));
+    }
+  });
+  return next;
+}
+
+const REMOVED = "station removed";
+const Removal = z.object({ revision: z.number() });
 
 async function makeGroups(transaction: Transaction, descriptions: readonly StationDescription[]): Promise<void> {
   const known = new Set((await transaction.group.findMany()).map(({ id }) => id));
@@ -80,11 +102,10 @@ async function insertRows(transaction: Transaction, into: string, rows: readonly
 }
 
 /** New rows and changed ones alike. */
-async function saveOwnRows(transaction: Transaction, descriptions: readonly StationDescription[], before: ReadonlyMap<string, Before>): Promise<void> {
+async function saveOwnRows(transaction: Transaction, descriptions: readonly StationDescription[], revisions: ReadonlyMap<string, number>): Promise<void> {
   const columns = ["revision", "group_id", "licence", "attribution", "contact", "doi", "visibility", "embargo_until_epoch_seconds", "note"];
   const rows = descriptions.map(({ id, groupId, licence, attribution, contact, doi, visibility, embargoUntilEpochSeconds, note }) => {
-    const revision = (before.get(id)?.revision ?? 0) + 1;
-    return [id, revision, groupId, licence, attribution, contact, doi, visibility, embargoUntilEpochSeconds, note];
+    return [id, revisions.get(id) ?? 1, groupId, licence, attribution, contact, doi, visibility, embargoUntilEpochSeconds, note];
   });
   const set = columns.map((column) => `${column} = excluded.${column}`).join(", ");
   await insertRows(transaction, `stations (id, ${columns.join(", ")})`, rows, `ON CONFLICT (id) DO UPDATE SET ${set}`);
@@ -155,8 +176,8 @@ async function tellEvents(transaction: Transaction, descriptions: readonly Stati
   for (const [id, stations] of stationsOf) await changeEvent(transaction, { id, action: "stations described anew", detail: { stations } }, doing);
 }
 
-function auditRow(after: StationDescription, before: Before | null, { actor, savedEpochSeconds }: Doing) {
-  const detail = { revision: (before?.revision ?? 0) + 1, before: before?.description ?? null, after };
+function auditRow(after: StationDescription, { before, revision }: { before: Before | null; revision: number }, { actor, savedEpochSeconds }: Doing) {
+  const detail = { revision, before: before?.description ?? null, after };
   const action = before === null ? "station made" : "station changed";
   return { atEpochSeconds: savedEpochSeconds, actor, action, subject: `station ${after.id}`, detail: JSON.stringify(detail) };
 }
@@ -169,5 +190,5 @@ export async function removeStation(transaction: Transaction, id: string, starte
   if (count > 0) throw new Refusal("conflict", `Station "${id}" has ${count === 1 ? "an arrival" : `${count} arrivals`}, and stays with them. End its last deployment instead.`);
   await transaction.deployment.deleteMany({ where: { stationId: id } });
   await transaction.station.delete({ where: { id } });
-  await addToAudit(transaction, doing, { action: "station removed", subject: `station ${id}`, detail: { before: descriptionFromRow(row) } });
+  await addToAudit(transaction, doing, { action: REMOVED, subject: `station ${id}`, detail: { revision: row.revision, before: descriptionFromRow(row) } });
 }

@@ -28,9 +28,9 @@ describe("the code", () => {
 describe("the top of the house", () => {
   test("holds what was decided and what tools demand, and nothing else", () => {
     const decided = ["package.json", "next.config.js", "tsconfig.json", "README.md", "DEVELOPERS.md", "app", "lib", "prisma", "tests", "fixtures"];
-    // The lock file; the folder that Next serves as it stands; the file that Next takes for its proxy; types and
+    // The lock file; the folder that Next serves as it stands; the files that Next takes for its proxy and for what it runs first; types and
     // records that tools leave behind, which are not kept.
-    const demanded = ["package-lock.json", "public", "proxy.ts", "node_modules", "next-env.d.ts", "tsconfig.tsbuildinfo"];
+    const demanded = ["package-lock.json", "public", "proxy.ts", "instrumentation.ts", "node_modules", "next-env.d.ts", "tsconfig.tsbuildinfo"];
     const others = readdirSync(".").filter((name) => !name.startsWith(".") && ![...decided, ...demanded].includes(name));
     expect(others).toStrictEqual([]);
   });

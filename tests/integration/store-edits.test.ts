@@ -87,13 +87,13 @@ describe("an arrival", () => {
 });
 
 describe("an event", () => {
-  test("numbers a station's rows through where two of its arrivals have the same ones, and leaves all others as they came", async () => {
+  test("numbers the rows of a station's later arrivals on from those of the first, which keeps its own", async () => {
     const store = await twoEvents();
     const rows = async () => (await event(store, "gale")).observations.readings.map((item) => [item.stationId, item.reading.row]);
     expect(await rows()).toStrictEqual([["north-mole", 2], ["north-mole", 3]]);
     await store.saveArrival(toSave("gale", [1, 2, 3]), doing);
     await store.saveArrival(toSave("gale", [7], "far-rock"), doing);
-    expect(await rows()).toStrictEqual([["north-mole", 1], ["north-mole", 2], ["north-mole", 3], ["north-mole", 4], ["north-mole", 5], ["far-rock", 7]]);
+    expect(await rows()).toStrictEqual([["north-mole", 2], ["north-mole", 3], ["north-mole", 4], ["north-mole", 5], ["north-mole", 6], ["far-rock", 7]]);
   });
 
   test("is opened of arrivals in the order asked for, under the first free name of their day", async () => {

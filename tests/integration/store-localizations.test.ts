@@ -109,7 +109,7 @@ describe("an answer that is kept", () => {
     expect(answer.stations.map(({ id }) => id)).not.toContain(station);
     await expect(keepLocalization(keeping, { ...wanted, choices: without("nowhere") })).rejects.toMatchObject({ issues: [{ code: "unknown-station", path: "leftOut[0]" }] });
     const all = [...new Set(observations.readings.map(({ stationId }) => stationId))];
-    await expect(keepLocalization(keeping, { ...wanted, choices: without(...all) })).rejects.toMatchObject({ issues: [{ code: "not-fitted" }] });
+    await expect(keepLocalization(keeping, { ...wanted, startedFrom: 1, choices: without(...all) })).rejects.toMatchObject({ issues: [{ code: "not-fitted" }] });
     await expect(keepLocalization(keeping, { ...wanted, eventId: "calm" })).rejects.toMatchObject({ reason: "not-found" });
     expect(await store.listLocalizations("tern")).toHaveLength(1);
   });

@@ -13,6 +13,19 @@ function descriptionOf(station: StoredStation): StationDescription {
   return { id, groupId, aliases, deployments, clockCorrections, licence, attribution, contact, doi, visibility, embargoUntilEpochSeconds, note };
 }
 
+test("a station that is removed and made anew goes on from its old revisions, so that they stay stale", async () => {
+  const { store } = await temporaryStore();
+  const { deployments } = inventedEvent("gale").observations;
+  const description = { ...UNDESCRIBED, id: "far-rock", deployments: deployments.filter(({ stationId }) => stationId === "far-rock") };
+  await store.saveStations([{ description, startedFrom: 0 }], DOING);
+  await store.removeStation("far-rock", 1, DOING);
+  expect(await store.loadStation("far-rock")).toBeNull();
+  await store.saveStations([{ description: { ...description, note: "anew" }, startedFrom: 0 }], DOING);
+  expect((await store.loadStation("far-rock"))?.revision).toBe(2);
+  await expect(store.saveStations([{ description, startedFrom: 1 }], DOING)).rejects.toMatchObject({ reason: "conflict" });
+  expect((await store.loadStation("far-rock"))?.note).toBe("anew");
+});
+
 describe("a station that is described anew", () => {
   test("in place, time or clock makes a new revision of the events that it has a part in, and of no others", async () => {
     const { store } = await temporaryStore();
@@ -60,6 +73,8 @@ describe("a station that is described anew", () => {
     await expect(store.saveStations([{ ...change, startedFrom: 0 }], DOING)).rejects.toMatchObject({ reason: "conflict" });
     await expect(store.saveStations([{ description: { ...UNDESCRIBED, id: "gone", deployments: [] }, startedFrom: 3 }], DOING)).rejects.toMatchObject({ reason: "conflict" });
     expect((await store.loadStation("far-rock"))?.note).toBe("moored");
+    await store.saveStations([{ ...change, startedFrom: 2 }], DOING);
+    expect((await store.loadStation("far-rock"))?.revision).toBe(2); // it says nothing new
     await expect(store.removeStation("far-rock", 2, DOING)).rejects.toMatchObject({ reason: "conflict", message: expect.stringContaining("has an arrival") as string });
   });
 });

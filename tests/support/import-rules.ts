@@ -27,6 +27,7 @@ const MAY_IMPORT: Readonly<Record<string, readonly string[] | undefined>> = {
   app: [...CORE, "contracts", "chart", "presentation", "application", "application/ports", "http"],
   prisma: [...CORE, "records", "application/ports", "store"],
   proxy: ["http"],
+  instrumentation: ["http"],
   config: ["tests"],
   tests: [...CORE, "records", "contracts", "chart", "presentation", "application", "application/ports", "store", "jobs", "http", "cli", "app", "prisma"],
 };
@@ -56,6 +57,7 @@ function roomOf(path: string): string {
   const [top = "", second = "", third = ""] = path.split("/");
   if (top === "lib") return second === "core" ? `core/${third}` : second;
   if (top === "proxy.ts") return "proxy";
+  if (top === "instrumentation.ts") return "instrumentation";
   return top === ".config" || top === "next.config.js" ? "config" : top;
 }
 

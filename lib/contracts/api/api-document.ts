@@ -22,6 +22,7 @@ const REFUSED: Readonly<Record<RefusalReason, string>> = {
   forbidden: "The request is meant for another host, comes from a page elsewhere, or its sender lacks the role.",
   "too-large": "The body is larger than the operation takes.",
   "too-many": "There are too many of these.",
+  "cannot-store": "The server's disk is full or may not be written; nothing was stored.",
 };
 
 const ABOUT = [
@@ -63,9 +64,9 @@ function described(operation: AnyOperation): ZodOpenApiOperationObject {
   };
 }
 
-function responses({ answer, body, refusals }: AnyOperation): ZodOpenApiResponsesObject {
+function responses({ answer, body, method, refusals }: AnyOperation): ZodOpenApiResponsesObject {
   const problem = (description: string) => ({ description, content: { "application/json": { schema: problemsShape } } });
-  const reasons = new Set<RefusalReason>([...refusals, "forbidden", ...(body === null ? [] : (["too-large"] as const))]);
+  const reasons = new Set<RefusalReason>([...refusals, "forbidden", ...(body === null ? [] : (["too-large"] as const)), ...(method === "GET" ? [] : (["cannot-store"] as const))]);
   const refused = [...reasons].map((reason) => [String(REFUSAL_STATUS[reason]), problem(REFUSED[reason])] as const);
   return Object.fromEntries([
     [String(answer.status), { description: answer.status === 201 ? "Made; Location is its address." : "Done.", content: { [answer.type]: { schema: answer.type === "text/csv" ? z.string() : answer.schema } } }],

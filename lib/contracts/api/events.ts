@@ -3,9 +3,9 @@ import type { SourceOutcome } from "#lib/core/source/answer.ts";
 import type { Position } from "#lib/core/units/position.ts";
 import { isoTime } from "../iso-time.ts";
 import { arrivalShape, idField, NOTE } from "./arrivals.ts";
-import { countField, distinctField, revisionField, textField, timeField } from "./fields.ts";
+import { countField, distinctField, lineField, revisionField, textField, timeField } from "./fields.ts";
 
-const titleField = textField({ wanted: "a title of 1 to 200 letters", least: 1, most: 200 });
+const titleField = lineField({ wanted: "a title of 1 to 200 letters on one line", most: 200 });
 const arrivalField = countField({ wanted: "the id of an arrival that is stored", from: 1 });
 const MOST_ARRIVALS = 1000;
 const ID_WANTED = "an id of 1 to 80 small letters, digits and hyphens";

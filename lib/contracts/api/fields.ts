@@ -1,4 +1,5 @@
 import * as z from "zod/mini";
+import { isLine } from "#lib/core/arrival/station-limits.ts";
 import { parseIsoTime } from "#lib/core/units/parse-iso-time.ts";
 import { isoTime } from "../iso-time.ts";
 
@@ -8,6 +9,11 @@ import { isoTime } from "../iso-time.ts";
  */
 export function textField({ wanted, least = 0, most }: { wanted: string; least?: number; most: number }) {
   return described(z.string(wanted).check(z.minLength(least, wanted), z.maxLength(most, wanted), z.refine(isPlain, `${wanted}, without control characters`)), wanted);
+}
+
+/** Text on one line that shows something. */
+export function lineField({ wanted, most }: { wanted: string; most: number }) {
+  return described(z.string(wanted).check(z.refine((text) => isLine(text, most), wanted)), wanted);
 }
 
 /** The database can keep no half of a surrogate pair as it is, and takes a NUL for the end of a text where it counts. */

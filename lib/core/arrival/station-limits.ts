@@ -39,9 +39,10 @@ export function isStationId(id: string): boolean {
   return isLine(id, STATION_LETTERS.id) && id === id.trim() && !NO_IDS.has(id);
 }
 
-/** Text on one line that says something. */
+/** Text on one line that shows something, and turns no text beside it round. */
 export function isLine(text: string, most: number): boolean {
-  return text.trim() !== "" && text.length <= most && !/[\p{Cc}\p{Cs}]/u.test(text);
+  const shows = /[^\s\p{Cf}\p{Cc}\p{Cs}]/u.test(text);
+  return shows && text.length <= most && !/[\p{Cc}\p{Cs}\u2028\u2029\u202a-\u202e\u2066-\u2069]/u.test(text);
 }
 
 /** A reason stands in one cell with others, parted from them by that sign. */

@@ -1,4 +1,4 @@
-export type RefusalReason = "not-found" | "conflict" | "forbidden" | "too-large" | "too-many";
+export type RefusalReason = "not-found" | "conflict" | "forbidden" | "too-large" | "too-many" | "cannot-store";
 
 /** The request is well formed and still cannot be granted. One table (lib/contracts/api/refusal-status.ts) maps reasons to statuses. */
 export class Refusal extends Error {
