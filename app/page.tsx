@@ -3,15 +3,17 @@ import type { EventSummary } from "#lib/application/ports.ts";
 import { runningProgram } from "#lib/http/running-program.ts";
 import { keptPlaceWords } from "#lib/presentation/kept-words.ts";
 import { counted } from "#lib/presentation/numbers-in-words.ts";
-import { dayWords, momentWords } from "#lib/presentation/times.ts";
+import { dayWords } from "#lib/presentation/times.ts";
+import { waitingWords } from "#lib/presentation/waiting-words.ts";
 import { WaitingArrivals } from "./waiting-arrivals.tsx";
 import text from "./page-text.module.css";
 
 const MOST_WAITING = 200;
 
 export default async function EventsPage() {
-  const { events, arrivals } = await runningProgram();
+  const { events, arrivals, stations } = await runningProgram();
   const [list, waiting] = await Promise.all([events.listEvents(), arrivals.listArrivals({ eventId: null, limit: MOST_WAITING })]);
+  const names = waiting.length === 0 ? new Map<string, string>() : new Map((await stations.listStations()).map(({ id, deployments }) => [id, deployments.at(-1)?.name ?? id]));
   return (
     <div className={text.page}>
       <h1 className={text.title}>Events</h1>
@@ -27,11 +29,7 @@ export default async function EventsPage() {
       </p>
       {waiting.length > 0 && (
         <WaitingArrivals
-          arrivals={waiting.map(({ id, revision, stationId, readings, actor, savedEpochSeconds }) => ({
-            id,
-            revision,
-            words: `${stationId}: ${readings.length === 0 ? "an estimate" : counted(readings.length, "reading")}, ${momentWords(savedEpochSeconds)}, ${actor}`,
-          }))}
+          arrivals={waiting.map((arrival) => ({ id: arrival.id, revision: arrival.revision, words: waitingWords(arrival, names.get(arrival.stationId) ?? arrival.stationId) }))}
         />
       )}
       {list.length > 0 && (

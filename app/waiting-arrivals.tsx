@@ -51,8 +51,8 @@ export function WaitingArrivals({ arrivals }: { arrivals: readonly WaitingArriva
   };
   return (
     <section aria-labelledby={heading} className={text.section}>
-      <h2 id={heading} className={text.entryTitle}>Arrivals that wait for an event</h2>
-      <ul className={text.list}>
+      <h2 id={heading} className={text.entryTitle}>{arrivals.length === 1 ? "One arrival waits" : `${arrivals.length} arrivals wait`} for an event</h2>
+      <ul className={`${text.list ?? ""} ${text.window ?? ""}`} tabIndex={0} aria-labelledby={heading}>
         {arrivals.map(({ id, words }) => (
           <li key={id}>
             <label className={text.choice}>

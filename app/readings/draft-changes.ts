@@ -1,5 +1,6 @@
 import { EMPTY_DRAFT, EMPTY_ROW, type Draft, type DraftRow } from "#lib/contracts/hand-readings/draft.ts";
 import { isBlank, type RowField } from "#lib/contracts/hand-readings/hand-row.ts";
+import { readTimeOfDay } from "#lib/contracts/hand-readings/clock-time.ts";
 import type { PastedRow } from "#lib/contracts/hand-readings/pasted-rows.ts";
 
 export type DraftChange =
@@ -48,7 +49,8 @@ function changedRow(row: DraftRow, part: Partial<Omit<DraftRow, "key">>): DraftR
   return { ...row, ...("date" in part || "time" in part ? { turn: null } : {}), ...part };
 }
 
-function nextKey(rows: readonly DraftRow[]): number {
+/** Keys of rows that are made grow by one from here. */
+export function nextKey(rows: readonly DraftRow[]): number {
   return Math.max(0, ...rows.map(({ key }) => key)) + 1;
 }
 
@@ -75,6 +77,8 @@ function withPasted(rows: readonly DraftRow[], { key, rows: pasted }: { key: num
   let { date } = into;
   const first = nextKey(rows);
   const made = pasted.map((row, i): DraftRow => {
+    // A cell that holds no mere time of day may hold a day in a form that nobody can be sure of: it gets none from above.
+    if (row.date === null && row.time !== "" && readTimeOfDay(row.time) === null) return { ...EMPTY_ROW, ...row, date: "", key: first + i };
     date = row.date ?? date;
     return { ...EMPTY_ROW, ...row, date, key: first + i };
   });

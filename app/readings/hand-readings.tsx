@@ -4,6 +4,7 @@ import dynamic from "next/dynamic";
 import { useState } from "react";
 import { hasWork, useDraft } from "./use-draft.ts";
 import { DEFAULT_SETTINGS } from "#lib/core/source/settings.ts";
+import type { DraftShelf } from "../_components/draft-shelf.ts";
 import { useBaseMap } from "../_components/chart/use-base-map.ts";
 import { FindingsPart, Summary } from "./findings-part.tsx";
 import form from "./form.module.css";
@@ -22,9 +23,9 @@ import { workOut } from "./work-out.ts";
 const PlaceChart = dynamic(() => import("./place-chart.tsx").then((module) => module.PlaceChart), { ssr: false });
 
 /** Periods timed by hand, worked out as they are typed, and brought in as a station's arrival. */
-export function HandReadings(props: { stations: readonly StationChoice[]; events: readonly EventChoice[] }) {
+export function HandReadings({ shelf, ...props }: { shelf: DraftShelf; stations: readonly StationChoice[]; events: readonly EventChoice[] }) {
   const [opening] = useState(() => new URLSearchParams(globalThis.location.search));
-  const { draft, change, isRestored } = useDraft({ station: opening.get("station"), event: opening.get("event"), hasStations: props.stations.length > 0 });
+  const { draft, change, isRestored } = useDraft(shelf, { station: opening.get("station"), event: opening.get("event"), hasStations: props.stations.length > 0 });
   const [isOld, setIsOld] = useState(isRestored);
   const left = useLeftFields();
   const bringing = useBringingIn({ draft, change, left, ...props });

@@ -5,7 +5,7 @@ import { LoadedOnDevice } from "./loaded-on-device.tsx";
 export const metadata: Metadata = { title: "Hand readings" };
 
 export default async function HandReadingsPage() {
-  const { stations, events } = await runningProgram();
+  const { stations, events, storeId } = await runningProgram();
   const [stationList, eventList] = await Promise.all([stations.listStations(), events.listEvents()]);
   const choices = stationList.map(({ id, aliases, deployments, clockCorrections }) => ({
     id,
@@ -14,5 +14,5 @@ export default async function HandReadingsPage() {
     ...{ deployments, clockCorrections },
   }));
   const ownEvents = eventList.map(({ id, title, firstArrivalEpochSeconds }) => ({ id, title, firstArrivalEpochSeconds }));
-  return <LoadedOnDevice stations={choices} events={ownEvents} />;
+  return <LoadedOnDevice storeId={storeId} stations={choices} events={ownEvents} />;
 }

@@ -1,10 +1,10 @@
 import { useState } from "react";
 import { flushSync } from "react-dom";
 import type { Draft, DraftRow } from "#lib/contracts/hand-readings/draft.ts";
-import { isBlank, type ReadRow, type RowField, type RowIssue } from "#lib/contracts/hand-readings/hand-row.ts";
+import { ROW_FIELDS, isBlank, type ReadRow, type RowField, type RowIssue } from "#lib/contracts/hand-readings/hand-row.ts";
 import { suggestedDate } from "#lib/contracts/hand-readings/next-day.ts";
 import { pastedColumn, pastedRows } from "#lib/contracts/hand-readings/pasted-rows.ts";
-import type { DraftChange } from "./draft-changes.ts";
+import { nextKey, type DraftChange } from "./draft-changes.ts";
 import styles from "./form.module.css";
 import { ReadingRow, type RowHandlers } from "./reading-row.tsx";
 
@@ -117,6 +117,8 @@ function useRowHandlers(given: {
       if (pasted !== null) {
         onLeftOut(pasted.leftOut);
         change({ kind: "paste", key, rows: pasted.rows });
+        // Nobody will go through these fields one by one: what is wrong with them is said at once.
+        for (const place of pasted.rows.keys()) onLeave(nextKey(rows) + place, ROW_FIELDS);
         return true;
       }
       const values = pastedColumn(text);

@@ -1,15 +1,15 @@
 import { useEffect, useReducer, useState } from "react";
 import { EMPTY_DRAFT, readDraft, type Draft } from "#lib/contracts/hand-readings/draft.ts";
 import { isBlank } from "#lib/contracts/hand-readings/hand-row.ts";
+import type { DraftShelf } from "../_components/draft-shelf.ts";
 import { changedDraft, type DraftChange } from "./draft-changes.ts";
 
-const KEY = "offing.hand-readings";
-
 /** What is being typed, kept on this device until it is brought in: it outlives the tab. */
-export function useDraft(opening: { station: string | null; event: string | null; hasStations: boolean }): { draft: Draft; change: (change: DraftChange) => void; isRestored: boolean } {
-  const [stored] = useState(() => readDraft(fromDevice()));
+export function useDraft(shelf: DraftShelf, opening: { station: string | null; event: string | null; hasStations: boolean }): { draft: Draft; change: (change: DraftChange) => void; isRestored: boolean } {
+  const [stored] = useState(() => readDraft(shelf.found));
   const [draft, change] = useReducer(changedDraft, null, () => openingDraft(stored, opening));
-  useEffect(() => { toDevice(draft); }, [draft]);
+  // A browser that keeps nothing, or no more, has it on the page all the same.
+  useEffect(() => { shelf.put(isTouched(draft) ? JSON.stringify(draft) : null); }, [shelf, draft]);
   return { draft, change, isRestored: stored !== null && hasWork(stored) };
 }
 
@@ -30,18 +30,7 @@ function openingDraft(stored: Draft | null, { station, event, hasStations }: { s
   };
 }
 
-function fromDevice(): string | null {
-  try {
-    return globalThis.localStorage.getItem(KEY);
-  } catch {
-    return null; // a browser that keeps nothing
-  }
-}
-
-function toDevice(draft: Draft): void {
-  try {
-    globalThis.localStorage.setItem(KEY, JSON.stringify(draft));
-  } catch {
-    // A browser that keeps nothing, or no more: what is typed is still on the page.
-  }
+/** Whether anything was chosen or typed at all. */
+function isTouched(draft: Draft): boolean {
+  return hasWork(draft) || draft.station.id !== "" || draft.keep.event !== "" || draft.keep.title !== "";
 }

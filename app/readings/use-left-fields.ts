@@ -1,4 +1,5 @@
 import { useState } from "react";
+import { onceLifted } from "../_components/once-lifted.ts";
 
 export interface LeftFields {
   /** Whether what is wrong with a field is said by now. */
@@ -15,7 +16,9 @@ export function useLeftFields(): LeftFields {
   const [isAll, setIsAll] = useState(false);
   return {
     isShown: (name) => isAll || names.has(name),
-    leave: (more) => { setNames((before) => (more.every((name) => before.has(name)) ? before : new Set([...before, ...more]))); },
+    leave: (more) => {
+      onceLifted(() => { setNames((before) => (more.every((name) => before.has(name)) ? before : new Set([...before, ...more]))); });
+    },
     showAll: () => { setIsAll(true); },
     forget: () => {
       setNames(new Set());

@@ -12,6 +12,8 @@ export interface RunningProgram {
   readonly arrivals: ArrivalStore;
   readonly localizations: LocalizationStore;
   readonly audit: AuditTrail;
+  /** Of the data folder: work that a browser remembers belongs to one of them. */
+  readonly storeId: string;
   readonly host: Host;
 }
 
@@ -33,7 +35,7 @@ export async function runningProgram(): Promise<RunningProgram> {
     dataDirectory: resolve(packageRoot, dataDirectory),
     migrationsDirectory: join(packageRoot, "prisma", "migrations"),
   });
-  return { stations: store, events: store, arrivals: store, localizations: store, audit: store, host: sharedHost(packageRoot) };
+  return { stations: store, events: store, arrivals: store, localizations: store, audit: store, storeId: store.id, host: sharedHost(packageRoot) };
 }
 
 function sharedHost(packageRoot: string): Host {

@@ -57,6 +57,12 @@ function whatWords(action: string, detail: Detail, eventId: string): string {
   }
 }
 
+/** The other event that a line speaks of; null where it speaks of none. */
+export function otherEvent({ detail }: AuditLine, eventId: string): string | null {
+  const { from, to, into } = detail as Detail;
+  return [to, into, from].find((id) => typeof id === "string" && id !== eventId) ?? null;
+}
+
 function flagWords(flag: unknown): string {
   return QUALITY_WORDS.find(([value]) => value === flag)?.[1] ?? String(flag);
 }

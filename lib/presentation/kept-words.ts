@@ -13,6 +13,8 @@ export interface KeptAnswer {
   readonly number: number;
   readonly savedEpochSeconds: number;
   readonly actor: string;
+  /** The event's revision that it was made from. */
+  readonly eventRevision: number;
   readonly settingsJson: string;
   /** In its maker's words; may be empty. */
   readonly reason: string;

@@ -111,12 +111,16 @@ function pointAt({ x, y }: Scales, epochSeconds: number, hz: number): string {
   return `${x(epochSeconds).toFixed(1)} ${y(hz).toFixed(1)}`;
 }
 
+const MONTH_HOURS = 720;
+
 function timeTicks({ first, last, x }: Scales, { width, left, right }: PlotSize): LinePlot["times"] {
   const most = Math.max(2, Math.floor((width - left - right) / LABEL_PIXELS));
-  const step = HOUR * (TIME_STEPS_HOURS.find((hours) => (last - first) / (hours * HOUR) <= most) ?? 720);
+  // A slip of the year makes years of it: months then, as many as leave the labels room.
+  const months = Math.ceil((last - first) / (most * MONTH_HOURS * HOUR));
+  const step = HOUR * (TIME_STEPS_HOURS.find((hours) => (last - first) / (hours * HOUR) <= most) ?? MONTH_HOURS * months);
   const ticks: { x: number; label: string; day: string }[] = [];
   for (let time = Math.ceil(first / step) * step; time <= last; time += step) {
-    const day = dayWords(time).replace(/ \d+$/, "");
+    const day = step > MONTH_HOURS * HOUR ? dayWords(time) : dayWords(time).replace(/ \d+$/, "");
     const clock = new Date(time * 1000).toISOString().slice(11, 16);
     const isNewDay = ticks.every((tick) => tick.day !== day);
     ticks.push({ x: x(time), label: clock, day: isNewDay ? day : "" });

@@ -16,6 +16,6 @@ export function asRefusal(error: unknown): unknown {
 
 /** A message with those of its causes: the client of the database wraps what the driver says. */
 function saying(error: unknown): string {
-  if (!(error instanceof Error)) return JSON.stringify(error) ?? "";
+  if (!(error instanceof Error)) return JSON.stringify([error]);
   return `${error.message} ${error.cause === undefined ? "" : saying(error.cause)}`;
 }

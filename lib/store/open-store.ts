@@ -6,7 +6,7 @@ import { listAudit } from "./audit.ts";
 import { asRefusal } from "./cannot-store.ts";
 import { openClient } from "./client.ts";
 import { editEvent, mergeEvents, openEvent, splitEvent } from "./edit-events.ts";
-import type { Prisma } from "./generated/client.ts";
+import type { Prisma, PrismaClient } from "./generated/client.ts";
 import { listEvents, loadEvent } from "./load-events.ts";
 import { listLocalizations, loadLocalization, requireLatest, saveLocalization } from "./localizations.ts";
 import { lockFolder } from "./lock-folder.ts";
@@ -19,6 +19,8 @@ import { createWriteGate } from "./write-gate.ts";
 export const DATABASE_FILE = "offing.sqlite";
 
 export interface Store extends StationStore, EventStore, ArrivalStore, LocalizationStore, AuditTrail {
+  /** Given to the database when it was made, and kept in every copy of it. */
+  readonly id: string;
   /** Does several writes as one: all of them, or none when `work` throws. Waits for its turn at the write gate. */
   write<T>(work: (transaction: Prisma.TransactionClient) => Promise<T>): Promise<T>;
   close(): Promise<void>;
@@ -47,6 +49,7 @@ export async function openStore(place: Place): Promise<Store> {
     });
 
   return {
+    id: await readId(reader),
     write,
     listStations: () => listStations(reader),
     loadStation: async (id) => (await listStations(reader, id))[0] ?? null,
@@ -76,6 +79,13 @@ export async function openStore(place: Place): Promise<Store> {
       release();
     },
   };
+}
+
+/** The first migration's own: it is drawn by chance when a database is made. */
+async function readId(reader: PrismaClient): Promise<string> {
+  const [first] = await reader.$queryRaw<{ id: string }[]>`SELECT id FROM "_prisma_migrations" ORDER BY started_at, migration_name LIMIT 1`;
+  if (first === undefined) throw new Error("A database that was opened has migrations.");
+  return first.id;
 }
 
 /** Locks the folder and brings its database up to date; gives what lets go of the folder. */

@@ -193,7 +193,7 @@ describe("what an event is made of", () => {
     await page.getByText("No arrival is in this event yet.").waitFor();
 
     const list = await open("");
-    const waiting = list.getByRole("region", { name: "Arrivals that wait for an event" });
+    const waiting = list.getByRole("region", { name: /wait.* for an event/ });
     await waiting.getByRole("checkbox").first().click();
     await waiting.getByRole("textbox", { name: "Title of the new event" }).fill("One gauge’s swell");
     await waiting.getByRole("button", { name: "Take in" }).click();

@@ -6,7 +6,7 @@ import type { GatheredObservations } from "#lib/core/arrival/gathered-observatio
 import { knownChoices } from "#lib/core/arrival/known-choices.ts";
 import { NO_CHOICES, type ObservationChoices } from "#lib/core/arrival/observation-choices.ts";
 import { sameChoices } from "#lib/core/arrival/same-choices.ts";
-import { auditWords } from "#lib/presentation/audit-words.ts";
+import { auditWords, otherEvent } from "#lib/presentation/audit-words.ts";
 import { changeWords, type KeptDifference } from "#lib/presentation/change-words.ts";
 import { readingChoiceWords } from "#lib/presentation/choice-words.ts";
 import { momentText, parseMoment } from "#lib/presentation/times.ts";
@@ -126,6 +126,8 @@ test("an event's audit trail says what was done, from the event's own side", () 
   expect(said("events merged", { into: "heron", from: "petrel", arrivals: [1] })).toBe("1 Jan 1970 00:00 UTC, me: merged it into heron.");
   expect(said("event split", { to: "x", arrivals: [3] })).toBe("1 Jan 1970 00:00 UTC, me: moved 1 arrival to x.");
   expect(said("stations described anew", { stations: ["ott", "lan"] })).toBe("1 Jan 1970 00:00 UTC, me: described ott and lan anew.");
+  const other = (detail: unknown): string | null => otherEvent({ savedEpochSeconds: 0, actor: "me", action: "", detail }, "petrel");
+  expect([other(move), other({ ...move, to: null }), other({ into: "petrel", from: "tern" }), other({ station: "ott" })]).toStrictEqual(["tern", null, "tern", null]);
   expect(said("localization saved", { number: 4 })).toBe("1 Jan 1970 00:00 UTC, me: kept answer 4.");
   expect(said("reading flagged", { station: "ott", before: 2, after: 4 })).toBe("1 Jan 1970 00:00 UTC, me: flagged a reading of ott bad, not evaluated before.");
 });

@@ -1,8 +1,10 @@
+import Link from "next/link";
 import { useRouter } from "next/navigation";
 import { useId, useState, useTransition } from "react";
 import { askServer, type Asked } from "../../_components/ask-server.ts";
 import type { NumberedStation } from "#lib/core/arrival/numbered-stations.ts";
 import { arrivalRows, type ArrivalInEvent, type ReadingOfArrival } from "#lib/presentation/arrival-rows.ts";
+import { auditWords, otherEvent, type AuditLine } from "#lib/presentation/audit-words.ts";
 import { DescribeForm } from "./describe-form.tsx";
 import { MergeForm } from "./merge-form.tsx";
 import { MoveForm } from "./move-form.tsx";
@@ -21,7 +23,7 @@ export interface EventInView {
 }
 
 /** What the event is made of, and the ways to make it of something else: move, split, merge, describe. */
-export function ArrivalsPanel(props: { event: EventInView; arrivals: readonly ArrivalInEvent[]; readings: readonly ReadingOfArrival[]; stations: readonly NumberedStation[] }) {
+export function ArrivalsPanel(props: { trail: readonly AuditLine[]; event: EventInView; arrivals: readonly ArrivalInEvent[]; readings: readonly ReadingOfArrival[]; stations: readonly NumberedStation[] }) {
   const { event, arrivals } = props;
   const heading = useId();
   const rows = arrivalRows(props);
@@ -29,6 +31,8 @@ export function ArrivalsPanel(props: { event: EventInView; arrivals: readonly Ar
   const [isOpen, setIsOpen] = useState(false);
   const { report, isBusy, change, refresh } = useChange();
   const others = useEventList(event.id, isOpen);
+  const last = props.trail.find(({ action }) => action !== "localization saved" && action !== "event saved");
+  const other = last === undefined ? null : otherEvent(last, event.id);
   const path = `/api/v1/events/${encodeURIComponent(event.id)}`;
   return (
     <section className={styles.panel} aria-labelledby={heading}>
@@ -57,6 +61,11 @@ export function ArrivalsPanel(props: { event: EventInView; arrivals: readonly Ar
           </fieldset>
         )}
       </details>
+      {last !== undefined && (
+        <p className={styles.last}>
+          Last change: {auditWords(last, event.id)} {other !== null && <Link href={`/events/${encodeURIComponent(other)}`} prefetch={false}>To {other}</Link>}
+        </p>
+      )}
       <div role="alert">
         {report !== null && report.kind !== "done" && report.issues.map(({ message }) => <p key={message} className={forms.problem}>{message}</p>)}
       </div>

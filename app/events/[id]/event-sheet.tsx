@@ -9,7 +9,7 @@ import type { ObservationChoices } from "#lib/core/arrival/observation-choices.t
 import type { EstimationSettings } from "#lib/core/source/settings.ts";
 import type { EventSolution } from "#lib/core/source/solution.ts";
 import type { ArrivalInEvent } from "#lib/presentation/arrival-rows.ts";
-import type { AuditLine } from "#lib/presentation/audit-words.ts";
+import { auditWords, type AuditLine } from "#lib/presentation/audit-words.ts";
 import type { KeptAnswer } from "#lib/presentation/kept-words.ts";
 import { useBaseMap } from "../../_components/chart/use-base-map.ts";
 import { Answer } from "./answer.tsx";
@@ -31,6 +31,8 @@ const Chart = dynamic(() => import("./chart.tsx").then((module) => module.Chart)
 
 export interface EventSheetProps {
   readonly event: EventInView;
+  /** Of the data folder. */
+  readonly storeId: string;
   readonly arrivals: readonly ArrivalInEvent[];
   readonly observations: GatheredObservations;
   readonly settings: EstimationSettings;
@@ -52,7 +54,7 @@ export function EventSheet(props: EventSheetProps) {
   const defaults = useMemo(() => ({ knownIds: stations.map(({ id }) => id), without: base.leftOutStationIds }), [stations, base]);
   const [view, change] = useView(defaults);
   const latestNumber = kept[0]?.number ?? 0;
-  const work = useWork({ eventId: event.id, observations, number: latestNumber, base }, view, change);
+  const work = useWork({ eventId: event.id, storeId: props.storeId, observations, number: latestNumber, base }, view, change);
   const window = useMemo(() => windowAround(stations.map(({ position }) => position)), [stations]);
   const { solution: served, choices: servedChoices } = props;
   const worker = useEventWorker({ observations, settings, window, solution: served, choices: servedChoices }, work.choices);
@@ -89,13 +91,19 @@ export function EventSheet(props: EventSheetProps) {
         <ChartBar view={view} onChange={change} />
       </section>
       <Answer title={event.title} note={event.note} without={view.without} {...said} />
-      <Unkept work={work} latestNumber={latestNumber} />
+      <Unkept work={work} latestNumber={latestNumber} change={changedSince(event, kept[0], props.trail)} />
       <Evidence {...said} view={view} onInclude={toggleStation} onFocus={toggleFocus} />
       <ReadingsPanel observations={observations} stations={stations} solution={said.solution} focus={view.focus} work={work} onFocus={focusOn} />
       <KeptAnswers eventId={event.id} eventRevision={event.revision} unit={view.unit} {...{ kept, stations, work, isBehind }} trail={props.trail} settingsJson={props.settingsJson} />
-      <ArrivalsPanel event={event} arrivals={props.arrivals} readings={observations.readings} stations={stations} />
+      <ArrivalsPanel trail={props.trail} event={event} arrivals={props.arrivals} readings={observations.readings} stations={stations} />
     </div>
   );
+}
+
+/** The last thing that was done to the event, where that was after its latest answer was kept. */
+function changedSince({ id, revision }: EventInView, latest: KeptAnswer | undefined, trail: readonly AuditLine[]): string | null {
+  const last = trail.find(({ action }) => action !== "localization saved");
+  return latest === undefined || latest.eventRevision === revision || last === undefined ? null : auditWords(last, id);
 }
 
 /** What stations are chosen by, on the chart and in the table alike. Escape drops the focus from anywhere on the page. */

@@ -1,4 +1,5 @@
 import { useId, useState } from "react";
+import { onceLifted } from "../../_components/once-lifted.ts";
 import styles from "./readings-panel.module.css";
 
 /**
@@ -22,7 +23,7 @@ export function FieldCell(props: {
   const isFaulty = typed !== null && isLeft && parse(typed) === null;
 
   const commit = (): void => {
-    setIsLeft(true);
+    onceLifted(() => { setIsLeft(true); });
     if (typed === null) return;
     const next = typed === text ? value : parse(typed);
     if (next === null) return;

@@ -1,5 +1,5 @@
 import { useRouter } from "next/navigation";
-import { useId, useState, useTransition } from "react";
+import { useEffect, useId, useRef, useState, useTransition } from "react";
 import { askServer, type Asked } from "../../_components/ask-server.ts";
 import { choicesJson } from "#lib/contracts/api/choices.ts";
 import forms from "../../_components/forms.module.css";
@@ -27,16 +27,26 @@ export function KeepForm(props: { eventId: string; eventRevision: number; latest
     setIsKeeping(true);
     setReport(null);
     const settings = JSON.parse(settingsJson) as unknown;
-    const body = { startedFrom: latestNumber, eventRevision, ...choicesJson(work.choices), reason: work.reason.trim(), settings };
+    const body = { startedFrom: work.startedFrom, eventRevision, ...choicesJson(work.choices), reason: work.reason.trim(), settings };
     const outcome = await askServer<{ number: number }>(`/api/v1/events/${encodeURIComponent(eventId)}/localizations`, { method: "POST", body, unheard: UNHEARD });
     setIsKeeping(false);
     setReport(outcome);
     if (outcome.kind !== "done") return;
     work.setReason("");
+    work.startFrom(outcome.reply.number);
     fetchList();
   };
+  // Once what was kept meanwhile is in view, the work goes on from there.
+  const isShowing = useRef(false);
+  const { startFrom } = work;
+  useEffect(() => {
+    if (isShowing.current) startFrom(latestNumber);
+    isShowing.current = false;
+  }, [latestNumber, startFrom]);
   const showKept = (): void => {
     setReport(null);
+    isShowing.current = true;
+    startFrom(latestNumber);
     fetchList();
   };
   return (
@@ -70,7 +80,7 @@ function Refused({ report, onShow }: { report: Exclude<Asked<unknown>, { kind: "
       </div>
       {report.kind === "overtaken" && (
         <button type="button" className={forms.button} onClick={onShow}>
-          Show what was kept
+          Show what is there now
         </button>
       )}
     </div>

@@ -55,7 +55,7 @@ export default async function EventPage({ params, searchParams }: EventAddress) 
 
 async function LocatedEvent({ event, kept, query }: { event: StoredEvent; kept: readonly LocalizationSummary[]; query: URLSearchParams }) {
   const { id, title, note, revision, arrivals, observations } = event;
-  const { host, audit } = await runningProgram();
+  const { host, audit, storeId } = await runningProgram();
   const [latest] = kept;
   const base = knownChoices(latest?.choices ?? NO_CHOICES, observations);
   const settings = readSettings(latest === undefined ? {} : JSON.parse(latest.settingsJson));
@@ -72,7 +72,7 @@ async function LocatedEvent({ event, kept, query }: { event: StoredEvent; kept: 
       solution={withNotes}
       settings={toEstimationSettings(settings)}
       settingsJson={JSON.stringify(settings)}
-      {...{ arrivals, observations, choices, base, kept, trail }}
+      {...{ storeId, arrivals, observations, choices, base, kept, trail }}
     />
   );
 }

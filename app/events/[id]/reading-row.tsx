@@ -101,7 +101,9 @@ function droppedReading(before: ReadingChoices, { readingId }: ShownReading, isD
 
 function placedReading(before: ReadingChoices, row: ShownReading, to: { arrivalEpochSeconds?: number; frequencyHz?: number }): ReadingChoices {
   const { readingId, addedAt, arrivalEpochSeconds, frequencyHz } = row;
-  const placed = { arrivalEpochSeconds, frequencyHz, ...to };
+  const wanted = { arrivalEpochSeconds, frequencyHz, ...to };
+  // To the millisecond, as it is kept: what is shown and what is kept are then one.
+  const placed = { ...wanted, arrivalEpochSeconds: Math.round(wanted.arrivalEpochSeconds * 1000) / 1000 };
   if (readingId === null) {
     return { ...before, addedReadings: before.addedReadings.map((item, place) => (place === addedAt ? { ...item, ...placed } : item)) };
   }

@@ -1,9 +1,10 @@
-import { useCallback, useEffect, useMemo, useRef, useState } from "react";
+import { useCallback, useMemo, useState } from "react";
+import { useDraftShelf } from "../../_components/use-draft-shelf.ts";
 import type { GatheredObservations } from "#lib/core/arrival/gathered-observations.ts";
 import { knownChoices } from "#lib/core/arrival/known-choices.ts";
 import type { ObservationChoices } from "#lib/core/arrival/observation-choices.ts";
 import { sameChoices } from "#lib/core/arrival/same-choices.ts";
-import { draftKey, readDraft, writeDraft, type Draft } from "./draft.ts";
+import { draftText, readDraft } from "./draft.ts";
 import type { ChangeView } from "./use-view.ts";
 import type { EventView } from "./view.ts";
 
@@ -15,6 +16,8 @@ export interface Work {
   /** All of it, the stations left out included. */
   readonly choices: ObservationChoices;
   readonly reason: string;
+  /** Number of the latest kept answer that was seen when it began. */
+  readonly startedFrom: number;
   /** Whether any of it differs from the latest kept answer. */
   readonly isUnkept: boolean;
   /** What to say of a draft that was brought back, or could not be put aside. */
@@ -26,10 +29,14 @@ export interface Work {
   readonly discard: () => void;
   readonly takeUp: (choices: ObservationChoices) => void;
   readonly setReason: (reason: string) => void;
+  /** Begins from an answer that was kept here, or that was shown to have been kept. */
+  readonly startFrom: (number: number) => void;
 }
 
 interface Start {
   readonly eventId: string;
+  /** Of the data folder. */
+  readonly storeId: string;
   readonly observations: GatheredObservations;
   /** Number and choices of the latest kept answer; 0 and none where there is none. */
   readonly number: number;
@@ -38,12 +45,51 @@ interface Start {
 
 /** The work on one event: choices and reason, steps that can be undone, and a draft that outlives the tab. */
 export function useWork(start: Start, view: EventView, changeView: ChangeView): Work {
-  const { base, observations } = start;
+  const { base, number } = start;
+  const steps = useSteps(start, view, changeView);
+  const { choices } = steps;
+  const [reason, setReason] = useState("");
+  const [startedFrom, startFrom] = useState(number);
+  const [broughtFrom, setBroughtFrom] = useState<number | null>(null);
+  const [isForgetful, setIsForgetful] = useState(false);
+  const isUnkept = reason !== "" || !sameChoices(choices, base);
+
+  const onFound = (text: string): void => {
+    const draft = readDraft(text);
+    // One that knows of answers which this event does not have was made of another.
+    if (draft === null || draft.startedFrom > number || isUnkept) return;
+    steps.bringBack(draft.choices);
+    setReason(draft.reason);
+    startFrom(draft.startedFrom);
+    setBroughtFrom(draft.startedFrom);
+  };
+  useDraftShelf({
+    subject: `${start.storeId} event ${start.eventId}`,
+    text: isUnkept ? draftText({ startedFrom, choices, reason }) : null,
+    onFound,
+    onRemembered: (isTaken) => { setIsForgetful(!isTaken); },
+  });
+  const discard = (): void => {
+    steps.takeUp(base);
+    setReason("");
+    startFrom(number);
+  };
+  const remark = isUnkept ? remarkOf({ broughtFrom, isForgetful, startedFrom, number }) : null;
+  return { ...steps, reason, startedFrom, isUnkept, remark, discard, setReason, startFrom };
+}
+
+function remarkOf({ broughtFrom, isForgetful, startedFrom, number }: { broughtFrom: number | null; isForgetful: boolean; startedFrom: number; number: number }): string | null {
+  if (isForgetful) return "This browser cannot remember work that is not kept: it is lost when the page is closed.";
+  const since = startedFrom < number ? ` It started from ${startedFrom === 0 ? "what was brought in" : `number ${startedFrom}`}; number ${number} was kept since.` : "";
+  if (broughtFrom === null) return since === "" ? null : `This work is behind.${since}`;
+  return `Work that was not kept was brought back.${since}`;
+}
+
+/** Choices, and the way back through them. */
+function useSteps({ base, observations }: Start, view: EventView, changeView: ChangeView) {
   const [readings, setReadings] = useState<ReadingChoices>(() => withoutStations(base));
   const [past, setPast] = useState<readonly ReadingChoices[]>([]);
-  const [reason, setReason] = useState("");
   const choices = useMemo(() => ({ ...readings, leftOutStationIds: view.without }), [readings, view.without]);
-  const isUnkept = reason !== "" || !sameChoices(choices, base);
 
   const changeReadings = useCallback<ChangeReadings>((next) => {
     setPast((before) => [...before, readings]);
@@ -61,62 +107,13 @@ export function useWork(start: Start, view: EventView, changeView: ChangeView): 
     setReadings(last);
     setPast(past.slice(0, -1));
   }, [past]);
-  const discard = useCallback(() => {
-    takeUp(base);
-    setReason("");
-  }, [takeUp, base]);
-
-  const [broughtFrom, setBroughtFrom] = useState<number | null>(null);
-  const [isForgetful, setIsForgetful] = useState(false);
-  const bringBack = (draft: Draft): void => {
-    const known = knownChoices(draft.choices, observations);
+  /** Which stations are left out is the draft's business only where the address says nothing of it. */
+  const bringBack = (draft: ObservationChoices): void => {
+    const known = knownChoices(draft, observations);
     setReadings(withoutStations(known));
-    setReason(draft.reason);
-    setBroughtFrom(draft.startedFrom);
     if (!new URLSearchParams(globalThis.location.search).has("without")) changeView({ without: known.leftOutStationIds });
   };
-  useDraft(start, { choices, reason, isUnkept }, { bringBack, onRemembered: (isTaken) => { setIsForgetful(!isTaken); } });
-  const remark = isUnkept ? remarkOf({ broughtFrom, isForgetful, number: start.number }) : null;
-  return { choices, reason, isUnkept, remark, canUndo: past.length > 0, changeReadings, undo, discard, takeUp, setReason };
-}
-
-function remarkOf({ broughtFrom, isForgetful, number }: { broughtFrom: number | null; isForgetful: boolean; number: number }): string | null {
-  if (isForgetful) return "This browser cannot remember work that is not kept: it is lost when the page is closed.";
-  if (broughtFrom === null) return null;
-  const since = broughtFrom < number ? ` It started from ${broughtFrom === 0 ? "what was brought in" : `number ${broughtFrom}`}; number ${number} was kept since.` : "";
-  return `Work that was not kept was brought back.${since}`;
-}
-
-interface DraftKeeping {
-  readonly bringBack: (draft: Draft) => void;
-  readonly onRemembered: (isTaken: boolean) => void;
-}
-
-/** Brings a draft back when the page opens, and puts every change aside from then on. */
-function useDraft(start: Start, work: Pick<Work, "choices" | "reason" | "isUnkept">, keeping: DraftKeeping): void {
-  const { eventId, number } = start;
-  const { choices, reason, isUnkept } = work;
-  const isOpened = useRef(false);
-  const atFirst = useRef(keeping);
-
-  useEffect(() => {
-    if (!isOpened.current) {
-      isOpened.current = true;
-      const draft = readDraft(eventId);
-      if (draft !== null) atFirst.current.bringBack(draft);
-      return;
-    }
-    atFirst.current.onRemembered(writeDraft(eventId, isUnkept ? { startedFrom: number, choices, reason } : null));
-  }, [eventId, number, choices, reason, isUnkept]);
-
-  // Another tab that keeps or drops its own work forgets the draft of both; this tab's is put aside again.
-  useEffect(() => {
-    const restore = ({ key, newValue }: StorageEvent): void => {
-      if (key === draftKey(eventId) && newValue === null && isUnkept) writeDraft(eventId, { startedFrom: number, choices, reason });
-    };
-    globalThis.addEventListener("storage", restore);
-    return () => { globalThis.removeEventListener("storage", restore); };
-  }, [eventId, number, choices, reason, isUnkept]);
+  return { choices, canUndo: past.length > 0, changeReadings, undo, takeUp, bringBack };
 }
 
 function withoutStations({ droppedReadingIds, movedReadings, addedReadings, usesSuspect }: ObservationChoices): ReadingChoices {

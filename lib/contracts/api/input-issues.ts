@@ -33,7 +33,7 @@ function inputIssue(issue: z.$ZodIssue, value: unknown): InputIssue {
 }
 
 function shortly(found: unknown): string {
-  if (found === undefined) return "nothing";
+  if (found === undefined || found === null) return "nothing";
   // 1e400 is a number to JSON and beyond all numbers here; written as JSON again it would be null.
   const text = typeof found === "number" ? String(found) : JSON.stringify(found);
   return text.length > FOUND_CHARACTERS_SHOWN ? `${text.slice(0, FOUND_CHARACTERS_SHOWN)}...` : text;

@@ -19,7 +19,8 @@ export interface HandRow {
   readonly quality: QualityFlag;
 }
 
-export type RowField = "date" | "time" | "period" | "waves" | "seconds";
+export const ROW_FIELDS = ["date", "time", "period", "waves", "seconds"] as const;
+export type RowField = (typeof ROW_FIELDS)[number];
 
 export interface RowIssue {
   readonly field: RowField;

@@ -7,7 +7,9 @@
  *   (1)  sigma_f = T g / (4 pi L)               T the storm's duration
  *   (2)  L_apparent = L (1 + sigma_f^2 / S^2)   hence, with K = (T g / (4 pi S))^2,
  *   (3)  L^2 - L_apparent L + K = 0,  L the larger root
- * Under (2) no storm looks nearer than 2 sqrt K; below that the factor is held at its turning point, 2.
+ * Under (2) no storm looks nearer than 2 sqrt K. Of one that does, duration and width cannot have been what was taken:
+ * sqrt K is then taken for half the apparent distance, the most that it can have been, which holds the factor at its
+ * turning point, 2; its error runs from there down to a factor of nearly 1, and so is as large as the correction.
  * Both widths are taken as Gaussian. Derived from the product of two Gaussian windows; no published table.
  */
 export interface TimedWindow {
@@ -30,7 +32,8 @@ export interface TimedExcess {
 
 /** Excess (dimensionless, 0 to 1) for an apparent distance in metres. */
 export function timedExcess(apparentMetres: number, window: TimedWindow): TimedExcess {
-  const rootK = (window.durationSeconds * window.gravity) / (4 * Math.PI * window.spectrumWidthHz);
+  const taken = (window.durationSeconds * window.gravity) / (4 * Math.PI * window.spectrumWidthHz);
+  const rootK = apparentMetres > 0 ? Math.min(taken, apparentMetres / 2) : taken;
   const relativeSigma = Math.hypot(DURATION_RELATIVE_SIGMA, WIDTH_RELATIVE_SIGMA);
   return {
     excess: excessFor(apparentMetres, rootK),

@@ -4,7 +4,8 @@ export interface Position {
   readonly longitudeDegrees: number;
 }
 
-/** The same meridian, named within [-180, 180). */
+/** The same meridian, named within [-180, 180). One that is named so already keeps its last digit. */
 export function wrapLongitudeDegrees(longitudeDegrees: number): number {
+  if (longitudeDegrees >= -180 && longitudeDegrees < 180) return longitudeDegrees;
   return ((((longitudeDegrees + 180) % 360) + 360) % 360) - 180;
 }
