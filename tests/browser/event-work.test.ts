@@ -140,6 +140,59 @@ describe("work on readings", () => {
   });
 });
 
+describe("two tabs of one browser", () => {
+  test("each keep their own unsaved work, and it comes back tab by tab", async () => {
+    const one = await openEvent("albatross");
+    const context = one.context();
+    const other = await context.newPage();
+    await other.goto(address("events/albatross"));
+    await other.locator("[data-drawn] .leaflet-rings-pane path").first().waitFor();
+    for (const [page, rows] of [[one, [24, 26]], [other, [27]]] as const) {
+      await choose(page, "tar");
+      for (const row of rows) {
+        const wasUsed = await use(page, row).isChecked();
+        await redrawn(page, () => use(page, row).click());
+        expect(await use(page, row).isChecked()).toBe(!wasUsed);
+      }
+    }
+    await one.close();
+    await other.waitForTimeout(50);
+    await other.close();
+    const droppedIn = async (page: Page): Promise<number[]> => {
+      await page.goto(address("events/albatross"));
+      await page.getByText("Work that was not kept was brought back.").waitFor();
+      await choose(page, "tar");
+      const boxes = await Promise.all([24, 26, 27].map(async (row) => ((await use(page, row).isChecked()) ? [] : [row])));
+      return boxes.flat();
+    };
+    // The newest first; while that tab is open another one gets what is left.
+    const [again, more] = [await context.newPage(), await context.newPage()];
+    expect(await droppedIn(again)).toStrictEqual([27]);
+    expect(await droppedIn(more)).toStrictEqual([24, 26]);
+  });
+
+  test("work that was overtaken says so until somebody has looked, and is not kept over it unseen", async () => {
+    expectFault(/status of 409/);
+    const id = "heron";
+    const page = await openEvent(id);
+    const before = (await ask(`events/${id}/localizations`))["localizations"] as unknown[];
+    await choose(page, "gul");
+    const row = Number(await readings(page).getByRole("row").nth(1).getByRole("cell").nth(1).innerText());
+    await redrawn(page, () => use(page, row).click());
+    await ask(`events/${id}/localizations`, { method: "POST", body: { startedFrom: before.length, reason: "meanwhile" } });
+    const isToldAgain = async (): Promise<void> => {
+      await page.reload();
+      await page.getByText(new RegExp(`number ${before.length + 1} was kept since`)).waitFor();
+    };
+    await isToldAgain();
+    await isToldAgain();
+    await kept(page).getByRole("button", { name: "Keep this answer" }).click();
+    await kept(page).getByRole("alert").getByText(`Number ${before.length + 1} of event`).waitFor();
+    await kept(page).getByRole("button", { name: "Show what is there now" }).click();
+    await keep(page, before.length + 2);
+  });
+});
+
 describe("two at one event", () => {
   test("the second to keep is told, sees what was kept, and keeps its own after it", async () => {
     expectFault(/status of 409/);
@@ -151,7 +204,7 @@ describe("two at one event", () => {
     await redrawn(other, () => use(other, 41).click());
     await kept(other).getByRole("button", { name: "Keep this answer" }).click();
     await kept(other).getByRole("alert").getByText("Number 1 of event").waitFor();
-    await kept(other).getByRole("button", { name: "Show what was kept" }).click();
+    await kept(other).getByRole("button", { name: "Show what is there now" }).click();
     await kept(other).getByRole("listitem").first().waitFor();
     expect(await use(other, 41).isChecked()).toBe(false);
     expect(await use(other, 40).isChecked()).toBe(true);
@@ -175,7 +228,7 @@ describe("two at one event", () => {
     await ask(`arrivals/${String(fenn?.id)}`, { method: "PATCH", body: { revision: fenn?.revision, event: null } });
     await kept(page).getByRole("button", { name: "Keep this answer" }).click();
     await kept(page).getByRole("alert").getByText("was changed meanwhile").waitFor();
-    await kept(page).getByRole("button", { name: "Show what was kept" }).click();
+    await kept(page).getByRole("button", { name: "Show what is there now" }).click();
     await page.getByText("Work that was not kept was brought back.").waitFor();
     await page.getByText("Distance only.").first().waitFor();
     expect(await use(page, 2).isChecked()).toBe(false);

@@ -67,7 +67,7 @@ describe("keeping an answer", () => {
     expect(await entries(other)).toStrictEqual([]);
     expect(await why(other).inputValue()).toBe("From the other page");
 
-    await section(other).getByRole("button", { name: "Show what was kept" }).click();
+    await section(other).getByRole("button", { name: "Show what is there now" }).click();
     await listed(other, 1);
     expect(await alert.count()).toBe(0);
     expect(await why(other).inputValue()).toBe("From the other page");
@@ -99,7 +99,7 @@ describe("keeping an answer", () => {
     for (const box of await page.getByRole("checkbox", { name: /^Include / }).all()) await redrawn(page, () => box.click());
     await button(page).click();
     await section(page).getByRole("alert").getByText("No station is left that could be fitted").waitFor();
-    expect(await section(page).getByRole("button", { name: "Show what was kept" }).count()).toBe(0);
+    expect(await section(page).getByRole("button", { name: "Show what is there now" }).count()).toBe(0);
     expect(await why(page).inputValue()).toBe("Heard it");
     expect(await section(page).innerText()).toContain("None kept yet.");
   });
@@ -134,7 +134,7 @@ describe("the list of kept answers", () => {
     await button(page).click();
     await section(page).getByRole("alert").waitFor();
     expect(await axeFaults(page)).toStrictEqual([]);
-    await section(page).getByRole("button", { name: "Show what was kept" }).click();
+    await section(page).getByRole("button", { name: "Show what is there now" }).click();
     await listed(page, 1);
     expect(await axeFaults(page)).toStrictEqual([]);
     for (const width of [390, 320]) {

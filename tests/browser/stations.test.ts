@@ -208,7 +208,7 @@ describe("a station's page", () => {
       page.getByLabel(label).first().evaluate((field) => (field.getAttribute("aria-describedby") ?? "").split(" ").map((id) => document.getElementById(id)?.innerText ?? "").join(" "));
     expect(await said("Name")).toBe("Found \"\"; wanted a name of 1 to 200 letters on one line.");
     expect(await said("Latitude, ° north")).toContain("Found \"north\"; wanted a latitude of -90 to 90 degrees, north positive.");
-    expect(await said("Longitude, ° east")).toContain("Found null; wanted a longitude");
+    expect(await said("Longitude, ° east")).toContain("Found nothing; wanted a longitude");
     expect(await said("Time zone")).toContain("Found \"Atlantis/Capital\"; wanted an IANA time zone");
     expect(await said("Way over the shelf")).toContain("Leg 2, length: found \"x\"; wanted a number of kilometres");
     expect(await said("Name or number")).toContain("wanted an alias");
