@@ -4,7 +4,9 @@ import { writeFileSync } from "node:fs";
 import { get } from "node:http";
 import { createServer } from "node:net";
 import { join } from "node:path";
+import { setTimeout as pause } from "node:timers/promises";
 import { describe, expect, onTestFinished, test } from "vitest";
+import { InputError } from "#lib/core/failures/input-error.ts";
 import { isOwnHost } from "#lib/http/own-host.ts";
 import { openStore } from "#lib/store/open-store.ts";
 import { inventedEvent } from "#tests/support/invented-event.ts";
@@ -63,6 +65,30 @@ describe("the server", () => {
     expect((await again.listEvents()).map(({ id }) => id)).toStrictEqual(["gale"]);
     await again.close();
   });
+});
+
+test("a server whose starter is killed ends with it, and lets go of the folder", async () => {
+  const dataDirectory = temporaryDirectory();
+  const server = await started(dataDirectory);
+  server.process.kill("SIGKILL");
+  await server.ended;
+  const opens = async (): Promise<boolean> => {
+    try {
+      await (await openStore({ dataDirectory, migrationsDirectory: MIGRATIONS_DIRECTORY })).close();
+      return true;
+    } catch (error) {
+      if (error instanceof InputError) return false;
+      throw error;
+    }
+  };
+  // It looks after its starter every second; a busy machine may take longer over it.
+  const isOpen = { now: await opens() };
+  for (let look = 0; look < 100 && !isOpen.now; look += 1) {
+    await pause(100);
+    isOpen.now = await opens();
+  }
+  expect(isOpen.now).toBe(true);
+  await expect(fetch(server.address)).rejects.toThrow();
 });
 
 describe("the server turns away", () => {
