@@ -2,6 +2,8 @@ import type { Metadata, Viewport } from "next";
 import Link from "next/link";
 import { connection } from "next/server";
 import type { ReactNode } from "react";
+// First, so that every style of ours comes after it, in whatever order the charts are loaded.
+import "leaflet/dist/leaflet.css";
 import "./tokens.css";
 import styles from "./layout.module.css";
 

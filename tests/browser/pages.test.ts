@@ -7,6 +7,21 @@ import { DEMO_EVENTS } from "#tests/support/simulator/demo-events.ts";
 
 const { open, openEvent, address, expectFault } = demoBrowser();
 
+test.each(["events/petrel", "stations", "readings"])("the chart at %s lies on the sea's own colour, under controls of ours", async (path) => {
+  const page = await open(path);
+  await page.locator(".leaflet-land-pane path").waitFor();
+  const colours = await page.evaluate(() => {
+    const probe = document.body.appendChild(document.createElement("div"));
+    probe.style.backgroundColor = "var(--sea)";
+    const sea = getComputedStyle(probe).backgroundColor;
+    probe.remove();
+    const style = (selector: string): CSSStyleDeclaration => getComputedStyle(document.querySelector(selector) ?? document.body);
+    return { sea, chart: style(".leaflet-container").backgroundColor, border: style(".leaflet-bar").borderTopWidth, font: style(".leaflet-container").fontSize };
+  });
+  expect(colours.chart).toBe(colours.sea);
+  expect([colours.border, colours.font]).toStrictEqual(["1px", "14px"]);
+});
+
 describe("the list of events", () => {
   test("names every event, latest first, and leads to each", async () => {
     const page = await open("");

@@ -1,4 +1,3 @@
-import "leaflet/dist/leaflet.css";
 import type { LatLngBounds, Map as LeafletMap } from "leaflet";
 import type { ReactNode } from "react";
 import { MapContainer, ZoomControl } from "react-leaflet";
