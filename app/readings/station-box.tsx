@@ -18,7 +18,7 @@ export function StationBox(props: { stations: readonly StationChoice[]; chosen: 
   };
   const leave = (): void => {
     setIsOpen(false);
-    const exact = stations.filter((one) => [one.id, one.name].some((name) => name.toLowerCase() === text?.trim().toLowerCase()));
+    const exact = stations.filter((one) => [one.id, one.name].some((name) => name.toUpperCase() === text?.trim().toUpperCase()));
     if (exact.length === 1 && exact[0] !== undefined) choose(exact[0]);
     else if (text?.trim() === "") setText(null);
   };

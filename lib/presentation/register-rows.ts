@@ -63,9 +63,10 @@ const WORDS = new Intl.Collator("en", { numeric: true });
 
 /** The rows that hold every word of the filter in their id, name, aliases or group, in order; alike ones by their ids. */
 export function chosenRows(rows: readonly RegisterRow[], { filter, order }: { readonly filter: string; readonly order: RegisterOrder }): RegisterRow[] {
-  const words = filter.toLowerCase().split(/\s+/).filter((word) => word !== "");
+  // Capitals on both sides: some letters have two capitals for one small one, and would not be found the other way round.
+  const words = filter.toUpperCase().split(/\s+/).filter((word) => word !== "");
   const held = rows.filter(({ id, name, aliases, group }) => {
-    const text = `${id} ${name} ${aliases} ${group}`.toLowerCase();
+    const text = `${id} ${name} ${aliases} ${group}`.toUpperCase();
     return words.every((word) => text.includes(word));
   });
   const key = KEY[order.column];
