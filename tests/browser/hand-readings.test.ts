@@ -329,7 +329,7 @@ test("with nothing stored yet the first station is placed, and with long names n
   await page.getByRole("link", { name: `Open the event sheet: ${long}` }).waitFor();
   // The next one is most likely placed as well: its fields are empty, and the first of them is at hand.
   await page.waitForFunction(() => document.activeElement instanceof HTMLInputElement && document.activeElement.value === "");
-  expect(await page.getByRole("textbox", { name: "Id" }).evaluate((element) => element === document.activeElement)).toBe(true);
+  await page.getByRole("textbox", { name: "Id" }).and(page.locator(":focus")).waitFor();
   await page.getByRole("radio", { name: "A stored one" }).check();
   await station(page).fill("läng");
   await page.getByRole("option").first().waitFor();

@@ -195,7 +195,7 @@ describe("a station's page", () => {
     const page = await open("stations/new");
     await page.getByRole("button", { name: "Make this station" }).click();
     await page.getByText("A station needs an id.").waitFor();
-    expect(await page.getByLabel("Id", { exact: true }).evaluate((element) => element === document.activeElement)).toBe(true);
+    await page.getByLabel("Id", { exact: true }).and(page.locator(":focus")).waitFor();
     await page.getByLabel("Id", { exact: true }).fill("ne 1");
     await page.getByLabel("Latitude, ° north").fill("north");
     await page.getByLabel("Time zone").fill("Atlantis/Capital");
@@ -212,7 +212,7 @@ describe("a station's page", () => {
     expect(await said("Time zone")).toContain("Found \"Atlantis/Capital\"; wanted an IANA time zone");
     expect(await said("Way over the shelf")).toContain("Leg 2, length: found \"x\"; wanted a number of kilometres");
     expect(await said("Name or number")).toContain("wanted an alias");
-    expect(await page.getByLabel("Name").first().evaluate((element) => element === document.activeElement)).toBe(true);
+    await page.getByLabel("Name").first().and(page.locator(":focus")).waitFor();
     expect(await faults(page)).toStrictEqual([]);
 
     await page.getByLabel("Name", { exact: true }).fill(LONG);
